@@ -1,0 +1,15 @@
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  test: {
+    root: new URL('..', import.meta.url).pathname,
+    include: ['test/**/*.test.ts'],
+    testTimeout: 60_000,
+    coverage: {
+      provider: 'v8',
+      include: ['server/src/**/*.ts'],
+      reporter: ['text-summary', 'json-summary'],
+      thresholds: { lines: 95 },
+    },
+  },
+});
