@@ -2,7 +2,7 @@ import { commands, type ExtensionContext } from 'vscode';
 import type { LanguageClient } from 'vscode-languageclient/node';
 import { MapPanel } from './map-panel.ts';
 import { newFromSample } from './new-from-sample.ts';
-import { createServerProcess, followTheme } from './server-process.ts';
+import { createServerProcess, followSettings, followTheme, restartServer } from './server-process.ts';
 
 let running: LanguageClient | undefined;
 
@@ -14,9 +14,10 @@ export async function activate(context: ExtensionContext): Promise<void> {
   context.subscriptions.push(
     panel,
     followTheme(client),
+    followSettings(client),
     commands.registerCommand('ratewright.newFromSample', () => newFromSample(context)),
     commands.registerCommand('ratewright.showMap', () => panel.open()),
-    commands.registerCommand('ratewright.restart', () => client.restart()),
+    commands.registerCommand('ratewright.restart', () => restartServer(client)),
     commands.registerCommand('ratewright.fixEveryChannel', () =>
       commands.executeCommand('editor.action.codeAction', { kind: 'source.fixAll.ratewright', apply: 'first' }),
     ),

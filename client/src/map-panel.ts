@@ -1,4 +1,13 @@
-import { type Disposable, type Position, type TextEditor, Uri, ViewColumn, type WebviewPanel, window, workspace } from 'vscode';
+import {
+  type Disposable,
+  type Position,
+  type TextEditor,
+  type Uri,
+  ViewColumn,
+  type WebviewPanel,
+  window,
+  workspace,
+} from 'vscode';
 import type { LanguageClient } from 'vscode-languageclient/node';
 import { type AliasMap, emptyMapPage, mapPage } from './map-page.ts';
 import { isRigFile } from './rig-files.ts';
@@ -57,7 +66,7 @@ export class MapPanel implements Disposable {
     const { client } = this;
     if (!client.isRunning()) return null;
     return client.sendRequest<AliasMap | null>('ratewright/map', {
-      textDocument: client.code2ProtocolConverter.asTextDocumentIdentifier({ uri } as TextEditor['document']),
+      textDocument: { uri: client.code2ProtocolConverter.asUri(uri) },
       position: client.code2ProtocolConverter.asPosition(position),
     });
   }

@@ -1,30 +1,43 @@
-import { type Disposable, type ExtensionContext, Uri, window } from 'vscode';
+import { type Disposable, type ExtensionContext, Uri, window, workspace } from 'vscode';
 import {
   CloseAction,
   type CloseHandlerResult,
   ErrorAction,
   LanguageClient,
   type LanguageClientOptions,
+  type Middleware,
   type ServerOptions,
   TransportKind,
 } from 'vscode-languageclient/node';
 import { decideOnDeath } from './restart-policy.ts';
 import { isRigFile, rigFiles } from './rig-files.ts';
-import { themeName } from './theme.ts';
+import { changesSettings, readSettings } from './settings.ts';
+import { shownFindings } from './shown-findings.ts';
+import { type ThemeName, themeName } from './theme.ts';
 
 /** What the server is told at its start; it works without any of it, as it does for other editors. */
 interface InitializationOptions {
-  readonly theme: ReturnType<typeof themeName>;
-  /** Folder of the reference pages, one `NAME.md` a check or key. */
+  readonly theme: ThemeName;
+  /** Whether a hover may hold a picture. */
+  readonly pictures: boolean;
+  /** URI of the folder of the reference pages. */
   readonly referenceFolder: string;
 }
 
 function initializationOptions(context: ExtensionContext): InitializationOptions {
   return {
     theme: themeName(window.activeColorTheme.kind),
-    referenceFolder: Uri.joinPath(context.extensionUri, 'dist', 'reference').fsPath,
+    pictures: readSettings().hoverPicture,
+    referenceFolder: Uri.joinPath(context.extensionUri, 'dist', 'reference').toString(),
   };
 }
+
+/** Leaves out of the server's answer what the settings ask not to see. */
+const onlyShown: NonNullable<Middleware['provideDiagnostics']> = async (document, previous, token, next) => {
+  const report = await next(document, previous, token);
+  if (!report || !('items' in report)) return report;
+  return { ...report, items: [...shownFindings(report.items, readSettings().findingsShown)] };
+};
 
 /** Says once that the server keeps dying, and offers the two things a person can do about it. */
 async function sayServerGivenUp(client: LanguageClient): Promise<void> {
@@ -56,12 +69,12 @@ export function createServerProcess(context: ExtensionContext): LanguageClient {
   const options: LanguageClientOptions = {
     documentSelector: [...rigFiles],
     initializationOptions: () => initializationOptions(context),
-    synchronize: { configurationSection: 'ratewright' },
     diagnosticPullOptions: {
       onChange: true,
       onTabs: true,
       match: (_selector, resource) => isRigFile({ languageId: 'yaml', fileName: resource.path }),
     },
+    middleware: { provideDiagnostics: onlyShown },
     errorHandler: { error: () => ({ action: ErrorAction.Continue }), closed },
   };
   const client = new LanguageClient('ratewright', 'Ratewright', server, options);
@@ -72,5 +85,18 @@ export function createServerProcess(context: ExtensionContext): LanguageClient {
 export function followTheme(client: LanguageClient): Disposable {
   return window.onDidChangeActiveColorTheme(async (theme) => {
     if (client.isRunning()) await client.sendNotification('ratewright/theme', { theme: themeName(theme.kind) });
+  });
+}
+
+/** Starts the server anew, also where it was left stopped. */
+export async function restartServer(client: LanguageClient): Promise<void> {
+  if (client.needsStop()) await client.stop();
+  await client.start();
+}
+
+/** Starts the server anew when a setting changes that it, or what is shown of its answers, depends on. */
+export function followSettings(client: LanguageClient): Disposable {
+  return workspace.onDidChangeConfiguration(async (change) => {
+    if (client.isRunning() && changesSettings(change)) await restartServer(client);
   });
 }

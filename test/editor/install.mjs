@@ -16,7 +16,11 @@ export const chromium = '/usr/bin/chromium';
 const NATIVE = ['@vscode/spdlog', 'native-watchdog', 'node-pty', '@parcel/watcher', '@vscode/deviceid'];
 
 function run(command, args, folder) {
-  execFileSync(command, args, { cwd: folder, stdio: ['ignore', 'ignore', 'inherit'], env: { ...process.env, CI: '1' } });
+  execFileSync(command, args, {
+    cwd: folder,
+    stdio: ['ignore', 'ignore', 'inherit'],
+    env: { ...process.env, CI: '1' },
+  });
 }
 
 function npm(args, folder) {

@@ -9,7 +9,7 @@ const root = resolve(dirname(fileURLToPath(import.meta.url)), '../..');
 
 const programs = [
   { entry: 'client/src/extension.ts', output: 'dist/client.cjs', external: ['vscode'] },
-  { entry: 'server/src/server.ts', output: 'dist/server.cjs', external: [] },
+  { entry: 'server/src/server-main.ts', output: 'dist/server.cjs', external: [] },
   { entry: 'server/src/cli/main.ts', output: 'dist/cli.cjs', external: [], executable: true },
 ];
 
