@@ -1,0 +1,55 @@
+import type { InitializeParams } from 'vscode-languageserver-protocol';
+import { MarkupKind } from 'vscode-languageserver-types';
+import type { ReferenceLinks } from './reference-links.ts';
+import { linksIn, NO_LINKS } from './reference-links.ts';
+
+/** The kinds of colour theme that pictures are drawn for; `neutral` brings its own background. */
+export const THEMES = ['light', 'dark', 'high-contrast', 'high-contrast-light', 'neutral'] as const;
+export type ThemeKind = (typeof THEMES)[number];
+
+/** What the client told of itself when it connected, as far as an answer depends on it. */
+export interface ClientAbilities {
+  readonly pullsFindings: boolean;
+  readonly announcesSettings: boolean;
+  readonly showsMarkdown: boolean;
+  /** Whether a hover may hold a picture; otherwise the map is drawn in characters. */
+  readonly showsPictures: boolean;
+  readonly theme: ThemeKind;
+  readonly links: ReferenceLinks;
+}
+
+/**
+ * Reads what a client announces. Pictures in hovers are not part of the protocol: our own client says in its
+ * initialization options that it shows them, and any other may say the same.
+ */
+export function abilitiesOf(params: InitializeParams | undefined): ClientAbilities {
+  const options: unknown = params?.initializationOptions;
+  const folder = stringOption(options, 'referenceFolder');
+  const formats = params?.capabilities.textDocument?.hover?.contentFormat ?? [];
+  return {
+    pullsFindings: params?.capabilities.textDocument?.diagnostic !== undefined,
+    announcesSettings: params?.capabilities.workspace?.didChangeConfiguration?.dynamicRegistration === true,
+    showsMarkdown: formats.includes(MarkupKind.Markdown),
+    showsPictures: option(options, 'pictures') === true,
+    theme: themeOf(option(options, 'theme')),
+    links: folder === undefined ? NO_LINKS : linksIn(folder.replace(/\/$/, '')),
+  };
+}
+
+/** The same client after its theme has changed. */
+export function withTheme(abilities: ClientAbilities, theme: unknown): ClientAbilities {
+  return { ...abilities, theme: themeOf(theme) };
+}
+
+function themeOf(value: unknown): ThemeKind {
+  return THEMES.find((theme) => theme === value) ?? 'neutral';
+}
+
+function option(options: unknown, name: string): unknown {
+  return typeof options === 'object' && options !== null ? (options as Record<string, unknown>)[name] : undefined;
+}
+
+function stringOption(options: unknown, name: string): string | undefined {
+  const value = option(options, name);
+  return typeof value === 'string' ? value : undefined;
+}

@@ -1,0 +1,57 @@
+import type { Diagnostic } from 'vscode-languageserver-types';
+import { DiagnosticSeverity, DiagnosticTag } from 'vscode-languageserver-types';
+import { MOST_FINDINGS_SENT } from '../rig/limits.ts';
+import type { Evaluation } from '../workbench/evaluation.ts';
+import type { LocatedFinding } from '../workbench/findings.ts';
+import { countFindings, locatedFindings } from '../workbench/findings.ts';
+import { protocolSeverity } from './convert.ts';
+import type { ReferenceLinks } from './reference-links.ts';
+
+/**
+ * A file's findings as the protocol shows them, at most {@link MOST_FINDINGS_SENT}, errors first; where some are left
+ * out, the last one says how many.
+ */
+export function diagnosticsOf(uri: string, evaluation: Evaluation, links: ReferenceLinks): Diagnostic[] {
+  const counts = countFindings(evaluation);
+  const total = counts.error + counts.warning + counts.hint;
+  if (total <= MOST_FINDINGS_SENT) {
+    return locatedFindings(evaluation).map((located) => diagnosticOf(uri, located, evaluation, links));
+  }
+  const shown = locatedFindings(evaluation, MOST_FINDINGS_SENT - 1);
+  return [
+    ...shown.map((located) => diagnosticOf(uri, located, evaluation, links)),
+    {
+      range: { start: { line: 0, character: 0 }, end: { line: 0, character: 0 } },
+      severity: DiagnosticSeverity.Information,
+      source: 'ratewright',
+      message: `${total - shown.length} more findings are not shown here. \`ratewright check\` lists all ${total}.`,
+    },
+  ];
+}
+
+function diagnosticOf(
+  uri: string,
+  { finding, range }: LocatedFinding,
+  evaluation: Evaluation,
+  links: ReferenceLinks,
+): Diagnostic {
+  const unused = finding.check === 'unused-name';
+  const href = links.check(finding.check);
+  return {
+    range,
+    severity: unused ? DiagnosticSeverity.Hint : protocolSeverity(finding.severity),
+    source: 'ratewright',
+    code: finding.check,
+    ...(href === undefined ? {} : { codeDescription: { href } }),
+    message: finding.message,
+    ...(unused ? { tags: [DiagnosticTag.Unnecessary] } : {}),
+    ...(finding.related.length === 0
+      ? {}
+      : {
+          relatedInformation: finding.related.map((related) => ({
+            location: { uri, range: evaluation.snapshot.rangeOf(related.place) },
+            message: related.message,
+          })),
+        }),
+  };
+}

@@ -1,0 +1,69 @@
+import type { DocumentSymbol } from 'vscode-languageserver-types';
+import { SymbolKind } from 'vscode-languageserver-types';
+import type { Entry } from '../rig/entry.ts';
+import type { Snapshot } from '../rig/snapshot.ts';
+import type { Evaluation } from '../workbench/evaluation.ts';
+import { formatHz } from '../quantity/write.ts';
+import { protocolRange } from './convert.ts';
+
+/** The outline: the top-level keys, the named things below their sections, and each channel with its rate. */
+export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
+  const { snapshot } = evaluation;
+  const rates = new Map<Entry, string>();
+  for (const { result } of evaluation.channels) {
+    const rate = result.channel.rateHz;
+    if (rate) rates.set(result.channel.place.entry, formatHz(rate.value));
+  }
+  const top: DocumentSymbol[] = [];
+  let section: { readonly name: string; readonly symbol: DocumentSymbol } | undefined;
+  for (const entry of snapshot.entries) {
+    if (!entry.key) continue;
+    const symbol = symbolOf(entry, snapshot, rates.get(entry));
+    if (entry.section === undefined) {
+      top.push(symbol);
+      section = { name: entry.name, symbol };
+    } else {
+      if (section?.name !== entry.section) {
+        section = { name: entry.section, symbol: { ...symbol, name: entry.section, kind: SymbolKind.Namespace } };
+        top.push(section.symbol);
+      }
+      section.symbol.children ??= [];
+      section.symbol.children.push(symbol);
+      section.symbol.range = { start: section.symbol.range.start, end: symbol.range.end };
+    }
+  }
+  return top;
+}
+
+function symbolOf(entry: Entry, snapshot: Snapshot, detail: string | undefined): DocumentSymbol {
+  const start = snapshot.startOf(entry) ?? 0;
+  const key = entry.key!;
+  return {
+    name: entry.name === '' ? '(no name)' : entry.name,
+    ...(detail === undefined ? {} : { detail }),
+    kind: kindOf(entry),
+    range: protocolRange(snapshot, start + key.start, start + Math.max(key.end, entry.value.end)),
+    selectionRange: protocolRange(snapshot, start + key.start, start + key.end),
+  };
+}
+
+function kindOf(entry: Entry): SymbolKind {
+  switch (entry.section) {
+    case undefined:
+      return entry.value.kind === 'scalar' ? SymbolKind.String : SymbolKind.Namespace;
+    case 'channels':
+      return SymbolKind.Field;
+    case 'clocks':
+      return SymbolKind.Constant;
+    case 'digitizers':
+      return SymbolKind.Interface;
+    case 'sensors':
+      return SymbolKind.Struct;
+    case 'filters':
+      return SymbolKind.Function;
+    case 'sources':
+      return SymbolKind.Event;
+    case 'groups':
+      return SymbolKind.Array;
+  }
+}

@@ -1,0 +1,107 @@
+import type { ChannelResult, Guard } from '../checks/judge.ts';
+import { judgeChannel, judgeRig } from '../checks/judge.ts';
+import { CHECK_NAMES } from '../checks/list.ts';
+import type { Finding } from '../checks/finding.ts';
+import type { ChannelReading } from '../rig/channel-reading.ts';
+import { readChannel, stillHolds } from '../rig/channel-reading.ts';
+import type { Entry } from '../rig/entry.ts';
+import type { Environment } from '../rig/environment.ts';
+import { readEnvironment } from '../rig/environment.ts';
+import type { Snapshot } from '../rig/snapshot.ts';
+
+/** One channel as read and judged. */
+export interface JudgedChannel {
+  readonly reading: ChannelReading;
+  readonly result: ChannelResult;
+}
+
+/**
+ * Everything that is known of one text: a pure function of it.
+ *
+ * An evaluation shares with the one before it whatever an edit has not touched, object by object; a comparison of
+ * identities therefore tells what an edit has changed.
+ */
+export interface Evaluation {
+  readonly snapshot: Snapshot;
+  readonly environment: Environment;
+  /** In document order, as `environment.channelEntries`. */
+  readonly channels: readonly JudgedChannel[];
+  /** What is said of no single channel: named things, names nobody uses, rates that do not go together. */
+  readonly rigFindings: readonly Finding[];
+}
+
+/**
+ * Evaluates a snapshot step by step: it yields after each small piece of work, so that the caller may stop between
+ * two of them, and returns the evaluation.
+ *
+ * @param near the entry whose neighbourhood is done first, the one somebody is typing in
+ */
+export function* evaluating(
+  snapshot: Snapshot,
+  guard: Guard,
+  previous?: Evaluation,
+  near?: Entry,
+): Generator<void, Evaluation> {
+  const environment = readEnvironment(snapshot, CHECK_NAMES, previous?.environment);
+  const channels = reuse(environment, previous);
+  yield;
+  for (const index of outward(channels.length, near ? environment.channelEntries.indexOf(near) : 0)) {
+    if (channels[index]) continue;
+    channels[index] = judged(environment.channelEntries[index]!, environment, guard);
+    yield;
+  }
+  const complete = channels as readonly JudgedChannel[];
+  return { snapshot, environment, channels: complete, rigFindings: judgeRig(environment, complete, guard) };
+}
+
+/** Evaluates at one go. */
+export function evaluate(snapshot: Snapshot, guard: Guard, previous?: Evaluation): Evaluation {
+  const steps = evaluating(snapshot, guard, previous);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+function judged(entry: Entry, environment: Environment, guard: Guard): JudgedChannel {
+  const reading = readChannel(entry, environment);
+  return { reading, result: judgeChannel(reading, environment.severities, guard) };
+}
+
+/** What still holds of the channels before, at the places they have now. */
+function reuse(environment: Environment, previous: Evaluation | undefined): (JudgedChannel | undefined)[] {
+  const entries = environment.channelEntries;
+  const channels = new Array<JudgedChannel | undefined>(entries.length).fill(undefined);
+  if (!previous || previous.environment.severities !== environment.severities) return channels;
+  const before = previous.environment.channelEntries;
+  const keep = (index: number, beforeIndex: number): void => {
+    const old = previous.channels[beforeIndex]!;
+    if (stillHolds(old.reading, environment)) channels[index] = old;
+  };
+  let head = 0;
+  while (head < entries.length && entries[head] === before[head]) {
+    keep(head, head);
+    head++;
+  }
+  let tail = 0;
+  while (tail < Math.min(entries.length, before.length) - head && entries.at(-1 - tail) === before.at(-1 - tail)) {
+    keep(entries.length - 1 - tail, before.length - 1 - tail);
+    tail++;
+  }
+  const moved = new Map<Entry, number>();
+  for (let index = head; index < before.length - tail; index++) moved.set(before[index]!, index);
+  for (let index = head; index < entries.length - tail; index++) {
+    const beforeIndex = moved.get(entries[index]!);
+    if (beforeIndex !== undefined) keep(index, beforeIndex);
+  }
+  return channels;
+}
+
+/** Every index once, from `middle` outward. */
+function* outward(count: number, middle: number): Generator<number> {
+  const start = Math.min(Math.max(0, middle), count);
+  for (let distance = 0; distance <= count; distance++) {
+    if (start + distance < count) yield start + distance;
+    if (distance > 0 && start - distance >= 0) yield start - distance;
+  }
+}
