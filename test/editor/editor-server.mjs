@@ -1,6 +1,6 @@
 // Starts and stops the served editor, with fresh folders for its settings, its extensions and the workspace.
 import { execFileSync, spawn } from 'node:child_process';
-import { cpSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -18,6 +18,7 @@ const SETTINGS = {
   'editor.hover.delay': 150,
   'editor.minimap.enabled': false,
   'chat.commandCenter.enabled': false,
+  'files.associations': { 'left-as-yaml.rig.yaml': 'yaml' },
 };
 
 function freePort() {
@@ -31,6 +32,10 @@ function freePort() {
   });
 }
 
+function writeSettings(folders, settings) {
+  writeFileSync(join(folders.userData, 'User/settings.json'), JSON.stringify(settings, null, 2));
+}
+
 function makeFolders(files) {
   const base = mkdtempSync(join(tmpdir(), 'ratewright-editor-'));
   const folders = {
@@ -42,11 +47,10 @@ function makeFolders(files) {
   mkdirSync(join(folders.userData, 'User'), { recursive: true });
   mkdirSync(folders.extensions, { recursive: true });
   mkdirSync(folders.workspace, { recursive: true });
-  writeFileSync(join(folders.userData, 'User/settings.json'), JSON.stringify(SETTINGS, null, 2));
+  writeSettings(folders, SETTINGS);
   writeFileSync(join(base, 'config.yaml'), 'auth: none\n');
   for (const [name, content] of Object.entries(files)) {
-    if (content.copyOf) cpSync(content.copyOf, join(folders.workspace, name));
-    else writeFileSync(join(folders.workspace, name), content.text);
+    writeFileSync(join(folders.workspace, name), content.text);
   }
   return folders;
 }
@@ -75,7 +79,7 @@ function whenListening(child) {
  * Installs the packed extension and serves the editor on a free port.
  *
  * @param vsix path of the packed extension
- * @param files workspace files by name: `{ text }` or `{ copyOf: path }`
+ * @param files workspace files by name: `{ text }`
  */
 export async function startEditor(vsix, files) {
   const folders = makeFolders(files);
@@ -106,10 +110,7 @@ export async function startEditor(vsix, files) {
     await stop();
     throw error;
   }
-  return {
-    url: `http://127.0.0.1:${port}/?folder=${encodeURIComponent(folders.workspace)}`,
-    folders,
-    pid: child.pid,
-    stop,
-  };
+  const url = `http://127.0.0.1:${port}/?folder=${encodeURIComponent(folders.workspace)}`;
+  const changeSetting = (name, value) => writeSettings(folders, { ...SETTINGS, [name]: value });
+  return { url, folders, changeSetting, stop };
 }
