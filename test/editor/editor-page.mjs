@@ -40,6 +40,15 @@ export async function runCommand(page, name) {
   await page.locator('.quick-input-list .monaco-list-row', { hasText: name }).first().click();
 }
 
+/** Chooses an entry of the list that is open by typing its name. */
+export async function chooseByKeys(page, name) {
+  const input = page.locator('.quick-input-widget input[type=text]');
+  await input.waitFor();
+  await input.fill(name);
+  await page.locator('.quick-input-list .monaco-list-row.focused', { hasText: name }).waitFor();
+  await page.keyboard.press('Enter');
+}
+
 /** Puts the cursor on a line and column of the active editor, both from 1. */
 export async function goTo(page, { line, column }) {
   await page.keyboard.press('Control+g');

@@ -32,10 +32,6 @@ function freePort() {
   });
 }
 
-function writeSettings(folders, settings) {
-  writeFileSync(join(folders.userData, 'User/settings.json'), JSON.stringify(settings, null, 2));
-}
-
 function makeFolders(files) {
   const base = mkdtempSync(join(tmpdir(), 'ratewright-editor-'));
   const folders = {
@@ -47,7 +43,7 @@ function makeFolders(files) {
   mkdirSync(join(folders.userData, 'User'), { recursive: true });
   mkdirSync(folders.extensions, { recursive: true });
   mkdirSync(folders.workspace, { recursive: true });
-  writeSettings(folders, SETTINGS);
+  writeFileSync(join(folders.userData, 'User/settings.json'), JSON.stringify(SETTINGS, null, 2));
   writeFileSync(join(base, 'config.yaml'), 'auth: none\n');
   for (const [name, content] of Object.entries(files)) {
     writeFileSync(join(folders.workspace, name), content.text);
@@ -111,6 +107,5 @@ export async function startEditor(vsix, files) {
     throw error;
   }
   const url = `http://127.0.0.1:${port}/?folder=${encodeURIComponent(folders.workspace)}`;
-  const changeSetting = (name, value) => writeSettings(folders, { ...SETTINGS, [name]: value });
-  return { url, folders, changeSetting, stop };
+  return { url, folders, stop };
 }
