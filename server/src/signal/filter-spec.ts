@@ -41,11 +41,15 @@ export type PoleFilter =
       readonly shape: FilterShape;
       readonly edge: FilterEdge;
     }
-  /** `edge.at === 'cutoff'` is the 3.0103 dB point of all poles together; `cornerHz` is each pole's own. */
+  /**
+   * `cornerHz` is each pole's own. `given` says what was written down: with `cutoff`, a digital filter holds the
+   * 3.0103 dB point of all poles together where it was asked for, and lets the corners move; left out, the corners.
+   */
   | {
       readonly response: 'rc';
       readonly order: number;
       readonly shape: FilterShape;
+      readonly given?: 'corner' | 'cutoff';
       readonly cornerHz: { readonly lowHz: number; readonly highHz: number };
     };
 

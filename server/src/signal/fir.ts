@@ -1,0 +1,136 @@
+import { type Curve, type Turn, turningCurve } from './curve.ts';
+import { powerOfTwoAtLeast, spectrumOf } from './spectrum-fft.ts';
+
+/** Points of the search grid for each tap: sixteen to a lobe, so that no lobe falls between two of them. */
+const GRID_POINTS_PER_TAP = 16;
+
+/** Longer filters are searched on a coarser grid, lest one line of text cost seconds. */
+const LARGEST_GRID = 1 << 17;
+
+/** What |H| / sum |h| must be under to be a null: what rounding leaves of an exact one. */
+const NULL_RATIO = 1e-13;
+
+/**
+ * A digital filter without feedback: A = -20 log10(|sum h[n] exp(-j w n)| / |sum h|), w = 2 pi f / rate, over
+ * 0 .. rate / 2. Where |sum h| is under half of the greatest |H| (band-pass taps), that greatest is the reference.
+ *
+ * No taps attenuate nothing; taps that are all 0 let nothing through.
+ */
+export function firCurve(givenTaps: readonly number[], rateHz: number): Curve {
+  if (givenTaps.length === 0) return turningCurve(() => 0, []);
+  const taps = scaledToOne(givenTaps);
+  const size = taps.reduce((sum, tap) => sum + Math.abs(tap), 0);
+  const points = turningPoints(taps, size);
+  const reference = referenceOf(taps, points);
+  const toDb = (magnitude: number): number => {
+    if (reference === 0) return Infinity;
+    // + 0 turns the -0 of a ratio of exactly 1 into 0.
+    return magnitude < NULL_RATIO * size ? Infinity : -20 * Math.log10(magnitude / reference) + 0;
+  };
+  const radiansPerHz = (2 * Math.PI) / rateHz;
+  const turns: readonly Turn[] = points.map((point) => ({ x: point.w / radiansPerHz, db: toDb(point.magnitude) }));
+  return turningCurve((hz) => toDb(magnitudeAt(taps, hz * radiansPerHz)), turns);
+}
+
+interface TurningPoint {
+  readonly w: number;
+  readonly magnitude: number;
+}
+
+/** Scaled so that no square of them overflows or vanishes. */
+function scaledToOne(taps: readonly number[]): Float64Array {
+  const finite = taps.map((tap) => (Number.isFinite(tap) ? tap : 0));
+  const largest = finite.reduce((most, tap) => Math.max(most, Math.abs(tap)), 0);
+  return Float64Array.from(finite, (tap) => (largest > 0 ? tap / largest : 0));
+}
+
+function referenceOf(taps: Float64Array, points: readonly TurningPoint[]): number {
+  const atZero = Math.abs(taps.reduce((sum, tap) => sum + tap, 0));
+  const greatest = points.reduce(
+    (most, point) => Math.max(most, point.magnitude),
+    Math.max(atZero, magnitudeAt(taps, Math.PI)),
+  );
+  return atZero < greatest / 2 ? greatest : atZero;
+}
+
+/** |H(w)|, the sum turned forward one tap at a time. */
+function magnitudeAt(taps: Float64Array, w: number): number {
+  const stepRe = Math.cos(w);
+  const stepIm = Math.sin(w);
+  // Horner's scheme in exp(-jw), from the last tap.
+  let re = 0;
+  let im = 0;
+  for (let n = taps.length - 1; n >= 0; n--) {
+    const turned = re * stepRe + im * stepIm + taps[n]!;
+    im = im * stepRe - re * stepIm;
+    re = turned;
+  }
+  return Math.hypot(re, im);
+}
+
+/** Every peak and every dip of |H| inside 0 .. pi: found on a grid, then refined on the sum itself. */
+function turningPoints(taps: Float64Array, size: number): readonly TurningPoint[] {
+  const gridSize = Math.min(powerOfTwoAtLeast(GRID_POINTS_PER_TAP * taps.length), LARGEST_GRID);
+  const { re, im } = spectrumOf(taps, gridSize);
+  const spacing = (2 * Math.PI) / gridSize;
+  const power = re.map((real, k) => real * real + im[k]! * im[k]!);
+  const negligible = (NULL_RATIO * size) ** 2;
+  const points: TurningPoint[] = [];
+  for (let k = 1; k < power.length - 1; k++) {
+    const before = power[k]! - power[k - 1]!;
+    const after = power[k + 1]! - power[k]!;
+    if (before * after > 0 || (before === 0 && after === 0)) continue;
+    const isPeak = before > 0 || after < 0;
+    // Between two nulls closer than the grid there is nothing but rounding.
+    if (isPeak && power[k]! < negligible) continue;
+    points.push(refined(taps, k * spacing, spacing));
+  }
+  return points;
+}
+
+/** Newton's method on the slope of |H|^2, kept within a grid spacing of where it began. */
+function refined(taps: Float64Array, start: number, spacing: number): TurningPoint {
+  let w = start;
+  for (let step = 0; step < 8; step++) {
+    const { slope, curvature } = powerSlope(taps, w);
+    const next = Math.min(Math.max(w - slope / curvature, start - spacing), start + spacing);
+    if (!Number.isFinite(next)) break;
+    const change = Math.abs(next - w);
+    w = next;
+    if (change < 1e-8 * spacing) break;
+  }
+  return { w, magnitude: magnitudeAt(taps, w) };
+}
+
+/** First and second derivative of |H|^2 over w, phases counted from the middle tap. */
+function powerSlope(taps: Float64Array, w: number): { readonly slope: number; readonly curvature: number } {
+  const middle = (taps.length - 1) / 2;
+  const stepRe = Math.cos(w);
+  const stepIm = -Math.sin(w);
+  let turnRe = Math.cos(w * middle);
+  let turnIm = Math.sin(w * middle);
+  let re = 0;
+  let im = 0;
+  let firstRe = 0;
+  let firstIm = 0;
+  let secondRe = 0;
+  let secondIm = 0;
+  for (let n = 0; n < taps.length; n++) {
+    const offset = n - middle;
+    const tapRe = taps[n]! * turnRe;
+    const tapIm = taps[n]! * turnIm;
+    re += tapRe;
+    im += tapIm;
+    firstRe += offset * tapIm;
+    firstIm -= offset * tapRe;
+    secondRe -= offset * offset * tapRe;
+    secondIm -= offset * offset * tapIm;
+    const turned = turnRe * stepRe - turnIm * stepIm;
+    turnIm = turnRe * stepIm + turnIm * stepRe;
+    turnRe = turned;
+  }
+  return {
+    slope: 2 * (re * firstRe + im * firstIm),
+    curvature: 2 * (firstRe * firstRe + firstIm * firstIm + re * secondRe + im * secondIm),
+  };
+}
