@@ -37,6 +37,7 @@ export class MapPanel implements Disposable {
   private create(): void {
     const column = { viewColumn: ViewColumn.Beside, preserveFocus: true };
     const panel = window.createWebviewPanel('ratewright.map', 'Alias map', column, { enableScripts: false });
+    panel.webview.html = emptyMapPage(NO_CHANNEL);
     this.panel = panel;
     this.following = [
       window.onDidChangeTextEditorSelection((change) => void this.show(change.textEditor)),
@@ -57,17 +58,23 @@ export class MapPanel implements Disposable {
     if (editor === undefined || !isRigFile(editor.document)) return;
     const mine = ++this.latest;
     const map = await this.ask(editor.document.uri, editor.selection.active);
-    if (this.panel === undefined || mine !== this.latest) return;
-    this.panel.title = map === null ? 'Alias map' : map.title;
+    if (map === 'outdated' || this.panel === undefined || mine !== this.latest) return;
+    this.panel.title = map?.title ?? 'Alias map';
     this.panel.webview.html = map === null ? emptyMapPage(NO_CHANNEL) : mapPage(map);
   }
 
-  private async ask(uri: Uri, position: Position): Promise<AliasMap | null> {
+  private async ask(uri: Uri, position: Position): Promise<AliasMap | null | 'outdated'> {
     const { client } = this;
-    if (!client.isRunning()) return null;
-    return client.sendRequest<AliasMap | null>('ratewright/map', {
+    if (!client.isRunning()) return 'outdated';
+    const parameters = {
       textDocument: { uri: client.code2ProtocolConverter.asUri(uri) },
       position: client.code2ProtocolConverter.asPosition(position),
-    });
+    };
+    try {
+      return await client.sendRequest<AliasMap | null>('ratewright/map', parameters);
+    } catch {
+      // The text changed before the answer was ready; the change has asked again.
+      return 'outdated';
+    }
   }
 }
