@@ -18,30 +18,39 @@ export const VOCABULARY: readonly KeyRow[] = [
   ...PATTERN_ROWS,
 ];
 
-/** Every context, in the order in which a reference shows them, with a sentence of what it is. */
-export const CONTEXTS: ReadonlyMap<ContextName, string> = new Map<ContextName, string>([
-  ['rig', 'The top of a rig file.'],
-  ['channel', 'A channel: one sensor, sampled and stored. `defaults` takes the same keys.'],
-  ['step', 'A digital step after the converter, in `then`.'],
-  ['clock', 'A clock that sample rates are divided from.'],
-  ['digitizer', 'A converter with its input.'],
-  ['interleave', 'Converters that take turns, in a digitizer.'],
-  ['sensor', 'A sensor. A channel may write these keys itself instead of naming one.'],
-  ['filter', 'A filter, ahead of the converter or in a digital step.'],
-  ['source', 'Something that the sensor, or the wiring, picks up.'],
-  ['mains', 'The line frequency, written as a map.'],
-  ['group', 'Channels whose phase is compared.'],
-  ['pattern', 'Sample slots that are kept, in a channel.'],
-  ['pulses', 'A pulse train, in a channel.'],
-  ['spectrum', 'How a channel is turned into a spectrum.'],
-  ['run', 'How long is recorded, and where the data goes.'],
-  ['acceptance', 'A finding that somebody has looked at and accepted.'],
-]);
+export type { ContextName, KeyRow, ValueKind } from './vocabulary-kinds.ts';
+
+/** One context: what its maps are. */
+export interface ContextRow {
+  readonly name: ContextName;
+  readonly title: string;
+  readonly doc: string;
+}
+
+/** Every context, in the order in which a reference shows them. */
+export const CONTEXTS: readonly ContextRow[] = [
+  { name: 'rig', title: 'Rig file', doc: 'The keys at the top of a rig file.' },
+  { name: 'channel', title: 'Channel', doc: 'One sensor, sampled and stored. `defaults` takes the same keys.' },
+  { name: 'step', title: 'Step of `then`', doc: 'A digital step after the converter.' },
+  { name: 'clock', title: 'Clock', doc: 'What sample rates are divided from.' },
+  { name: 'digitizer', title: 'Digitizer', doc: 'A converter with its input.' },
+  { name: 'interleave', title: '`interleave` of a digitizer', doc: 'Converters that take turns.' },
+  { name: 'sensor', title: 'Sensor', doc: 'A channel may write these keys itself instead of naming a sensor.' },
+  { name: 'filter', title: 'Filter', doc: 'Ahead of the converter a filter is analogue, in a step it is digital.' },
+  { name: 'source', title: 'Source', doc: 'Something that the sensor, or the wiring, picks up.' },
+  { name: 'mains', title: '`mains` as a map', doc: 'The line frequency, as a source called `mains`.' },
+  { name: 'group', title: 'Group', doc: 'Channels whose phase is compared.' },
+  { name: 'pattern', title: '`pattern` of a channel', doc: 'Sample slots that are kept.' },
+  { name: 'pulses', title: '`pulses` of a channel', doc: 'A pulse train that is read for its edges.' },
+  { name: 'spectrum', title: '`spectrum` of a channel', doc: 'How the record will be turned into a spectrum.' },
+  { name: 'run', title: 'Run', doc: 'How long is recorded, and where the data goes.' },
+  { name: 'acceptance', title: 'Item of `accept`', doc: 'A finding that somebody has looked at and accepted.' },
+];
 
 const ROWS_BY_CONTEXT: ReadonlyMap<ContextName, ReadonlyMap<string, KeyRow>> = new Map(
-  [...CONTEXTS.keys()].map((context) => [
-    context,
-    new Map(VOCABULARY.filter(({ contexts }) => contexts.includes(context)).map((row) => [row.key, row])),
+  CONTEXTS.map(({ name }) => [
+    name,
+    new Map(VOCABULARY.filter(({ contexts }) => contexts.includes(name)).map((row) => [row.key, row])),
   ]),
 );
 
