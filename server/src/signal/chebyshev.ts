@@ -58,7 +58,11 @@ export function inverseChebyshevCutoff(order: number, stopbandDb: number): numbe
 
 /** ln |T(x)| for x >= 0, without overflow; `-Infinity` at a zero. */
 function lnChebyshev(order: number, x: number): number {
-  if (x === 0 && order % 2 === 1) return -Infinity;
+  // cos(order acos x), counted from the middle, where acos has lost the small x.
+  if (x < 0.5) {
+    const angle = order * Math.asin(x);
+    return Math.log(Math.abs(order % 2 === 1 ? Math.sin(angle) : Math.cos(angle)));
+  }
   if (x <= 1) return Math.log(Math.abs(Math.cos(order * Math.acos(x))));
   const exponent = order * Math.acosh(x);
   return exponent - Math.LN2 + Math.log1p(Math.exp(-2 * exponent));

@@ -16,9 +16,9 @@ export interface Spectrum {
 export function spectrumOf(samples: ArrayLike<number>, size: number = samples.length): Spectrum {
   const transformSize = powerOfTwoAtLeast(size);
   const fft = new FFT(transformSize);
-  const input = new Array<number>(transformSize).fill(0);
+  const input = new Float64Array(transformSize);
   for (let n = 0; n < Math.min(samples.length, transformSize); n++) input[n] = samples[n]!;
-  const output: number[] = fft.createComplexArray();
+  const output = new Float64Array(2 * transformSize);
   fft.realTransform(output, input);
   const bins = transformSize / 2 + 1;
   const re = new Float64Array(bins);
