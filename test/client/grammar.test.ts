@@ -16,11 +16,12 @@ const CLOSE_LIST = ']|punctuation.definition.list.end';
 const ITEM = '-|punctuation.definition.item';
 
 const section = (text: string) => `${text}|keyword.other.section`;
-const key = (text: string) => `${text}|support.type.property-name`;
+const key = (text: string) => `${text}|variable.other.property`;
 const name = (text: string) => `${text}|entity.name.type`;
 const reference = (text: string) => `${text}|support.class.name`;
 const number = (text: string) => `${text}|constant.numeric`;
 const unit = (text: string) => `${text}|keyword.other.unit`;
+const choice = (text: string) => `${text}|variable.other.enummember`;
 const plain = (text: string) => `${text}|string.unquoted`;
 const constant = (text: string) => `${text}|constant.language`;
 const RANGE = '..|keyword.operator.range';
@@ -123,6 +124,13 @@ describe('keys and names in block style', () => {
     ]);
   });
 
+  it('marks a choice among fixed words', () => {
+    expect(tokensOf(grammar, '    sampling: baseband')).toEqual([key('sampling'), COLON, choice('baseband')]);
+    expect(tokensOf(grammar, '    measures: sound-pressure # SPL')).toEqual([
+      ...[key('measures'), COLON, choice('sound-pressure'), '# SPL|comment.line.number-sign'],
+    ]);
+  });
+
   it('reads steps as items', () => {
     expect(tokensOf(grammar, '    then:\n      - decimate: 5\n        filter: tidy')).toEqual([
       ...[key('then'), COLON],
@@ -144,7 +152,7 @@ describe('keys and names in block style', () => {
 describe('flow style', () => {
   it('reads maps within maps, over lines', () => {
     expect(tokensOf(grammar, '  card: { response: butterworth,\n    order: 6 } # six')).toEqual([
-      ...[name('card'), COLON, OPEN_MAP, key('response'), COLON, plain('butterworth'), COMMA],
+      ...[name('card'), COLON, OPEN_MAP, key('response'), COLON, choice('butterworth'), COMMA],
       ...[key('order'), COLON, number('6'), CLOSE_MAP, '# six|comment.line.number-sign'],
     ]);
   });

@@ -112,6 +112,12 @@ export async function hoverOver(page, target) {
   return hover.first();
 }
 
+/** Moves the mouse to where nothing is, and waits until what the mouse had called up is gone. */
+export async function pointAtNothing(page) {
+  await page.mouse.move(20, WINDOW.height / 2);
+  await page.locator('.workbench-hover').waitFor({ state: 'hidden' });
+}
+
 /** Moves the mouse to the middle of what is shown and clicks: menus ignore a click that no movement came before. */
 export async function clickByMouse(target) {
   const { x, y, width, height } = await target.boundingBox();

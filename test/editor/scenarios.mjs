@@ -9,6 +9,7 @@ import {
   goTo,
   hoverOver,
   openFile,
+  pointAtNothing,
   retypeFrom,
   runCommand,
   squiggles,
@@ -25,7 +26,7 @@ export const files = {
   'findings.rig.yaml': { text: FAN },
   'left-as-yaml.rig.yaml': { text: FAN },
   'typing.rig.yaml': { text: FAN },
-  'hover.rig.yaml': { text: FAN },
+  'extract-fan.rig.yaml': { text: FAN },
   'quick-fix.rig.yaml': { text: FAN },
   'completion.rig.yaml': { text: FAN },
   'fix-every.rig.yaml': { text: TWO_CHANNELS },
@@ -51,7 +52,10 @@ async function findingsFollowTheTyping({ page }) {
 }
 
 async function hoverShowsThePicture({ page, shoot }) {
-  await openFile(page, 'hover.rig.yaml');
+  // The picture for the README: nothing else is open.
+  await runCommand(page, 'View: Close All Editors');
+  await page.locator('.tab').waitFor({ state: 'detached' });
+  await openFile(page, 'extract-fan.rig.yaml');
   await waitForSquiggles(page, 'error', 1);
   const hover = await hoverOver(page, squiggles(page, 'error').first());
   await hover.locator(PICTURE).waitFor();
@@ -60,7 +64,7 @@ async function hoverShowsThePicture({ page, shoot }) {
 }
 
 async function findingsNameOpensItsPage({ page, shoot }) {
-  await openFile(page, 'hover.rig.yaml');
+  await openFile(page, 'extract-fan.rig.yaml');
   const hover = await hoverOver(page, squiggles(page, 'error').first());
   await hover.locator('a.code-link', { hasText: 'fold-in-band' }).click();
   await page.locator('.tab.active', { hasText: 'fold-in-band.md' }).waitFor();
@@ -107,6 +111,7 @@ async function showAliasMap({ page, shoot }) {
   await runCommand(page, 'Ratewright: Show alias map');
   await page.locator('.tab', { hasText: 'bearing-drive-end' }).waitFor();
   await webview(page).locator(PICTURE).waitFor();
+  await pointAtNothing(page);
   await shoot('alias-map');
   await page.locator('.tab', { hasText: 'bearing-drive-end' }).locator('.codicon-close').click();
   await page.locator('.tab', { hasText: 'bearing-drive-end' }).waitFor({ state: 'detached' });
@@ -158,7 +163,7 @@ async function killedServerComesBack({ page, editor }) {
 
 async function picturesFollowTheTheme({ page, shoot }) {
   const seen = new Set();
-  await openFile(page, 'hover.rig.yaml');
+  await openFile(page, 'extract-fan.rig.yaml');
   for (const [theme, root, name] of [
     ['Dark Modern', '.vs-dark', 'hover-dark'],
     ['Dark High Contrast', '.hc-black', 'hover-high-contrast'],
