@@ -1,0 +1,31 @@
+/** Every limit on what is read, searched or sent. Past one, the reader says so and goes on with what lies before it. */
+
+/** UTF-16 units of one file: 4 Mi. */
+export const MOST_CHARACTERS = 4 * 1024 * 1024;
+
+/** Entries of the section `channels` in one file. */
+export const MOST_CHANNELS = 20_000;
+
+/** Maps and lists inside one another. */
+export const MOST_DEPTH = 64;
+
+/** Times that aliases and merge keys are followed in one file. */
+export const MOST_ALIAS_EXPANSIONS = 10_000;
+
+/** Harmonics of one source. */
+export const MOST_HARMONICS = 1_000;
+
+/** Pairs of sidebands of one source. */
+export const MOST_SIDEBANDS = 1_000;
+
+/** Syntax findings of one file. */
+export const MOST_SYNTAX_FINDINGS = 200;
+
+/** Findings of one file that are sent to an editor. */
+export const MOST_FINDINGS_SENT = 1_000;
+
+/** Candidates that a search for remedies proves. */
+export const MOST_CANDIDATES_PROVED = 64;
+
+/** The highest order of a filter. */
+export const MOST_FILTER_ORDER = 50;
