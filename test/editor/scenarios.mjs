@@ -130,7 +130,7 @@ async function newFileFromSample({ page }) {
   await sample.waitFor();
   await sample.click();
   await page.locator('.tab.active', { hasText: 'Untitled-1' }).waitFor();
-  await squiggles(page, 'error').first().waitFor();
+  await squiggles(page, 'error').or(squiggles(page, 'warning')).first().waitFor();
 }
 
 /** The processes that run the extension's server out of the folder of this run's extensions. */
