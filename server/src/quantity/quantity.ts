@@ -77,6 +77,8 @@ export type QuantityReading =
 
 const LONGEST_QUANTITY = 256;
 const SHOWN_TEXT = 40;
+const PLUS = 43;
+const PLUS_MINUS = 0xb1;
 const NOT_A_NUMBER = /^[-+\u2212]?(?:\.?nan|\.?inf|infinity|∞)(?![\p{L}\d])/iu;
 const WITHOUT_AMPLITUDE: ReadonlySet<Dimension> = new Set([
   'frequency',
@@ -100,29 +102,31 @@ const WITHOUT_AMPLITUDE: ReadonlySet<Dimension> = new Set([
  * own unit may stand here is for the reader of the key to say.
  */
 export function readQuantity(text: string): QuantityReading {
-  if (text.length > LONGEST_QUANTITY) return failure('too-long', text, 0, text.length);
+  if (text.length > LONGEST_QUANTITY) return { problem: failure('too-long', text, 0, text.length) };
   const start = skipSpaces(text, 0);
   const sign = symmetricSign(text, start);
   const first = readScalar(text, start + sign.length);
-  if (first.problem) return first;
-  const separator = skipSpaces(text, first.end);
-  if (sign !== '') {
-    if (first.scalar.number.text.search(/[-+\u2212]/) === 0) return notAQuantity(text, start, first.end);
-    if (separator < text.length) return notAQuantity(text, separator, text.length);
-    return { quantity: { kind: 'symmetric', limit: first.scalar, sign } };
-  }
-  if (separator === text.length) return { quantity: first.scalar };
-  if (!text.startsWith('..', separator) || text[separator + 2] === '.')
-    return notAQuantity(text, separator, text.length);
+  if (first.kind !== 'scalar') return { problem: first };
+  const firstEnd = endOf(text, first);
+  const next = skipSpaces(text, firstEnd);
+  if (sign !== '') return readSymmetric(text, start, sign, first, next);
+  if (next === text.length) return { quantity: first };
+  if (!text.startsWith('..', next) || text[next + 2] === '.') return { problem: notAQuantity(text, next) };
 
-  const second = readScalar(text, skipSpaces(text, separator + 2));
-  if (second.problem) return second;
-  const end = skipSpaces(text, second.end);
-  if (end < text.length) return notAQuantity(text, end, text.length);
-  const low = withUnitOf(first.scalar, second.scalar);
-  if (!low) return failure('not-finite', text, start, first.end);
-  const between = text.slice(first.end, second.scalar.number.start);
-  return { quantity: { kind: 'range', low, high: second.scalar, separator: between } };
+  const second = readScalar(text, skipSpaces(text, next + 2));
+  if (second.kind !== 'scalar') return { problem: second };
+  const end = skipSpaces(text, endOf(text, second));
+  if (end < text.length) return { problem: notAQuantity(text, end) };
+  const low = withUnitOf(first, second);
+  if (!low) return { problem: failure('not-finite', text, start, firstEnd) };
+  const separator = text.slice(firstEnd, second.number.start);
+  return { quantity: { kind: 'range', low, high: second, separator } };
+}
+
+function readSymmetric(text: string, start: number, sign: string, limit: Scalar, next: number): QuantityReading {
+  if (/^[-+\u2212]/.test(limit.number.text)) return { problem: notAQuantity(text, start) };
+  if (next < text.length) return { problem: notAQuantity(text, next) };
+  return { quantity: { kind: 'symmetric', limit, sign } };
 }
 
 /**
@@ -130,7 +134,8 @@ export function readQuantity(text: string): QuantityReading {
  * The scalar's own unit, if it has one, is replaced.
  */
 export function inUnit(scalar: Scalar, unit: Unit): Scalar | undefined {
-  const { value, halfDigit } = converted(scalar.number, unit);
+  const value = valueIn(scalar.number, unit);
+  const halfDigit = halfDigitIn(scalar.number, unit);
   if (!Number.isFinite(value) || !Number.isFinite(halfDigit)) return undefined;
   return { ...scalar, value, halfDigit, unit, dimension: unit.dimension };
 }
@@ -145,41 +150,57 @@ export function peakOf(scalar: Scalar): number {
   return scalar.amplitude === 'p-p' ? scalar.value / 2 : scalar.value;
 }
 
-type ScalarReading =
-  | { readonly scalar: Scalar; readonly end: number; readonly problem?: undefined }
-  | { readonly problem: QuantityProblem };
-
-function readScalar(text: string, start: number): ScalarReading {
+function readScalar(text: string, start: number): Scalar | QuantityProblem {
   const number = scanNumber(text, start);
   if (!number) return numberMissing(text, start);
-  const plain = plainDigitsEnd(text, number);
-  if (plain !== number.end) return notPlainDigits(text, number, plain);
+  const plainEnd = plainDigitsEnd(text, number);
+  if (plainEnd !== number.end) return notPlainDigits(text, number, plainEnd);
 
   const unitStart = skipSpaces(text, number.end);
-  const bareAmplitude = unitStart > number.end ? amplitudeAt(text, unitStart) : undefined;
-  const unitEnd = bareAmplitude ? unitStart : scanUnitWord(text, unitStart);
+  const unitEnd = amplitudeAfter(text, number.end) ? unitStart : scanUnitWord(text, unitStart);
+  if (unitEnd === unitStart) return scalarOf(text, number, undefined, undefined, '');
   const unitText = text.slice(unitStart, unitEnd);
-  const unit = unitText === '' ? undefined : (tableUnit(unitText) ?? rarerUnit(unitText));
-  if (unitText !== '' && !unit) return unknownUnit(text, unitStart, unitEnd);
-
-  const amplitudeStart = skipSpaces(text, unitEnd);
-  const amplitude = bareAmplitude ?? (amplitudeStart > unitEnd ? amplitudeAt(text, amplitudeStart) : undefined);
-  const { value, halfDigit } = converted(number, unit);
-  if (!Number.isFinite(value) || !Number.isFinite(halfDigit)) return failure('not-finite', text, start, number.end);
-  const dimension = unit?.dimension ?? 'number';
-  const unitSpan = unit && { start: unitStart, end: unitEnd };
-  const scalar = { kind: 'scalar', value, unit, dimension, halfDigit, number, unitSpan, unitText } as const;
-  if (!amplitude) return { scalar, end: unit ? unitEnd : number.end };
-  const end = amplitudeStart + amplitude.length;
-  if (WITHOUT_AMPLITUDE.has(dimension)) return failure('amplitude-misplaced', text, amplitudeStart, end);
-  return { scalar: { ...scalar, amplitude }, end };
+  const unit = tableUnit(unitText) ?? rarerUnit(unitText);
+  if (!unit) return failure('unknown-unit', text, unitStart, unitEnd, otherSpelling(unitText));
+  return scalarOf(text, number, unit, { start: unitStart, end: unitEnd }, unitText);
 }
 
-function converted(number: WrittenNumber, unit: Unit | undefined): { value: number; halfDigit: number } {
-  const { tens, times, over } = unit ?? { tens: 0, times: 1, over: 1 };
-  const value = (valueTimesTens(number, tens) * times) / over;
-  const halfDigit = (0.5 * powerOfTen(number.exponent - number.decimals + tens) * times) / over;
-  return { value, halfDigit };
+function scalarOf(
+  text: string,
+  number: WrittenNumber,
+  unit: Unit | undefined,
+  unitSpan: Span | undefined,
+  unitText: string,
+): Scalar | QuantityProblem {
+  const value = valueIn(number, unit);
+  const halfDigit = halfDigitIn(number, unit);
+  if (!Number.isFinite(value) || !Number.isFinite(halfDigit)) {
+    return failure('not-finite', text, number.start, number.end);
+  }
+  const dimension = unit === undefined ? 'number' : unit.dimension;
+  const end = unitSpan === undefined ? number.end : unitSpan.end;
+  const amplitude = amplitudeAfter(text, end);
+  if (!amplitude) return { kind: 'scalar', value, unit, dimension, halfDigit, number, unitSpan, unitText };
+  if (WITHOUT_AMPLITUDE.has(dimension)) {
+    const start = skipSpaces(text, end);
+    return failure('amplitude-misplaced', text, start, start + amplitude.length);
+  }
+  return { kind: 'scalar', value, unit, dimension, halfDigit, amplitude, number, unitSpan, unitText };
+}
+
+function valueIn(number: WrittenNumber, unit: Unit | undefined): number {
+  return unit ? (valueTimesTens(number, unit.tens) * unit.times) / unit.over : number.value;
+}
+
+function halfDigitIn({ exponent, decimals }: WrittenNumber, unit: Unit | undefined): number {
+  const power = exponent - decimals;
+  return unit ? (0.5 * powerOfTen(power + unit.tens) * unit.times) / unit.over : 0.5 * powerOfTen(power);
+}
+
+/** The end of a scalar in its text, its amplitude word included. */
+function endOf(text: string, scalar: Scalar): number {
+  const end = scalar.unitSpan === undefined ? scalar.number.end : scalar.unitSpan.end;
+  return scalar.amplitude ? skipSpaces(text, end) + scalar.amplitude.length : end;
 }
 
 /** A density, a sensitivity, or an own unit; not another spelling of a unit in the table. */
@@ -195,22 +216,28 @@ function withUnitOf(low: Scalar, high: Scalar): Scalar | undefined {
   return taken && high.amplitude && !low.amplitude ? { ...taken, amplitude: high.amplitude } : taken;
 }
 
-function amplitudeAt(text: string, at: number): Amplitude | undefined {
+/** The amplitude word that follows `end` after a space. */
+function amplitudeAfter(text: string, end: number): Amplitude | undefined {
+  const at = skipSpaces(text, end);
+  const code = text.charCodeAt(at);
+  if (at === end || (code !== 112 /* p */ && code !== 114) /* r */) return undefined;
   const found = (['peak', 'rms', 'p-p'] as const).find((word) => text.startsWith(word, at));
   if (!found) return undefined;
   const next = at + found.length;
-  return next === text.length || skipSpaces(text, next) > next || text.startsWith('..', next) ? found : undefined;
+  return next === text.length || isSpace(text.charCodeAt(next)) || text.startsWith('..', next) ? found : undefined;
 }
 
 /** `±` or `+/-` and the spaces behind it, as written; `''` where there is none. */
 function symmetricSign(text: string, start: number): string {
-  const length = text[start] === '±' ? 1 : text.startsWith('+/-', start) ? 3 : 0;
+  const code = text.charCodeAt(start);
+  if (code !== PLUS_MINUS && code !== PLUS) return '';
+  const length = code === PLUS_MINUS ? 1 : text.startsWith('+/-', start) ? 3 : 0;
   return length === 0 ? '' : text.slice(start, skipSpaces(text, start + length));
 }
 
 /** Space, tab, line breaks, and the unbreakable and thin spaces that text is pasted with. */
 function isSpace(code: number): boolean {
-  if (code === 32 || (code >= 9 && code <= 13)) return true;
+  if (code < 0xa0) return code === 32 || (code >= 9 && code <= 13);
   return code === 0xa0 || code === 0x2009 || code === 0x202f;
 }
 
@@ -232,24 +259,20 @@ function plainDigitsEnd(text: string, number: WrittenNumber): number {
   return runEnd;
 }
 
-function notPlainDigits(text: string, number: WrittenNumber, end: number): { problem: QuantityProblem } {
+function notPlainDigits(text: string, number: WrittenNumber, end: number): QuantityProblem {
   const run = text.slice(number.start, end);
   const plain = /^[-+\u2212]?[\d_.]+$/.test(run) ? run.replaceAll('_', '') : undefined;
   return failure('digit-separator', text, number.start, end, plain);
 }
 
-function numberMissing(text: string, start: number): { problem: QuantityProblem } {
+function numberMissing(text: string, start: number): QuantityProblem {
   const word = NOT_A_NUMBER.exec(text.slice(start));
   if (word) return failure('not-finite', text, start, start + word[0].length);
-  return start < text.length ? notAQuantity(text, start, text.length) : notAQuantity(text, 0, text.length);
+  return notAQuantity(text, start < text.length ? start : 0);
 }
 
-function unknownUnit(text: string, start: number, end: number): { problem: QuantityProblem } {
-  return failure('unknown-unit', text, start, end, otherSpelling(text.slice(start, end)));
-}
-
-function notAQuantity(text: string, start: number, end: number): { problem: QuantityProblem } {
-  return failure('not-a-quantity', text, start, end);
+function notAQuantity(text: string, start: number): QuantityProblem {
+  return failure('not-a-quantity', text, start, text.length);
 }
 
 function failure(
@@ -258,7 +281,7 @@ function failure(
   start: number,
   end: number,
   suggestion?: string,
-): { problem: QuantityProblem } {
+): QuantityProblem {
   const problem = { kind, start, end, text: text.slice(start, Math.min(end, start + SHOWN_TEXT)) };
-  return { problem: suggestion === undefined ? problem : { ...problem, suggestion } };
+  return suggestion === undefined ? problem : { ...problem, suggestion };
 }

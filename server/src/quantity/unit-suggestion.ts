@@ -72,10 +72,10 @@ const PER_ROOT_HERTZ = /\/(?:rt|sqrt|\u221A)\(?hz\)?$/i;
  * or wrong case (`khz`, `KHZ`), alone or in a density or sensitivity (`uV/°C`). The text to write instead.
  */
 export function otherSpelling(word: string): string | undefined {
-  if (tableUnit(word)) return undefined;
-  return (
-    OTHER_SPELLINGS.get(word) ?? caseSlip(word, allUnits(), SHORTEST_CASE_SLIP) ?? composedSpelling(word, otherSpelling)
-  );
+  const certain = OTHER_SPELLINGS.get(word);
+  if (certain !== undefined) return certain;
+  const slip = word.length >= SHORTEST_CASE_SLIP ? caseSlip(word)?.symbol : undefined;
+  return slip ?? composedSpelling(word, otherSpelling);
 }
 
 /**
@@ -83,33 +83,41 @@ export function otherSpelling(word: string): string | undefined {
  * are given. Also finds what `otherSpelling` leaves alone: `MV` or `pa` by case, `dgeC` by a slip.
  */
 export function suggestUnit(word: string, dimensions?: readonly Dimension[]): string | undefined {
-  const fits = (symbol: string): boolean => {
-    const found = findUnit(symbol.split(' ')[0]!);
-    return !dimensions || (found !== undefined && dimensions.includes(found.dimension));
+  const fits = (symbol: string | undefined): boolean => {
+    const found = symbol === undefined ? undefined : findUnit(symbol.split(' ')[0]!);
+    return found !== undefined && (!dimensions || dimensions.includes(found.dimension));
   };
-  const candidates = allUnits().filter(({ symbol }) => fits(symbol));
-  const certain = otherSpelling(word);
-  if (certain !== undefined && fits(certain)) return certain;
-  const composed = composedSpelling(word, suggestUnit);
-  if (composed !== undefined && fits(composed)) return composed;
-  return caseSlip(word, candidates, 1) ?? misspelled(word, candidates);
+  const likely = [otherSpelling(word), composedSpelling(word, suggestUnit), caseSlip(word)?.symbol];
+  return (
+    likely.find(fits) ??
+    misspelled(
+      word,
+      allUnits()
+        .map(({ symbol }) => symbol)
+        .filter(fits),
+    )
+  );
 }
 
+const BY_LOWER_CASE: ReadonlyMap<string, Unit> = new Map(
+  [...allUnits()].reverse().map((unit) => [unit.symbol.toLowerCase(), unit]),
+);
+
 /** The unit that differs by case alone. `mHz` is not `MHz`: SI has both, and they are 10^9 apart. */
-function caseSlip(word: string, candidates: readonly Unit[], shortest: number): string | undefined {
-  if (word.length < shortest) return undefined;
-  const lower = word.toLowerCase();
-  return candidates.find(({ symbol }) => symbol.toLowerCase() === lower && !milliForMega(word, symbol))?.symbol;
+function caseSlip(word: string): Unit | undefined {
+  const unit = BY_LOWER_CASE.get(word.toLowerCase());
+  return unit && unit.symbol !== word && !milliForMega(word, unit.symbol) ? unit : undefined;
 }
 
 function milliForMega(word: string, symbol: string): boolean {
   return word[0] === 'm' && symbol[0] === 'M' && word.slice(1) === symbol.slice(1);
 }
 
-function misspelled(word: string, candidates: readonly Unit[]): string | undefined {
+/** The only unit one slip away. */
+function misspelled(word: string, symbols: readonly string[]): string | undefined {
   if (word.length < SHORTEST_MISSPELLING) return undefined;
-  const one = candidates.filter(({ symbol }) => symbol.length > 2 && slipsBetween(word, symbol, 1) === 1);
-  return one.length === 1 ? one[0]!.symbol : undefined;
+  const near = symbols.filter((symbol) => symbol.length > 2 && slipsBetween(word, symbol, 1) === 1);
+  return near.length === 1 ? near[0] : undefined;
 }
 
 /** Puts right the parts of a density or a sensitivity; `undefined` where there is nothing to put right. */

@@ -26,6 +26,7 @@ function continuesUnit(text: string, at: number): boolean {
 export function scanUnitWord(text: string, at: number): number {
   if (!beginsUnit(text, at)) return at;
   let end = at + 1;
+  while (isLetter(text.charCodeAt(end))) end += 1;
   while (end < text.length && (beginsUnit(text, end) || continuesUnit(text, end))) end += 1;
   return end;
 }

@@ -107,6 +107,7 @@ const WITHOUT_DENSITY: ReadonlySet<Dimension> = new Set(['dbfs', 'decibel', 'slo
 
 /** `µ` (U+00B5) and `μ` (U+03BC) are `u`, and `√Hz` is `rtHz`. */
 function normalised(text: string): string {
+  if (!/[\u00B5\u03BC\u221A]/.test(text)) return text;
   return text.replace(/[\u00B5\u03BC]/g, 'u').replace('\u221AHz', 'rtHz');
 }
 

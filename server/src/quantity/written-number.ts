@@ -23,13 +23,20 @@ const TRUE_MINUS = 0x2212;
 const EXACT_DIGITS = 15;
 /** Keeps the exponent itself finite; any double over- or underflows long before. */
 const EXPONENT_LIMIT = 99_999;
-/** 10^0 .. 10^22, the powers of ten that a double holds exactly. */
-const EXACT_POWERS: readonly number[] = Array.from({ length: 23 }, (_, power) => Number(`1e${power}`));
+/** 10^22 is the last power of ten that a double holds exactly. */
+const LAST_EXACT_POWER = 22;
+/** 10^-22 .. 10^22. */
+const POWERS: readonly number[] = Array.from({ length: 2 * LAST_EXACT_POWER + 1 }, (_, index) =>
+  Number(`1e${index - LAST_EXACT_POWER}`),
+);
 
 /** 10^power, correctly rounded. */
 export function powerOfTen(power: number): number {
-  const exact = EXACT_POWERS[power];
-  return exact ?? Number(`1e${power}`);
+  return isNear(power) ? POWERS[power + LAST_EXACT_POWER]! : Number(`1e${power}`);
+}
+
+function isNear(power: number): boolean {
+  return power >= -LAST_EXACT_POWER && power <= LAST_EXACT_POWER;
 }
 
 export function isDigit(code: number): boolean {
@@ -38,7 +45,8 @@ export function isDigit(code: number): boolean {
 
 /** `value` x 10^power, rounded once where 10^|power| is exact. */
 export function shiftedByTens(value: number, power: number): number {
-  return power < 0 ? value / powerOfTen(-power) : value * powerOfTen(power);
+  if (power < 0) return value / powerOfTen(-power);
+  return power === 0 ? value : value * powerOfTen(power);
 }
 
 /**
@@ -74,13 +82,15 @@ export function scanNumber(text: string, start: number): WrittenNumber | undefin
   const exponentEnd = scanExponent(text, at);
   const exponent = exponentEnd === at ? 0 : readExponent(text.slice(at + 1, exponentEnd));
   const exact = significant <= EXACT_DIGITS ? (negative ? -digits : digits) + 0 : undefined;
-  const written = { text: text.slice(start, exponentEnd), decimals, exponent, digits: exact, start, end: exponentEnd };
-  return { value: valueTimesTens(written, 0), ...written };
+  const written = text.slice(start, exponentEnd);
+  const value = timesTens(written, exact, exponent - decimals, exponent);
+  return { value, text: written, decimals, exponent, digits: exact, start, end: exponentEnd };
 }
 
 /** The end of an exponent that starts at `at`, or `at`. */
 function scanExponent(text: string, at: number): number {
-  if (text[at] !== 'e' && text[at] !== 'E') return at;
+  const letter = text.charCodeAt(at);
+  if (letter !== 101 /* e */ && letter !== 69 /* E */) return at;
   const sign = text.charCodeAt(at + 1);
   const first = sign === PLUS || sign === MINUS || sign === TRUE_MINUS ? at + 2 : at + 1;
   let end = first;
@@ -97,13 +107,15 @@ function readExponent(text: string): number {
  * The written number times 10^tens, as near as a double can be (`8.2` times a thousand is 8200, not
  * 8199.999999999999): the power of ten is joined with the written one before anything is rounded.
  */
-export function valueTimesTens(
-  number: Pick<WrittenNumber, 'text' | 'digits' | 'decimals' | 'exponent'>,
-  tens: number,
-): number {
-  const power = number.exponent - number.decimals + tens;
-  if (number.digits !== undefined && power >= -22 && power <= 22) return shiftedByTens(number.digits, power);
-  const unsigned = number.text.replace(/^[-+\u2212]/, '').replace(/[eE].*$/, '');
-  const magnitude = Number(`${unsigned}e${number.exponent + tens}`);
-  return (/^[-\u2212]/.test(number.text) ? -magnitude : magnitude) + 0;
+export function valueTimesTens(number: WrittenNumber, tens: number): number {
+  const { text, digits, decimals, exponent } = number;
+  return timesTens(text, digits, exponent - decimals + tens, exponent + tens);
+}
+
+/** The digits times 10^power; where that would round twice, the text without its own exponent times 10^textPower. */
+function timesTens(text: string, digits: number | undefined, power: number, textPower: number): number {
+  if (digits !== undefined && isNear(power)) return shiftedByTens(digits, power);
+  const unsigned = text.replace(/^[-+\u2212]/, '').replace(/[eE].*$/, '');
+  const magnitude = Number(`${unsigned}e${textPower}`);
+  return (/^[-\u2212]/.test(text) ? -magnitude : magnitude) + 0;
 }
