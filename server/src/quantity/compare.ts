@@ -11,11 +11,14 @@ export function sameFrequency(a: Scalar, b: Scalar): boolean {
   return isWithin(a.value, b.value, Math.max(a.halfDigit, b.halfDigit));
 }
 
-/** Whether a written frequency stands for an exact one: `3413.33 Hz` for 13.1072 MHz / 3840. */
+/**
+ * Whether a written frequency stands for an exact one: `3413.33 Hz` for 13.1072 MHz / 3840. False where the exact one
+ * is not finite.
+ */
 export function matchesExact(written: Scalar, exactHz: number): boolean {
   return isWithin(written.value, exactHz, written.halfDigit);
 }
 
 function isWithin(a: number, b: number, halfDigit: number): boolean {
-  return Math.abs(a - b) <= halfDigit + ROUNDING * Math.max(Math.abs(a), Math.abs(b));
+  return Math.abs(a - b) <= halfDigit + ROUNDING * Math.abs(a);
 }

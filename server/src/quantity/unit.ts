@@ -102,8 +102,16 @@ const NOISE_NUMERATORS: ReadonlyMap<string, Unit> = new Map(
   }),
 );
 
-/** Dimensions that a noise density can't have: logarithms, and fractions of something else. */
-const WITHOUT_DENSITY: ReadonlySet<Dimension> = new Set(['dbfs', 'decibel', 'slope', 'of-rate', 'bits', 'data']);
+/** What has no noise density: logarithms, fractions of a rate, and stored data. */
+const WITHOUT_DENSITY: ReadonlySet<Dimension> = new Set([
+  'dbfs',
+  'decibel',
+  'slope',
+  'of-rate',
+  'bits',
+  'data',
+  'data-rate',
+]);
 
 /** `µ` (U+00B5) and `μ` (U+03BC) are `u`, and `√Hz` is `rtHz`. */
 function normalised(text: string): string {
