@@ -187,6 +187,8 @@ interface SourceBase extends Thing {
   readonly wanted: boolean;
   /** Decided here once: what the text says, or what its level implies. */
   readonly enters: 'sensor' | 'wiring';
+  /** True where the text says it. Otherwise volts enter at the sensor of a channel that measures a voltage. */
+  readonly entersSaid: boolean;
 }
 
 export interface FrequencyRange {

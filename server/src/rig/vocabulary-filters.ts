@@ -1,13 +1,12 @@
+import { MOST_FILTER_ORDER } from './limits.ts';
 import type { KeyRow } from './vocabulary-kinds.ts';
 import {
   choice,
-  either,
   integer,
   listOf,
   NOT_NEGATIVE,
   number,
   quantity,
-  RANGE_ONLY,
   row,
   TIME,
   TOLERANCE,
@@ -92,16 +91,19 @@ export const RESPONSES: readonly ResponseRow[] = [
 
 const RESPONSE = choice(Object.fromEntries(RESPONSES.map(({ name, doc }) => [name, doc])));
 const AT = quantity(['frequency', 'of-rate'], 'Hz');
-const EDGE = either(
-  quantity(['frequency', 'of-rate'], 'Hz', { forms: VALUE_OR_RANGE, width: true }),
-  quantity(['frequency', 'of-rate'], 'Hz', { forms: RANGE_ONLY, width: true }),
-);
+const EDGE = quantity(['frequency', 'of-rate'], 'Hz', { forms: VALUE_OR_RANGE, width: true });
 const DECIBELS_ABOVE_ZERO = quantity('decibel', 'dB');
 
 /** The keys of a filter. */
 export const FILTER_ROWS: readonly KeyRow[] = [
   row('filter', 'response', RESPONSE, 'butterworth', 'What kind of filter it is.', { required: true }),
-  row('filter', 'order', integer({ low: 1, high: 50 }), '6', 'The number of its poles, or of its stages.'),
+  row(
+    'filter',
+    'order',
+    integer({ low: 1, high: MOST_FILTER_ORDER }),
+    '6',
+    'The number of its poles, or of its stages.',
+  ),
   row(
     'filter',
     'shape',

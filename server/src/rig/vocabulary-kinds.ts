@@ -31,6 +31,8 @@ export interface Bounds {
   readonly lowExcluded?: true;
   readonly high?: number;
   readonly highExcluded?: true;
+  /** True where a number above the high end is too much to compute, and is cut down to it. */
+  readonly clamped?: true;
 }
 
 export interface QuantityKind {

@@ -1,3 +1,4 @@
+import { MOST_HARMONICS, MOST_SIDEBANDS } from './limits.ts';
 import type { KeyRow } from './vocabulary-kinds.ts';
 import {
   choice,
@@ -50,9 +51,16 @@ export const SOURCE_ROWS: readonly KeyRow[] = [
   row('source', 'speed', SPEED, '600..3000 rpm', "The shaft's speed: one value, or a range."),
   row('source', 'carrier', FREQUENCY_OR_RANGE, '16 kHz', 'The frequency of the carrier.'),
   row('source', 'modulation', FREQUENCY_OR_RANGE, '50 Hz', 'The distance from the carrier to its first sidebands.'),
-  row('source', 'sidebands', integer({ low: 0, high: 1000 }), '2', 'The number of sidebands on each side.', {
-    default: '1',
-  }),
+  row(
+    'source',
+    'sidebands',
+    integer({ low: 0, high: MOST_SIDEBANDS, clamped: true }),
+    '2',
+    'The number of sidebands on each side.',
+    {
+      default: '1',
+    },
+  ),
   row(
     'source',
     'sidebands-fall',
@@ -77,9 +85,16 @@ export const SOURCE_ROWS: readonly KeyRow[] = [
     'The range that a broadband source fills.',
     { computed: false },
   ),
-  row(BOTH, 'harmonics', integer({ low: 1, high: 1000 }), '10', 'The highest multiple of the frequency.', {
-    default: '1, the fundamental alone',
-  }),
+  row(
+    BOTH,
+    'harmonics',
+    integer({ low: 1, high: MOST_HARMONICS, clamped: true }),
+    '10',
+    'The highest multiple of the frequency.',
+    {
+      default: '1, the fundamental alone',
+    },
+  ),
   row(
     BOTH,
     'level',

@@ -66,7 +66,7 @@ const CLOCK_ROWS: readonly KeyRow[] = [
 ];
 
 const DIGITIZER_ROWS: readonly KeyRow[] = [
-  row('digitizer', 'clock', nameOf('clock', 'clock'), 'chassis', 'The clock that its sample rates are divided from.', {
+  row('digitizer', 'clock', nameOf('clock'), 'chassis', 'The clock that its sample rates are divided from.', {
     default: 'with neither `clock` nor `rates`, every rate can be made',
   }),
   row(

@@ -1,0 +1,116 @@
+import { sameItems } from './anchors.ts';
+import { type Core, readCore } from './core.ts';
+import type { Entry } from './entry.ts';
+import { duplicateName, yamlProblem } from './entry-problems.ts';
+import { epochsOf } from './epochs.ts';
+import type { Clock, Digitizer, Filter, Given, Sensor, Source } from './model.ts';
+import type { PlacedProblem } from './problem.ts';
+import type { SeverityChoice } from './read-top-level.ts';
+import type { Mention } from './reader.ts';
+import type { Snapshot } from './snapshot.ts';
+
+export type { SeverityChoice } from './read-top-level.ts';
+export type { Mention } from './reader.ts';
+
+/**
+ * A rig file without its channels: everything that they name, inherit, or share.
+ *
+ * Environments share whatever an edit leaves alone, object by object: a thing is the same object as before where its
+ * text and everything it names are.
+ */
+export interface Environment {
+  readonly clocks: ReadonlyMap<string, Clock>;
+  readonly digitizers: ReadonlyMap<string, Digitizer>;
+  readonly sensors: ReadonlyMap<string, Sensor>;
+  readonly filters: ReadonlyMap<string, Filter>;
+  /** Those that could be read, `mains` included, in document order. */
+  readonly sources: ReadonlyMap<string, Source>;
+  /** The top-level entry `defaults`. */
+  readonly defaults: Entry | undefined;
+  readonly severities: ReadonlyMap<string, SeverityChoice>;
+  readonly rigName: Given<string> | undefined;
+  /** Of everything but the channels; of these, only that a name stands there twice. */
+  readonly problems: readonly PlacedProblem[];
+  /** Keys outside the channels that are known but not computed. */
+  readonly notComputed: readonly PlacedProblem[];
+  /** Where things are named by things, or by `defaults`. */
+  readonly mentions: readonly Mention[];
+  /** The first channel of each name, in document order. */
+  readonly channelEntries: readonly Entry[];
+  /** Everything above but the channels; the same object as before where all of it is. */
+  readonly core: Core;
+  /** How many anchor-setting entries stand before an entry that follows aliases. */
+  readonly epochOf: (entry: Entry) => number;
+}
+
+/**
+ * Reads everything but the channels.
+ *
+ * @param checkNames the names that `checks` may hold
+ * @param previous an environment of an earlier text, whose unchanged parts are kept; the answer is the same without
+ */
+export function readEnvironment(
+  snapshot: Snapshot,
+  checkNames: readonly string[],
+  previous?: Environment,
+): Environment {
+  const sorted = sortEntries(snapshot.entries);
+  const { significant } = sorted;
+  const old = previous?.core;
+  const unchanged =
+    old !== undefined && sameItems(old.significant, significant) && sameItems(old.checkNames, checkNames);
+  const epochs = epochsOf(snapshot.entries);
+  const core = unchanged ? old : readCore(significant, checkNames, epochs.settingEntries, epochs.epochOf, old);
+  const { things } = core.scope;
+  return {
+    clocks: things.clock,
+    digitizers: things.digitizer,
+    sensors: things.sensor,
+    filters: things.filter,
+    sources: things.source,
+    defaults: core.defaultsEntry,
+    severities: core.severities,
+    rigName: core.rigName,
+    problems: [...snapshot.problems, ...core.problems, ...sorted.problems],
+    notComputed: core.notComputed,
+    mentions: core.mentions,
+    channelEntries: sorted.channels,
+    core,
+    epochOf: epochs.epochOf,
+  };
+}
+
+interface SortedEntries {
+  /** Everything that can matter to more than one channel: all entries but channels that set no anchor. */
+  readonly significant: readonly Entry[];
+  readonly channels: readonly Entry[];
+  readonly problems: readonly PlacedProblem[];
+}
+
+function sortEntries(entries: readonly Entry[]): SortedEntries {
+  const significant: Entry[] = [];
+  const channels: Entry[] = [];
+  const problems: PlacedProblem[] = [];
+  const names = new Set<string>();
+  for (const entry of entries) {
+    if (entry.section !== 'channels') {
+      significant.push(entry);
+      continue;
+    }
+    if (entry.anchors.length > 0) significant.push(entry);
+    if (entry.key === undefined) {
+      for (const problem of entry.problems) problems.push(yamlProblem(entry, problem));
+      continue;
+    }
+    const known = names.size;
+    names.add(entry.name);
+    if (names.size > known) channels.push(entry);
+    else problems.push(...duplicateChannel(entry, channels));
+  }
+  return { significant, channels, problems };
+}
+
+function duplicateChannel(entry: Entry, channels: readonly Entry[]): readonly PlacedProblem[] {
+  const first = channels.find(({ name }) => name === entry.name);
+  return [...entry.problems.map((problem) => yamlProblem(entry, problem)), duplicateName(entry, 'channel', first)];
+}

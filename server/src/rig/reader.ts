@@ -1,0 +1,151 @@
+import type { AnchorTable } from './anchors.ts';
+import type { Entry } from './entry.ts';
+import type { Clock, Digitizer, Filter, HeardSource, Sensor, Source } from './model.ts';
+import type { Place } from './place.ts';
+import type { Cure, PlacedProblem, ProblemName } from './problem.ts';
+import type { TreeNode } from './tree.ts';
+import type { ThingKind } from './vocabulary-kinds.ts';
+
+/** A place where a thing is named: for going from a name to what it stands for and back. */
+export interface Mention {
+  readonly kind: ThingKind;
+  readonly name: string;
+  readonly place: Place;
+}
+
+/** The names of one kind of thing in this file; the same object as before where they are the same names. */
+export interface NameList {
+  readonly names: readonly string[];
+  readonly set: ReadonlySet<string>;
+}
+
+/** Named things that have been read, by name. */
+export interface Things {
+  readonly clock: ReadonlyMap<string, Clock>;
+  readonly digitizer: ReadonlyMap<string, Digitizer>;
+  readonly sensor: ReadonlyMap<string, Sensor>;
+  readonly filter: ReadonlyMap<string, Filter>;
+  readonly source: ReadonlyMap<string, Source>;
+}
+
+/** A thing written in place of a name in text that many entries inherit: read once, whatever was said of it with it. */
+export interface SharedThing {
+  readonly thing: object;
+  readonly problems: readonly PlacedProblem[];
+}
+
+/** Sources heard by those who hear all, and those left out because they are in another quantity. */
+export interface AllHeard {
+  readonly heard: readonly HeardSource[];
+  readonly unheard: readonly Source[];
+}
+
+/** The sources of a file; the same object as before where they are the same ones in the same order. */
+export interface SourceSet {
+  readonly sources: readonly Source[];
+  /** Who hears all hears the same as everybody else who measures the same quantity: worked out once for each. */
+  readonly allHeard: Map<string | undefined, AllHeard>;
+}
+
+/** What a reading may look at besides its own entry. */
+export interface Scope {
+  readonly names: Readonly<Record<Exclude<ThingKind, 'channel'>, NameList>>;
+  readonly things: Things;
+  readonly anchors: AnchorTable;
+  /** How many anchor-setting entries stand before an entry. */
+  readonly epochOf: (entry: Entry) => number;
+  /** True where the file names others whose things are not known: a name nobody knows may be one of theirs. */
+  readonly usesOthers: boolean;
+  /** Every readable source, in document order. */
+  readonly sources: SourceSet;
+  /** Things written in place in text that entries inherit, by their map: kept so that all who inherit share them. */
+  readonly inPlace: Map<TreeNode, SharedThing>;
+}
+
+/** A name that a reading looked up, and what it found. */
+export type Lookup =
+  | { readonly kind: keyof Things; readonly name: string; readonly thing: object | undefined }
+  /** Whether there is a thing of some name, which depends on all the names there are. */
+  | { readonly kind: Exclude<ThingKind, 'channel'>; readonly names: NameList; readonly usesOthers: boolean };
+
+/** A reading in progress: where it stands, and what it has found so far. */
+export interface Reader {
+  readonly entry: Entry;
+  readonly scope: Scope;
+  /** How many anchor-setting entries stand before the entry. */
+  readonly epoch: number;
+  /** Problems of the entry's own text. */
+  readonly own: PlacedProblem[];
+  /** Problems of text that the entry inherits; they are said once, at their origin. */
+  readonly origin: PlacedProblem[];
+  /** Keys of this entry that are known but not computed. */
+  readonly notComputed: PlacedProblem[];
+  readonly mentions: Mention[];
+  readonly lookups: Lookup[];
+  /** How many aliases have been followed. */
+  expansions: number;
+}
+
+/** Begins the reading of an entry. */
+export function startReading(entry: Entry, scope: Scope, epoch: number): Reader {
+  return {
+    entry,
+    scope,
+    epoch,
+    own: [],
+    origin: [],
+    notComputed: [],
+    mentions: [],
+    lookups: [],
+    expansions: 0,
+  };
+}
+
+export interface Report {
+  readonly name: ProblemName;
+  readonly place: Place;
+  readonly message: string;
+  readonly about?: string;
+  readonly cure?: Cure | undefined;
+  readonly related?: PlacedProblem['related'];
+}
+
+const NOTHING_RELATED: PlacedProblem['related'] = [];
+
+/** A problem at its place. */
+export function placedProblem({ name, place, message, about, cure, related }: Report): PlacedProblem {
+  const problem = {
+    name,
+    start: place.start,
+    end: place.end,
+    message,
+    ...(about === undefined ? {} : { about }),
+    ...(cure === undefined ? {} : { cure }),
+  };
+  return { problem, place, related: related ?? NOTHING_RELATED };
+}
+
+/**
+ * Notes a problem, once: where an anchor and its aliases stand in one entry, the same text is read more than once.
+ * Two problems of one name about the same thing are told apart by a number, so that each has an identity of its own.
+ */
+export function report(reader: Reader, said: Report): void {
+  const problems = said.place.entry === reader.entry ? reader.own : reader.origin;
+  let about = said.about;
+  let alike = 1;
+  for (const { problem, place } of problems) {
+    if (problem.name !== said.name) continue;
+    if (place.start === said.place.start && place.end === said.place.end && place.entry === said.place.entry) return;
+    if (problem.about === about) about = `${said.about ?? ''} ${++alike}`;
+  }
+  if (problems.length >= MOST_PROBLEMS) return;
+  problems.push(placedProblem(about === said.about || about === undefined ? said : { ...said, about }));
+}
+
+/** Of one entry, as many as anybody would read; it also keeps the search for equal ones short. */
+const MOST_PROBLEMS = 100;
+
+/** Notes that a thing is named in the entry's own text. */
+export function mention(reader: Reader, kind: ThingKind, name: string, place: Place): void {
+  if (place.entry === reader.entry) reader.mentions.push({ kind, name, place });
+}
