@@ -1,5 +1,7 @@
 import type { Channel, FilterUse, Source, Step } from '../rig/model.ts';
 import type { Response } from '../signal/response.ts';
+import type { LevelScale } from './level-scale.ts';
+import type { SignalPath } from './signal-path.ts';
 
 /** One sampling of the chain: the converter's, or a decimation's. */
 export interface Stage {
@@ -21,13 +23,11 @@ export interface StageFilter {
   readonly response: Response;
 }
 
-/** What one volt, one measured unit and 0 dBFS have to do with one another on this channel. */
-export interface LevelScale {
-  /** Peak volts of a full-scale sinusoid at the digitizer's input; `undefined` without a full scale. */
-  readonly fullScaleV: number | undefined;
-  /** Volts per base unit at the sensor; `undefined` without a sensitivity. */
-  readonly sensitivity: number | undefined;
-}
+/**
+ * The scale on which a channel's levels and limits are compared, in decibels: of full scale, of 1 V, of one base unit
+ * of what is measured. `relative` is dBFS of a full scale whose volts nobody knows.
+ */
+export type LevelUnit = 'dbfs' | 'db-volt' | 'db-measured' | 'relative';
 
 /** A channel's way from the sensor to the record. */
 export interface Chain {
@@ -44,19 +44,24 @@ export interface Chain {
   readonly margin: number;
   /** On the scale of `levelUnit`. */
   readonly foldLimit: number;
-  /** The scale on which this channel's levels and limits are compared. */
-  readonly levelUnit: 'dbfs' | 'db-volt' | 'db-measured' | 'relative';
+  readonly levelUnit: LevelUnit;
+  /** What the chain has in common with every other channel that is filtered and sampled like this one. */
+  readonly path: SignalPath;
+  /** False where the digitizer can't make the rate that is written: what is written is computed with all the same. */
+  readonly rateReachable: boolean;
 }
 
 /** One piece of one component of a source, as it arrives in the record. */
 export interface Arrival {
   readonly source: Source;
-  /** `fundamental`, `harmonic 3`, `carrier`, `sideband +2`, `sideband -1`, `carrier x3`, ... */
+  /** `fundamental`, `harmonic 3`, `carrier`, `sideband +2`, `carrier x3`, `carrier x3 sideband -1`, ... */
   readonly component: string;
   readonly trueLowHz: number;
   readonly trueHighHz: number;
   readonly recordedLowHz: number;
   readonly recordedHighHz: number;
+  /** By how much the clock's tolerance may move it in the record, either way. */
+  readonly recordedSlackHz: number;
   /** Highest over the piece, or over the part that lands in the band where some does; on the chain's level scale. */
   readonly level: number;
   /** Of analogue and digital filters together at the point of `level` (the sensor not included), dB. */
@@ -70,6 +75,8 @@ export interface Arrival {
   readonly inBand: boolean;
   /** Folded, in the band, and above the fold limit. */
   readonly overLimit: boolean;
-  /** False where no level was given and full scale was assumed. */
+  /** False where no level was given, or one that can't be placed, and full scale was assumed. */
   readonly levelKnown: boolean;
+  /** Where it stands without its source's tolerance; `undefined` where it is a range all the same. */
+  readonly nominalHz: number | undefined;
 }

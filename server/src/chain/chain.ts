@@ -1,0 +1,52 @@
+import type { Channel } from '../rig/model.ts';
+import { levelScaleOf } from './level-scale.ts';
+import type { Chain, Stage, StageFilter } from './model.ts';
+import { exactRate } from './reachable.ts';
+import type { PlannedFilter, SignalPath } from './signal-path.ts';
+import { planOf, signalPathOf } from './signal-path.ts';
+
+/**
+ * A channel's signal chain, with every filter resolved at the rate that it works at; `undefined` for a channel whose
+ * rate or band is missing.
+ *
+ * A written rate that the digitizer can make stands for the exact one; one that it can't make is taken as written.
+ */
+export function chainOf(channel: Channel): Chain | undefined {
+  const { rateHz: rate, band } = channel;
+  if (!rate || !band || !(rate.value > 0 && rate.value < Infinity) || !(band.value.highHz > 0)) return undefined;
+  const exact = exactRate(channel.digitizer, rate);
+  const plan = planOf(channel);
+  const path = signalPathOf(channel, plan, exact ?? rate.value);
+  const stages = plan.stages.map(({ kind, step, filters }, index): Stage => {
+    const rateHz = path.ratesHz[index]!;
+    const inputRateHz = index === 0 ? undefined : path.ratesHz[index - 1]!;
+    return { rateHz, nyquistHz: rateHz / 2, inputRateHz, kind, step, filters: resolved(filters, path, index) };
+  });
+  const scale = levelScaleOf(channel);
+  const { lowHz, highHz } = band.value;
+  return {
+    channel,
+    stages,
+    after: resolved(plan.after, path, stages.length),
+    ratesHz: path.ratesHz,
+    sensor: path.sensor,
+    scale,
+    bandLowHz: lowHz,
+    bandHighHz: highHz,
+    margin: stages[stages.length - 1]!.nyquistHz / highHz,
+    foldLimit: scale.foldLimit,
+    levelUnit: scale.unit,
+    path,
+    rateReachable: exact !== undefined,
+  };
+}
+
+/** The filters ahead of a stage; one that was not understood attenuates nothing and is left out. */
+function resolved(filters: readonly PlannedFilter[], path: SignalPath, stage: number): readonly StageFilter[] {
+  const found: StageFilter[] = [];
+  for (let index = 0; index < filters.length; index++) {
+    const response = path.responses[stage]![index];
+    if (response) found.push({ ...filters[index]!, response });
+  }
+  return found;
+}

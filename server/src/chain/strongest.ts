@@ -1,0 +1,64 @@
+import { type Along, alongPiece, leastPointAlong } from '../signal/cascade.ts';
+import type { FoldedPiece } from '../signal/folding.ts';
+import type { SignalPath } from './signal-path.ts';
+
+/** Where a piece comes through least attenuated. */
+export interface Strongest {
+  /** Of everything on the way, the sensor too where the piece enters there; dB. */
+  readonly attenuationDb: number;
+  /** Of the filters alone. */
+  readonly filtersDb: number;
+  /** True frequency. */
+  readonly atHz: number;
+}
+
+/**
+ * The point at which a piece, or a part of it, is recorded highest: the true extreme of all responses together, worst
+ * tolerance, not the value at an end.
+ *
+ * @param from start of the part along the true frequency, 0 to 1
+ * @param to end of it
+ */
+export function strongestOf(
+  path: SignalPath,
+  piece: FoldedPiece,
+  entersAtSensor: boolean,
+  from = 0,
+  to = 1,
+): Strongest {
+  const { trueLowHz, trueHighHz } = piece;
+  const seesSensor = entersAtSensor && !path.sensorIsFlat;
+  if (trueLowHz === trueHighHz) {
+    const filtersDb = attenuationAtPoint(path, piece);
+    const sensorDb = seesSensor ? path.sensor.leastDb(trueLowHz, trueLowHz) : 0;
+    return { attenuationDb: filtersDb + sensorDb, filtersDb, atHz: trueLowHz };
+  }
+  const filters = alongPiece(piece, path.known).map((member) => part(member, from, to));
+  const truth = part({ lowHz: trueLowHz, highHz: trueHighHz, reversed: false }, from, to);
+  const members = seesSensor ? [...filters, { ...truth, response: path.sensor }] : filters;
+  if (members.length === 0) return { attenuationDb: 0, filtersDb: 0, atHz: truth.lowHz };
+  const { attenuationDb, t } = leastPointAlong(members);
+  const atHz = Math.min(truth.lowHz + t * (truth.highHz - truth.lowHz), truth.highHz);
+  const sensorDb = seesSensor ? path.sensor.leastDb(atHz, atHz) : 0;
+  return { attenuationDb, filtersDb: seesSensor ? attenuationDb - sensorDb : attenuationDb, atHz };
+}
+
+/** A point sees each filter at one frequency. */
+function attenuationAtPoint(path: SignalPath, piece: FoldedPiece): number {
+  let sum = 0;
+  for (let stage = 0; stage < path.known.length; stage++) {
+    const hz = piece.inputs[stage]?.lowHz ?? piece.recordedLowHz;
+    for (const response of path.known[stage]!) sum += response.leastDb(hz, hz);
+  }
+  return sum;
+}
+
+/** The part of a range that a member sees from `from` to `to` along the piece. */
+function part<Range extends Omit<Along, 'response'>>(range: Range, from: number, to: number): Range {
+  if (from <= 0 && to >= 1) return range;
+  const { lowHz, highHz, reversed } = range;
+  const width = highHz - lowHz;
+  const start = reversed ? highHz - to * width : lowHz + from * width;
+  const end = reversed ? highHz - from * width : lowHz + to * width;
+  return { ...range, lowHz: Math.max(start, lowHz), highHz: Math.min(Math.max(start, end), highHz) };
+}
