@@ -24,7 +24,18 @@ describe('the core', () => {
 
   it('says nothing of clocks, environment or chance', async () => {
     const { readdirSync, readFileSync } = await import('node:fs');
-    const rooms = ['signal', 'quantity', 'rig', 'chain', 'checks', 'remedies', 'picture', 'workbench', 'report', 'editor'];
+    const rooms = [
+      'signal',
+      'quantity',
+      'rig',
+      'chain',
+      'checks',
+      'remedies',
+      'picture',
+      'workbench',
+      'report',
+      'editor',
+    ];
     const offending = rooms.flatMap((room) =>
       readdirSync(resolve(ROOT, 'server/src', room), { recursive: true, encoding: 'utf8' })
         .filter((file) => file.endsWith('.ts'))

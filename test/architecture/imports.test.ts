@@ -16,7 +16,19 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   workbench: ['remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
   report: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
   editor: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
-  cli: ['report', 'editor', 'server', 'workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
+  cli: [
+    'report',
+    'editor',
+    'server',
+    'workbench',
+    'picture',
+    'remedies',
+    'checks',
+    'chain',
+    'rig',
+    'quantity',
+    'signal',
+  ],
   server: ['editor', 'workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
 };
 
@@ -55,9 +67,11 @@ function roomOf(path: string): string {
 
 const files = filesBelow(SERVER).filter((file) => file.endsWith('.ts'));
 const imports: readonly ImportLine[] = files.flatMap((file) =>
-  [...readFileSync(file, 'utf8').matchAll(/^(?:import|export)\b[^;'"]*?from\s+['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)|^import\s+['"]([^'"]+)['"]/gm)].map(
-    (match) => ({ file: relative(SERVER, file), room: roomOf(file), target: (match[1] ?? match[2] ?? match[3])! }),
-  ),
+  [
+    ...readFileSync(file, 'utf8').matchAll(
+      /^(?:import|export)\b[^;'"]*?from\s+['"]([^'"]+)['"]|import\(\s*['"]([^'"]+)['"]\s*\)|^import\s+['"]([^'"]+)['"]/gm,
+    ),
+  ].map((match) => ({ file: relative(SERVER, file), room: roomOf(file), target: (match[1] ?? match[2] ?? match[3])! })),
 );
 
 describe('the rooms of the server', () => {
@@ -77,7 +91,12 @@ describe('the rooms of the server', () => {
   it('use only the libraries that are theirs', () => {
     const wrong = imports
       .filter(({ target }) => !target.startsWith('.'))
-      .filter(({ room, target }) => !(MAY_USE[room] ?? []).some((library) => target === library || target.startsWith(library.endsWith(':') ? library : `${library}/`)))
+      .filter(
+        ({ room, target }) =>
+          !(MAY_USE[room] ?? []).some(
+            (library) => target === library || target.startsWith(library.endsWith(':') ? library : `${library}/`),
+          ),
+      )
       .map(({ file, target }) => `${file} uses ${target}`);
     expect(wrong).toEqual([]);
   });
@@ -93,7 +112,9 @@ describe('the rooms of the server', () => {
   });
 
   it('keep every file short enough to read at one sitting', () => {
-    const long = files.filter((file) => readFileSync(file, 'utf8').split('\n').length > 400).map((file) => relative(SERVER, file));
+    const long = files
+      .filter((file) => readFileSync(file, 'utf8').split('\n').length > 400)
+      .map((file) => relative(SERVER, file));
     expect(long).toEqual([]);
   });
 });

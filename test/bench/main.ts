@@ -1,11 +1,11 @@
 import { existsSync, readdirSync, readFileSync, statSync } from 'node:fs';
 import { performance } from 'node:perf_hooks';
 import { parseDocument } from 'yaml';
-import { NO_LINKS } from '../../server/src/editor/reference-links.ts';
 import { diagnosticsOf } from '../../server/src/editor/diagnostics.ts';
+import { NO_LINKS } from '../../server/src/editor/reference-links.ts';
+import { allFindings } from '../../server/src/workbench/findings.ts';
 import type { TextChange } from '../../server/src/workbench/workbench.ts';
 import { Workbench } from '../../server/src/workbench/workbench.ts';
-import { allFindings } from '../../server/src/workbench/findings.ts';
 import { startClient } from '../protocol/client.ts';
 import { median, percentile, timesOf } from './measure.ts';
 import { generatedRig } from './rigs.ts';
@@ -112,7 +112,9 @@ function editInFlow(size: number, style: 'flow' | 'json'): number {
 }
 
 function remediesAtOne(text: string): number {
-  const faulty = text.replace(/rate: 25.6 kHz/, 'rate: 20.48 kHz').replace(/fold-limit: -60 dBFS/, 'fold-limit: -100 dBFS');
+  const faulty = text
+    .replace(/rate: 25.6 kHz/, 'rate: 20.48 kHz')
+    .replace(/fold-limit: -60 dBFS/, 'fold-limit: -100 dBFS');
   const workbench = opened(faulty);
   const finding = [...allFindings(workbench.evaluation(URI)!)].find((one) => one.check === 'fold-in-band');
   if (!finding) throw new Error('The generated rig has no fold to remedy.');
@@ -187,19 +189,51 @@ async function main(): Promise<void> {
     console.error(`${what}: ${figures.join('  ')}`);
   };
   add('baseline: parseDocument', ['', '', ''], bases.map(ms));
-  add('full check over the baseline', ['1.4 x', '1.4 x', '1.4 x'], texts.map((text, index) => ratio(fullCheck(text) / bases[index]!)));
+  add(
+    'full check over the baseline',
+    ['1.4 x', '1.4 x', '1.4 x'],
+    texts.map((text, index) => ratio(fullCheck(text) / bases[index]!)),
+  );
   const edits = texts.map((text, index) => editInChannel(text, SIZES[index]!));
-  add('edit inside one channel', ['5 ms', '5 ms', '10 ms'], edits.map((times) => ms(median(times))));
-  add('the same, 95th percentile', ['', '', '20 ms'], edits.map((times) => ms(percentile(times, 0.95))));
+  add(
+    'edit inside one channel',
+    ['5 ms', '5 ms', '10 ms'],
+    edits.map((times) => ms(median(times))),
+  );
+  add(
+    'the same, 95th percentile',
+    ['', '', '20 ms'],
+    edits.map((times) => ms(percentile(times, 0.95))),
+  );
   const sent: string[] = [];
   for (const [index, text] of texts.entries()) sent.push(ms(median(await overProtocol(text, SIZES[index]!))));
   add('edit sent to findings received', ['15 ms', '20 ms', '25 ms'], sent);
   const alls = texts.map((text, index) => ({ ...editOfAll(text), base: bases[index]! }));
-  add('edit of what all use, over the baseline', ['0.5 x', '0.5 x', '0.5 x'], alls.map(({ total, base }) => ratio(total / base)));
-  add('its longest slice', ['20 ms', '20 ms', '20 ms'], alls.map(({ slice }) => ms(slice)));
-  add('edit in flow style, over the baseline', ['1.2 x', '1.2 x', '1.2 x'], SIZES.map((size) => ratio(editInFlow(size, 'flow'))));
-  add('edit in JSON, over the baseline', ['1.2 x', '1.2 x', '1.2 x'], SIZES.map((size) => ratio(editInFlow(size, 'json'))));
-  add('remedies at one finding', ['100 ms', '100 ms', '100 ms'], texts.map((text) => ms(remediesAtOne(text))));
+  add(
+    'edit of what all use, over the baseline',
+    ['0.5 x', '0.5 x', '0.5 x'],
+    alls.map(({ total, base }) => ratio(total / base)),
+  );
+  add(
+    'its longest slice',
+    ['20 ms', '20 ms', '20 ms'],
+    alls.map(({ slice }) => ms(slice)),
+  );
+  add(
+    'edit in flow style, over the baseline',
+    ['1.2 x', '1.2 x', '1.2 x'],
+    SIZES.map((size) => ratio(editInFlow(size, 'flow'))),
+  );
+  add(
+    'edit in JSON, over the baseline',
+    ['1.2 x', '1.2 x', '1.2 x'],
+    SIZES.map((size) => ratio(editInFlow(size, 'json'))),
+  );
+  add(
+    'remedies at one finding',
+    ['100 ms', '100 ms', '100 ms'],
+    texts.map((text) => ms(remediesAtOne(text))),
+  );
   add('peak memory of the server', ['', '', '450 MB'], ['', '', `${(await peakMemoryMb()).toFixed(0)} MB`]);
   add('server start to first findings', ['300 ms', '', ''], [ms(await startToFindings()), '', '']);
   add('.vsix', ['1 MB', '', ''], [packageMb(), '', '']);
@@ -209,7 +243,10 @@ async function main(): Promise<void> {
 function table(): string {
   const head = `| what | ${SIZES.map((size) => size.toLocaleString('en')).join(' | ')} |\n|---|---|---|---|`;
   const cell = (figure: string, limit: string): string => (limit === '' ? figure : `${figure} (limit ${limit})`);
-  const lines = rows.map(({ what, figures, limits }) => `| ${what} | ${figures.map((figure, index) => cell(figure, limits[index] ?? '')).join(' | ')} |`);
+  const lines = rows.map(
+    ({ what, figures, limits }) =>
+      `| ${what} | ${figures.map((figure, index) => cell(figure, limits[index] ?? '')).join(' | ')} |`,
+  );
   return [head, ...lines].join('\n');
 }
 

@@ -1,7 +1,12 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import { PassThrough } from 'node:stream';
 import { createConnection, ProposedFeatures } from 'vscode-languageserver/node';
-import type { Diagnostic, Position, PublishDiagnosticsParams, ServerCapabilities } from 'vscode-languageserver-protocol';
+import type {
+  Diagnostic,
+  Position,
+  PublishDiagnosticsParams,
+  ServerCapabilities,
+} from 'vscode-languageserver-protocol';
 import type { ProtocolConnection } from 'vscode-languageserver-protocol/node';
 import {
   createProtocolConnection,

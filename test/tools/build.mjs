@@ -1,11 +1,13 @@
 // Bundles the three programs of the package into dist/: the client, the language server and the command line.
 // Libraries are bundled too, as CommonJS: an ESM bundle of the server dies with "Dynamic require".
-import { chmodSync, existsSync, mkdirSync } from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, readFileSync } from 'node:fs';
 import { dirname, join, resolve } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { build } from 'esbuild';
 
 const root = resolve(dirname(fileURLToPath(import.meta.url)), '../..');
+
+const { version } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8'));
 
 const programs = [
   { entry: 'client/src/extension.ts', output: 'dist/client.cjs', external: ['vscode'] },
@@ -27,6 +29,7 @@ async function bundle({ entry, output, external, executable = false }) {
     legalComments: 'none',
     logLevel: 'warning',
     external,
+    define: { RATEWRIGHT_VERSION: JSON.stringify(version) },
     // vscode-jsonrpc's package "main" fields point at UMD files that hide their requires from the bundler.
     mainFields: ['module', 'main'],
     banner: executable ? { js: '#!/usr/bin/env node' } : {},

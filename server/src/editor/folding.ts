@@ -1,7 +1,7 @@
 import type { FoldingRange } from 'vscode-languageserver-types';
 import { FoldingRangeKind } from 'vscode-languageserver-types';
-import type { TreeNode } from '../rig/tree.ts';
 import type { Snapshot } from '../rig/snapshot.ts';
+import type { TreeNode } from '../rig/tree.ts';
 
 /** Sections, entries, and maps and lists inside them that take more than one line; runs of comment lines. */
 export function foldingOf(snapshot: Snapshot): FoldingRange[] {

@@ -1,9 +1,9 @@
 import type { DocumentSymbol } from 'vscode-languageserver-types';
 import { SymbolKind } from 'vscode-languageserver-types';
+import { formatHz } from '../quantity/write.ts';
 import type { Entry } from '../rig/entry.ts';
 import type { Snapshot } from '../rig/snapshot.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
-import { formatHz } from '../quantity/write.ts';
 import { protocolRange } from './convert.ts';
 
 /** The outline: the top-level keys, the named things below their sections, and each channel with its rate. */

@@ -1,7 +1,7 @@
+import type { Finding } from '../checks/finding.ts';
 import type { ChannelResult, Guard } from '../checks/judge.ts';
 import { judgeChannel, judgeRig } from '../checks/judge.ts';
 import { CHECK_NAMES } from '../checks/list.ts';
-import type { Finding } from '../checks/finding.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import { readChannel, stillHolds } from '../rig/channel-reading.ts';
 import type { Entry } from '../rig/entry.ts';
