@@ -1,5 +1,5 @@
 import type { Core } from './core.ts';
-import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
+import { type Dependencies, dependenciesHold, followedAliases } from './dependencies.ts';
 import type { Entry } from './entry.ts';
 import { yamlProblem } from './entry-problems.ts';
 import type { Environment } from './environment.ts';
@@ -42,7 +42,8 @@ export function readChannel(entry: Entry, environment: Environment): ChannelRead
   const { core } = environment;
   const reader = startReading(entry, core.scope, environment.epochOf(entry));
   for (const problem of entry.problems) reader.own.push(yamlProblem(entry, problem));
-  if (BRACE_RANGE.test(entry.name)) noteNotComputed(reader, 'a brace range in a name', namePlace(entry));
+  if (entry.name.includes('{') && BRACE_RANGE.test(entry.name))
+    noteNotComputed(reader, 'a brace range in a name', namePlace(entry));
   const fields = readEntryFields(reader, 'channel');
   addDefaults(fields, core.defaults);
   reportMissingChannelKeys(reader, fields);
@@ -55,7 +56,9 @@ export function readChannel(entry: Entry, environment: Environment): ChannelRead
     notComputed: orNone(reader.notComputed),
     mentions: orNone(reader.mentions),
     dependencies: {
-      ...dependenciesOf(reader),
+      lookups: orNone(reader.lookups),
+      anchors: followedAliases(reader) ? core.scope.anchors : undefined,
+      epoch: reader.epoch,
       sources: core.scope.sources,
       defaults: core.defaults,
       holdsFor: core,

@@ -9,15 +9,17 @@ export interface Dependencies {
   readonly epoch: number;
 }
 
-const NO_LOOKUPS: readonly Lookup[] = [];
-
 export function dependenciesOf(reader: Reader): Dependencies {
-  const followed = reader.expansions > 0 || reader.entry.aliases.length > 0;
   return {
-    lookups: reader.lookups.length === 0 ? NO_LOOKUPS : reader.lookups,
-    anchors: followed ? reader.scope.anchors : undefined,
+    lookups: reader.lookups,
+    anchors: followedAliases(reader) ? reader.scope.anchors : undefined,
     epoch: reader.epoch,
   };
+}
+
+/** Whether what was read may depend on what aliases stand for. */
+export function followedAliases(reader: Reader): boolean {
+  return reader.expansions > 0 || reader.entry.aliases.length > 0;
 }
 
 /** Whether everything that was looked at is still the very same. */

@@ -86,19 +86,20 @@ export function readChannelLevel(reader: Reader, field: Field, sensor: Sensor | 
   return given(field, levelOf(ends.high, ends.highValue, sensor), ends.written);
 }
 
+/** The ends of a channel's own value, and what they are as levels. */
+export interface LevelEnds {
+  readonly ends: Ends;
+  readonly low: Level;
+  readonly high: Level;
+}
+
 /** Both ends of a channel's own value as levels. */
-export function readChannelLevels(
-  reader: Reader,
-  field: Field,
-  sensor: Sensor | undefined,
-): (Ends & { readonly lowLevel: Level; readonly highLevel: Level }) | undefined {
+export function readChannelLevels(reader: Reader, field: Field, sensor: Sensor | undefined): LevelEnds | undefined {
   const ends = readChannelEnds(reader, field, sensor);
   if (!ends) return undefined;
-  return {
-    ...ends,
-    lowLevel: levelOf(ends.low, ends.lowValue, sensor),
-    highLevel: levelOf(ends.high, ends.highValue, sensor),
-  };
+  const high = levelOf(ends.high, ends.highValue, sensor);
+  const low = ends.written.kind === 'scalar' ? high : levelOf(ends.low, ends.lowValue, sensor);
+  return { ends, low, high };
 }
 
 /** A channel's own value in base units, if its unit goes with what the channel measures. */

@@ -128,16 +128,16 @@ function isNone(field: Field | undefined): boolean {
 
 function readFoldLimit(reader: Reader, field: Field | undefined, sensor: Sensor | undefined): Given<Limit> | undefined {
   if (!field) return undefined;
-  const ends = readChannelLevels(reader, field, sensor);
-  if (!ends) return undefined;
+  const levels = readChannelLevels(reader, field, sensor);
+  if (!levels) return undefined;
+  const { ends, high } = levels;
   const { dimension, value } = ends.high;
-  if (dimension === 'dbfs') return given(field, ends.highLevel, ends.written);
-  if (ends.highValue <= 0) {
+  if (dimension !== 'dbfs' && ends.highValue <= 0) {
     const message = '`fold-limit` must be above 0: nothing is filtered perfectly.';
     reportValue(reader, field, 'out-of-range', placeOf(field.entry, field.node), message);
     return undefined;
   }
-  return given<Limit>(field, dimension === 'ratio' ? { kind: 'ratio', ratio: value } : ends.highLevel, ends.written);
+  return given<Limit>(field, dimension === 'ratio' ? { kind: 'ratio', ratio: value } : high, ends.written);
 }
 
 function readUndeclared(
@@ -182,17 +182,18 @@ function readUndeclaredPoint(
 
 function readPeak(reader: Reader, field: Field | undefined, sensor: Sensor | undefined): Given<Peak> | undefined {
   if (!field) return undefined;
-  const ends = readChannelLevels(reader, field, sensor);
-  if (!ends) return undefined;
-  const say = (name: 'wrong-kind' | 'out-of-range', message: string): undefined => {
-    reportValue(reader, field, name, placeOf(field.entry, field.node), message);
-    return undefined;
-  };
-  if (ends.low.amplitude === 'rms' || ends.high.amplitude === 'rms') {
-    return say('wrong-kind', '`peak` is the largest value that is reached, which an rms value does not tell.');
-  }
+  const levels = readChannelLevels(reader, field, sensor);
+  if (!levels) return undefined;
+  const { ends, low, high } = levels;
   const single = ends.written.kind === 'scalar';
-  if (single && ends.high.dimension !== 'dbfs' && ends.highValue <= 0)
-    return say('out-of-range', '`peak` must be above 0.');
-  return given(field, { low: ends.lowLevel, high: ends.highLevel, single }, ends.written);
+  if (ends.low.amplitude === 'rms' || ends.high.amplitude === 'rms') {
+    const message = '`peak` is the largest value that is reached, which an rms value does not tell.';
+    reportValue(reader, field, 'wrong-kind', placeOf(field.entry, field.node), message);
+    return undefined;
+  }
+  if (single && ends.high.dimension !== 'dbfs' && ends.highValue <= 0) {
+    reportValue(reader, field, 'out-of-range', placeOf(field.entry, field.node), '`peak` must be above 0.');
+    return undefined;
+  }
+  return given(field, { low, high, single }, ends.written);
 }

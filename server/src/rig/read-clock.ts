@@ -87,7 +87,7 @@ function readDividerRange(
     reportValue(reader, field, 'out-of-range', place, '`divide` takes whole numbers, such as `1..128`.');
     return undefined;
   }
-  if (!withinBounds(reader, field, low, { low: 1 }, '')) return undefined;
+  if (!withinBounds(reader, field, low, { low: 1 })) return undefined;
   if (low > high) {
     reportValue(reader, field, 'out-of-range', place, 'The range is upside down: its low end is above its high end.');
     return undefined;

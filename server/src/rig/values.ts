@@ -1,5 +1,6 @@
 import { type Quantity, type QuantityProblem, readQuantity, type Scalar } from '../quantity/quantity.ts';
 import { nearest } from '../quantity/spelling.ts';
+import { type Unit, unitsOf } from '../quantity/unit.ts';
 import { clipped, describeNode, type Field, innerPlace, innerSpan, noteNotComputed, placeOf } from './fields.ts';
 import type { Given } from './model.ts';
 import type { Place } from './place.ts';
@@ -162,7 +163,7 @@ function plainNumber(reader: Reader, field: Field, scalar: Scalar, kind: NumberK
     reportValue(reader, field, 'too-much', innerPlace(field.entry, node), message);
     return high;
   }
-  return withinBounds(reader, field, scalar.value, kind.bounds, '') ? scalar.value : undefined;
+  return withinBounds(reader, field, scalar.value, kind.bounds) ? scalar.value : undefined;
 }
 
 /** The numbers of a list, each within the bounds of the field's kind; `undefined` where one of them is not. */
@@ -190,7 +191,10 @@ export function quantityOf(reader: Reader, field: Field): Quantity | undefined {
 function reportNotAQuantity(reader: Reader, field: Field, node: ScalarNode, problem: QuantityProblem): void {
   const { key, example } = field.row;
   const { suggestion } = problem;
-  if (problem.kind === 'not-finite' || problem.kind === 'too-long') return reportTooLarge(reader, field);
+  if (problem.kind === 'not-finite' || problem.kind === 'too-long') {
+    reportTooLarge(reader, field);
+    return;
+  }
   const said = clipped(problem.text);
   const message =
     problem.kind === 'unknown-unit'
@@ -215,23 +219,23 @@ export function reportTooLarge(reader: Reader, field: Field): void {
   reportValue(reader, field, 'out-of-range', innerPlace(field.entry, node), message);
 }
 
-/** Says so where a value is outside its bounds. `unit` follows the bound in the message. */
-export function withinBounds(reader: Reader, field: Field, value: number, bounds: Bounds, unit: string): boolean {
+/** Says so where a value is outside its bounds, which are in the base unit of the given unit's dimension. */
+export function withinBounds(reader: Reader, field: Field, value: number, bounds: Bounds, unit?: Unit): boolean {
   const { low, high } = bounds;
   const tooLow = low !== undefined && (bounds.lowExcluded ? value <= low : value < low);
   const tooHigh = high !== undefined && (bounds.highExcluded ? value >= high : value > high);
   if (!tooLow && !tooHigh && Number.isFinite(value)) return true;
+  const suffix = unit ? ` ${baseSymbol(unit)}` : '';
   const limit = tooHigh
-    ? `${bounds.highExcluded ? 'below' : 'at most'} ${high}${unit}`
-    : `${bounds.lowExcluded ? 'above' : 'at least'} ${low ?? 0}${unit}`;
-  const node = field.node;
+    ? `${bounds.highExcluded ? 'below' : 'at most'} ${high}${suffix}`
+    : `${bounds.lowExcluded ? 'above' : 'at least'} ${low ?? 0}${suffix}`;
+  const { node } = field;
   const place = node.kind === 'scalar' ? innerPlace(field.entry, node) : placeOf(field.entry, node);
-  reportValue(
-    reader,
-    field,
-    'out-of-range',
-    place,
-    `\`${field.row.key}\` must be ${limit}; here stands ${describeNode(node)}.`,
-  );
+  const message = `\`${field.row.key}\` must be ${limit}; here stands ${describeNode(node)}.`;
+  reportValue(reader, field, 'out-of-range', place, message);
   return false;
+}
+
+function baseSymbol(unit: Unit): string {
+  return unitsOf(unit.dimension).find(({ factor }) => factor === 1)?.symbol ?? unit.symbol;
 }
