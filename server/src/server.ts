@@ -7,6 +7,8 @@ import {
   ResponseError,
   TextDocumentSyncKind,
 } from 'vscode-languageserver';
+import type { ClientAbilities } from './editor/client-abilities.ts';
+import { abilitiesOf, withTheme } from './editor/client-abilities.ts';
 import { FIX_ALL_KIND, fixAllActions, remedyActions } from './editor/code-actions.ts';
 import { completionsAt } from './editor/completion.ts';
 import { diagnosticsOf } from './editor/diagnostics.ts';
@@ -14,8 +16,6 @@ import { foldingOf } from './editor/folding.ts';
 import { hoverAt } from './editor/hover.ts';
 import { mapAt } from './editor/map-view.ts';
 import { outlineOf } from './editor/outline.ts';
-import type { ClientAbilities } from './editor/client-abilities.ts';
-import { abilitiesOf, withTheme } from './editor/client-abilities.ts';
 import type { Evaluation } from './workbench/evaluation.ts';
 import { Workbench } from './workbench/workbench.ts';
 
@@ -189,8 +189,10 @@ export function serve(connection: Connection): void {
   );
   connection.onRequest(
     'ratewright/map',
-    ({ textDocument, position }: { textDocument: { uri: string }; position: { line: number; character: number } }, token) =>
-      answer(textDocument.uri, token, null, (evaluation) => mapAt(evaluation, position, abilities)),
+    (
+      { textDocument, position }: { textDocument: { uri: string }; position: { line: number; character: number } },
+      token,
+    ) => answer(textDocument.uri, token, null, (evaluation) => mapAt(evaluation, position, abilities)),
   );
   connection.onNotification('ratewright/theme', ({ theme }: { theme: unknown }) => {
     abilities = withTheme(abilities, theme);

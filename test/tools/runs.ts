@@ -5,5 +5,5 @@
  * @param full the full count
  */
 export function runs(full: number): number {
-	return process.env.RATEWRIGHT_FULL === "1" ? full : Math.min(50, full);
+  return process.env.RATEWRIGHT_FULL === '1' ? full : Math.min(50, full);
 }
