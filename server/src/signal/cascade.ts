@@ -17,7 +17,7 @@ export interface Along {
 
 /** An extreme of a sum along a piece. */
 export interface PointAlong {
-  /** The bound that holds: the extreme itself to 1e-6 dB, or less exact but on the safe side where steps ran out. */
+  /** The bound that holds: the extreme, or on its safe side by as much as `leastAlong` says. */
   readonly attenuationDb: number;
   /** Where along the piece, from 0 to 1, the sum comes closest to it. */
   readonly t: number;
@@ -26,7 +26,14 @@ export interface PointAlong {
 /** How close the bound must come to a value that is attained. */
 const CLOSE_DB = 1e-6;
 
-/** How often a piece is halved at most. */
+/**
+ * After so many partings this is close enough. It takes them only where members pull opposite ways about a least
+ * inside the piece: there the bound's distance falls no faster than with the square of their number.
+ */
+const MANY_STEPS = 256;
+const STILL_CLOSE_DB = 1e-4;
+
+/** How often a piece is parted at most. */
 const MOST_STEPS = 4096;
 
 /**
@@ -49,8 +56,8 @@ export function cascade(responses: readonly Response[]): Cascade {
  * Least sum of attenuations along a piece, each with the worst of its own tolerance.
  *
  * Branch and bound: over any part of the piece the sum of each member's least is a lower bound, the sum at a point an
- * upper one; the part with the lowest bound is halved until the two are within 1e-6 dB. After 4,096 halvings the lower
- * bound is returned as it is: never more than is so.
+ * upper one; the part with the lowest bound is parted until the two are within 1e-6 dB (1e-4 dB where that takes more
+ * than 256 partings). What is returned is the lower bound, never more than is so; after 4,096 partings, as it is.
  */
 export function leastAlong(members: readonly Along[]): number {
   const only = members[0];
@@ -114,7 +121,11 @@ function membersOf(response: Response): readonly Response[] {
 function heldAt(response: Response, lowHz: number, highHz: number): Response {
   const leastDb = response.leastDb(lowHz, highHz);
   const greatestDb = response.greatestDb(lowHz, highHz);
-  return { attenuationDb: () => leastDb, leastDb: () => leastDb, greatestDb: () => greatestDb };
+  return {
+    attenuationDb: () => leastDb,
+    leastDb: () => leastDb,
+    greatestDb: () => greatestDb,
+  };
 }
 
 /** What is made least: a figure of a response at a point, and its least over a range. */
@@ -123,58 +134,82 @@ interface Figure {
   over(response: Response, lowHz: number, highHz: number): number;
 }
 
+/** A part of the piece, the sums at its ends, and what no sum in it is under. */
 interface Part {
   readonly start: number;
   readonly end: number;
+  readonly atStart: number;
+  readonly atEnd: number;
   readonly bound: number;
 }
 
 function leastOf(members: readonly Along[], figure: Figure): PointAlong {
-  const valueAt = (t: number): number => sumOf(members, (member) => figure.at(member.response, frequencyAt(member, t)));
-  const boundOver = (start: number, end: number): number =>
-    sumOf(members, (member) => {
-      const first = frequencyAt(member, start);
-      const second = frequencyAt(member, end);
-      return first <= second
-        ? figure.over(member.response, first, second)
-        : figure.over(member.response, second, first);
-    });
-
-  let best = { attenuationDb: valueAt(0), t: 0 };
-  const consider = (t: number): void => {
-    const attenuationDb = valueAt(t);
-    if (attenuationDb < best.attenuationDb) best = { attenuationDb, t };
+  const atStart = sumAt(members, figure, 0);
+  if (members.every((member) => member.lowHz === member.highHz)) return { attenuationDb: atStart, t: 0 };
+  const atEnd = sumAt(members, figure, 1);
+  const whole: Part = {
+    start: 0,
+    end: 1,
+    atStart,
+    atEnd,
+    bound: boundOver(members, figure, 0, 1),
   };
-  if (members.every((member) => member.lowHz === member.highHz)) return best;
-  consider(1);
+  const best = atEnd < atStart ? { attenuationDb: atEnd, t: 1 } : { attenuationDb: atStart, t: 0 };
+  // All members least at one common end: nothing to search.
+  if (whole.bound >= best.attenuationDb - CLOSE_DB) return { ...best, attenuationDb: whole.bound };
+  return searched(members, figure, whole, best);
+}
 
-  const whole: Part = { start: 0, end: 1, bound: boundOver(0, 1) };
+function searched(members: readonly Along[], figure: Figure, whole: Part, ends: PointAlong): PointAlong {
+  let best = ends;
   const parts = new MinimumHeap<Part>((part) => part.bound);
   parts.add(whole);
   for (let step = 0; step < MOST_STEPS; step++) {
     const lowest = parts.least();
-    // Nothing goes below minus infinity, and halving would not find where it is.
-    if (lowest === undefined || lowest.bound >= best.attenuationDb - CLOSE_DB || lowest.bound === -Infinity) break;
-    const middle = (lowest.start + lowest.end) / 2;
-    if (middle <= lowest.start || middle >= lowest.end) break;
+    // Nothing goes below minus infinity, and parting would not find where it is.
+    const closeDb = step < MANY_STEPS ? CLOSE_DB : STILL_CLOSE_DB;
+    if (lowest === undefined || lowest.bound >= best.attenuationDb - closeDb || lowest.bound === -Infinity) break;
+    const t = partingOf(lowest, best.attenuationDb);
+    if (t <= lowest.start || t >= lowest.end) break;
     parts.removeLeast();
-    consider(middle);
-    for (const [start, end] of [
-      [lowest.start, middle],
-      [middle, lowest.end],
-    ] as const) {
-      // A part's own bound can't be lower than that of the whole it is part of.
-      const bound = Math.max(boundOver(start, end), lowest.bound);
-      if (bound < best.attenuationDb) parts.add({ start, end, bound });
-    }
+    const value = sumAt(members, figure, t);
+    if (value < best.attenuationDb) best = { attenuationDb: value, t };
+    // A part's own bound can't be lower than that of the whole it is part of.
+    const lower = Math.max(boundOver(members, figure, lowest.start, t), lowest.bound);
+    const upper = Math.max(boundOver(members, figure, t, lowest.end), lowest.bound);
+    if (lower < best.attenuationDb) parts.add({ ...lowest, end: t, atEnd: value, bound: lower });
+    if (upper < best.attenuationDb) parts.add({ ...lowest, start: t, atStart: value, bound: upper });
   }
   const bound = parts.least()?.bound ?? best.attenuationDb;
-  return { attenuationDb: Math.min(bound, best.attenuationDb), t: best.t };
+  return { ...best, attenuationDb: Math.min(bound, best.attenuationDb) };
 }
 
-function sumOf(members: readonly Along[], term: (member: Along) => number): number {
+/**
+ * Where to part: in the middle, but closer to the lower end where that is enough to be done with the rest.
+ *
+ * Of members that rise by `rise` and others that fall, what is past a share `x` of the way is at least `rise x` above
+ * the part's bound: past (best - bound) / rise nothing can be lower than what is known.
+ */
+function partingOf({ start, end, atStart, atEnd, bound }: Part, bestDb: number): number {
+  const rise = Math.max(atStart, atEnd) - bound;
+  const needed = (bestDb - bound) / rise;
+  const share = needed < 0.25 && rise < Infinity ? Math.max(1.5 * needed, 1e-3) : 0.5;
+  return start + (end - start) * (atStart <= atEnd ? share : 1 - share);
+}
+
+function sumAt(members: readonly Along[], figure: Figure, t: number): number {
   let sum = 0;
-  for (const member of members) sum += term(member);
+  for (const member of members) sum += figure.at(member.response, frequencyAt(member, t));
+  return sum;
+}
+
+function boundOver(members: readonly Along[], figure: Figure, start: number, end: number): number {
+  let sum = 0;
+  for (const member of members) {
+    const first = frequencyAt(member, start);
+    const second = frequencyAt(member, end);
+    sum += figure.over(member.response, Math.min(first, second), Math.max(first, second));
+  }
   return sum;
 }
 

@@ -49,7 +49,10 @@ function cauerFunction(order: number, ripple: number, stopband: number): CauerFu
   const lnPower = lnPowerOfAttenuation(ripple);
   const lnSelectivity = lnPower - lnPowerOfAttenuation(stopband);
   const modulus = modulusOfPeriodRatio(
-    periodRatio({ k: Math.exp(lnSelectivity / 2), complement: Math.sqrt(-Math.expm1(lnSelectivity)) }) / order,
+    periodRatio({
+      k: Math.exp(lnSelectivity / 2),
+      complement: Math.sqrt(-Math.expm1(lnSelectivity)),
+    }) / order,
   );
   const pairs = Math.floor(order / 2);
   const zeroGaps = new Float64Array(pairs);
@@ -62,7 +65,14 @@ function cauerFunction(order: number, ripple: number, stopband: number): CauerFu
     poleGaps[i] = dn * dn;
     poleScales[i] = (modulus.k * sn) ** 2;
   }
-  return { lnPower, isOdd: order % 2 === 1, modulus, zeroGaps, poleGaps, poleScales };
+  return {
+    lnPower,
+    isOdd: order % 2 === 1,
+    modulus,
+    zeroGaps,
+    poleGaps,
+    poleScales,
+  };
 }
 
 /**
@@ -89,7 +99,10 @@ function turnsOf(order: number, ripple: number, stopband: number, modulus: Modul
     const isZero = i % 2 === (order - 1) % 2;
     const { sn } = jacobiAt(i / order, modulus);
     passBand.push({ x: sn, db: isZero ? 0 : ripple });
-    stopBand.push({ x: 1 / (modulus.k * sn), db: isZero ? Infinity : stopband });
+    stopBand.push({
+      x: 1 / (modulus.k * sn),
+      db: isZero ? Infinity : stopband,
+    });
   }
   return [...passBand, ...stopBand.reverse()];
 }

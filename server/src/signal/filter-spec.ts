@@ -17,8 +17,18 @@ export interface FilterEdge {
 
 /** The responses that have poles, analogue by nature; used digitally through the bilinear transform. */
 export type PoleFilter =
-  | { readonly response: 'butterworth'; readonly order: number; readonly shape: FilterShape; readonly edge: FilterEdge }
-  | { readonly response: 'bessel'; readonly order: number; readonly shape: FilterShape; readonly edge: FilterEdge }
+  | {
+      readonly response: 'butterworth';
+      readonly order: number;
+      readonly shape: FilterShape;
+      readonly edge: FilterEdge;
+    }
+  | {
+      readonly response: 'bessel';
+      readonly order: number;
+      readonly shape: FilterShape;
+      readonly edge: FilterEdge;
+    }
   | {
       readonly response: 'chebyshev';
       readonly order: number;
@@ -63,15 +73,27 @@ export type CurveFilter =
       readonly rippleDb: number;
     }
   /** Points ascend in frequency. */
-  | { readonly response: 'points'; readonly points: readonly (readonly [frequencyHz: number, attenuationDb: number])[] }
+  | {
+      readonly response: 'points';
+      readonly points: readonly (readonly [frequencyHz: number, attenuationDb: number])[];
+    }
   | { readonly response: 'aperture'; readonly timeS: number };
 
 /** The responses that exist only in numbers, at an input rate given beside them. */
 export type StepFilter =
   | { readonly response: 'fir'; readonly taps: readonly number[] }
-  | { readonly response: 'kaiser'; readonly passHz: number; readonly stopHz: number; readonly stopbandDb: number }
+  | {
+      readonly response: 'kaiser';
+      readonly passHz: number;
+      readonly stopHz: number;
+      readonly stopbandDb: number;
+    }
   | { readonly response: 'half-band'; readonly taps: readonly number[] }
-  | { readonly response: 'half-band'; readonly passHz: number; readonly stopbandDb: number }
+  | {
+      readonly response: 'half-band';
+      readonly passHz: number;
+      readonly stopbandDb: number;
+    }
   | { readonly response: 'moving-average'; readonly length: number }
   /** `decimation` is the rate change the integrators and combs are built around. */
   | {
@@ -82,7 +104,9 @@ export type StepFilter =
     };
 
 /** `tolerance` is relative, on every frequency of the filter (0.05 is ±5 %). */
-export type AnalogueFilter = (PoleFilter | CurveFilter) & { readonly tolerance: number };
+export type AnalogueFilter = (PoleFilter | CurveFilter) & {
+  readonly tolerance: number;
+};
 
 /** `passes` is 2 for a filter run forward and backward. */
 export type DigitalFilter = (PoleFilter | CurveFilter | StepFilter) & {

@@ -82,7 +82,8 @@ function turningPoints(taps: Float64Array, size: number): readonly TurningPoint[
   const power = re.map((real, k) => real * real + im[k]! * im[k]!);
   const negligible = (NULL_RATIO * size) ** 2;
   const slopeAt = powerSlopeOf(taps);
-  const points: TurningPoint[] = [];
+  // Flat tops turn once more between an end, where every response is level, and the first point beside it.
+  const places = [refined(slopeAt, spacing / 2, spacing / 2), refined(slopeAt, Math.PI - spacing / 2, spacing / 2)];
   for (let k = 1; k < power.length - 1; k++) {
     const before = power[k]! - power[k - 1]!;
     const after = power[k + 1]! - power[k]!;
@@ -90,29 +91,31 @@ function turningPoints(taps: Float64Array, size: number): readonly TurningPoint[
     const isPeak = before > 0 || after < 0;
     // Between two nulls closer than the grid there is nothing but rounding.
     if (isPeak && power[k]! < negligible) continue;
-    const w = refined(slopeAt, k * spacing, spacing);
-    points.push({ w, magnitude: magnitudeAt(taps, w) });
+    places.push(refined(slopeAt, k * spacing, spacing));
   }
-  return points;
+  return places.sort((first, second) => first - second).map((w) => ({ w, magnitude: magnitudeAt(taps, w) }));
 }
 
-/** Newton's method on the slope of |H|^2, kept within a grid spacing of where it began. */
-function refined(slopeAt: PowerSlope, start: number, spacing: number): number {
+/** Newton's method on the slope of |H|^2, kept within `reach` of where it began. */
+function refined(slopeAt: PowerSlope, start: number, reach: number): number {
   let w = start;
   for (let step = 0; step < 8; step++) {
     const { slope, curvature } = slopeAt(w);
-    const next = Math.min(Math.max(w - slope / curvature, start - spacing), start + spacing);
+    const next = Math.min(Math.max(w - slope / curvature, start - reach), start + reach);
     if (!Number.isFinite(next)) break;
     const change = Math.abs(next - w);
     w = next;
     // The step after this one would be of the order of the square.
-    if (change < 1e-5 * spacing) break;
+    if (change < 1e-5 * reach) break;
   }
   return w;
 }
 
 /** First and second derivative of |H|^2 over w. */
-type PowerSlope = (w: number) => { readonly slope: number; readonly curvature: number };
+type PowerSlope = (w: number) => {
+  readonly slope: number;
+  readonly curvature: number;
+};
 
 function powerSlopeOf(taps: Float64Array): PowerSlope {
   const isSymmetric = taps.every((tap, n) => tap === taps[taps.length - 1 - n]);
@@ -140,7 +143,10 @@ function symmetricPowerSlope(taps: Float64Array, w: number): ReturnType<PowerSlo
     sine = sine * stepRe + cosine * stepIm;
     cosine = turned;
   }
-  return { slope: 8 * value * first, curvature: 8 * (first * first + value * second) };
+  return {
+    slope: 8 * value * first,
+    curvature: 8 * (first * first + value * second),
+  };
 }
 
 /** Phases are counted from the middle tap. */

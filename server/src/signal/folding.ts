@@ -68,7 +68,10 @@ export function foldThrough(
   limit: number = MOST_PIECES,
 ): readonly FoldedPiece[] {
   const pieces: FoldedPiece[] = [];
-  const whole: Track = { ranges: [{ lowHz, highHz, reversed: false }], foldsAtStage: null };
+  const whole: Track = {
+    ranges: [{ lowHz, highHz, reversed: false }],
+    foldsAtStage: null,
+  };
   if (splitOnward(whole, ratesHz, limit, pieces)) return pieces;
   const last = pieces.pop();
   return [...pieces, collapsedPiece(last?.trueLowHz ?? lowHz, highHz, ratesHz)];
@@ -124,7 +127,10 @@ function rangeZones(
 /** The part of a track that is within `startHz .. endHz` at the stage reached. */
 function cut(track: Track, startHz: number, endHz: number): Track {
   const here = track.ranges[track.ranges.length - 1]!;
-  return { ...track, ranges: track.ranges.map((range) => partOf(range, here, startHz, endHz)) };
+  return {
+    ...track,
+    ranges: track.ranges.map((range) => partOf(range, here, startHz, endHz)),
+  };
 }
 
 /** What of `range` corresponds to `startHz .. endHz` of `here`; parts that share an end there share it here. */
@@ -138,7 +144,11 @@ function partOf(range: StageInput, here: StageInput, startHz: number, endHz: num
   };
   const start = imageOf(startHz);
   const end = imageOf(endHz);
-  return { lowHz: Math.min(start, end), highHz: Math.max(start, end), reversed: range.reversed };
+  return {
+    lowHz: Math.min(start, end),
+    highHz: Math.max(start, end),
+    reversed: range.reversed,
+  };
 }
 
 /** A track after the sampling at `rateHz`, all of it in one zone (from 0). */
@@ -186,7 +196,11 @@ function pieceOf(track: Track): FoldedPiece {
 function collapsedPiece(lowHz: number, highHz: number, ratesHz: readonly number[]): FoldedPiece {
   const ranges = [
     { lowHz, highHz, reversed: false },
-    ...ratesHz.map((rateHz) => ({ lowHz: 0, highHz: rateHz / 2, reversed: false })),
+    ...ratesHz.map((rateHz) => ({
+      lowHz: 0,
+      highHz: rateHz / 2,
+      reversed: false,
+    })),
   ];
   return { ...pieceOf({ ranges, foldsAtStage: 1 }), collapsed: true };
 }
@@ -252,7 +266,11 @@ function imagesBefore(
       const lowHz = found.pop()!.ranges[0]!.lowHz;
       return [
         ...found,
-        { ranges: [{ lowHz, highHz: boundHz, reversed: false }], foldsAtStage: stage, collapsed: true },
+        {
+          ranges: [{ lowHz, highHz: boundHz, reversed: false }],
+          foldsAtStage: stage,
+          collapsed: true,
+        },
       ];
     }
   }

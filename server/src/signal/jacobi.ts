@@ -54,7 +54,10 @@ export function modulusOfPeriodRatio(ratio: number): Modulus {
 }
 
 /** (theta2 / theta3)^2 and (theta4 / theta3)^2 at 0, for a nome of at most exp(-pi): four terms are exact. */
-function moduliOfNome(q: number): { readonly small: number; readonly large: number } {
+function moduliOfNome(q: number): {
+  readonly small: number;
+  readonly large: number;
+} {
   const theta2 = 2 * q ** 0.25 * (1 + q ** 2 + q ** 6 + q ** 12);
   const theta3 = 1 + 2 * (q + q ** 4 + q ** 9 + q ** 16);
   const theta4 = 1 + 2 * (-q + q ** 4 - q ** 9 + q ** 16);
@@ -96,5 +99,9 @@ function descendingLanden(u: number, modulus: Modulus): JacobiValues {
   let phi = u * a * 2 ** means.length;
   for (let n = means.length - 1; n >= 0; n--) phi = (phi + Math.asin(ratios[n]! * Math.sin(phi))) / 2;
   const cn = Math.cos(phi);
-  return { sn: Math.sin(phi), cn, dn: Math.hypot(modulus.complement, modulus.k * cn) };
+  return {
+    sn: Math.sin(phi),
+    cn,
+    dn: Math.hypot(modulus.complement, modulus.k * cn),
+  };
 }

@@ -32,6 +32,6 @@ export function onStraightLine(
   hz: number,
 ): number {
   if (!(lowHz > 0)) return highDb;
-  const part = Math.log(hz / lowHz) / Math.log(highHz / lowHz);
-  return lowDb + (highDb - lowDb) * part;
+  const width = Math.log(highHz) - Math.log(lowHz);
+  return width > 0 ? lowDb + ((highDb - lowDb) * (Math.log(hz) - Math.log(lowHz))) / width : highDb;
 }

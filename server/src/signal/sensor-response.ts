@@ -17,8 +17,9 @@ export interface SensorResponse {
 /** Least |(1 - u^2)^2 + (u / Q)^2| that is told from 0, so that a resonance without damping stays finite. */
 const LEAST_POWER = 1e-60;
 
-/** Where (f / resonance)^2 is no longer searched for turns. */
-const HIGHEST_SQUARE = 1e30;
+/** Where (f / resonance)^2 is searched for turns. */
+const LEAST_SQUARE = 1e-30;
+const GREATEST_SQUARE = 1e30;
 
 /**
  * Attenuation of a sensor, negative where its resonance lifts.
@@ -68,7 +69,7 @@ function turningPoints({ resonanceHz, cornerHz, lowCornerHz }: SensorResponse, q
   const shift = lowCornerHz === undefined ? 0 : 1;
   const condition = power.map((coefficient, degree) => coefficient * (degree - shift));
   // Without a low corner y = 0 always solves it: the end of the axis, no turn.
-  return signChanges(shift === 0 ? condition.slice(1) : condition, 0, HIGHEST_SQUARE).map(
+  return signChanges(shift === 0 ? condition.slice(1) : condition, LEAST_SQUARE, GREATEST_SQUARE).map(
     (y) => scaleHz * Math.sqrt(y),
   );
 }
