@@ -15,7 +15,7 @@ const LARGE = 16;
 export function besselPrototype(order: number): Curve {
   const coefficients = squaredMagnitude(order);
   const cutoff = Math.sqrt(whereExcessIsOne(coefficients));
-  const lnLeading = lnOfLeading(coefficients);
+  const lnLeading = Math.log(coefficients[order]!);
   return risingCurve((x) => {
     const w = x * cutoff;
     if (w < LARGE) return DB_PER_NEPER_OF_POWER * Math.log1p(excess(coefficients, w * w));
@@ -49,10 +49,6 @@ function descending(coefficients: Float64Array, inverse: number): number {
   let sum = 0;
   for (let k = 0; k < coefficients.length; k++) sum = sum * inverse + coefficients[k]! / leading;
   return sum;
-}
-
-function lnOfLeading(coefficients: Float64Array): number {
-  return Math.log(coefficients[coefficients.length - 1]!);
 }
 
 /** Newton's method from above, where the convex, rising excess brings it down to the root without overshoot. */

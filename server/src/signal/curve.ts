@@ -21,11 +21,6 @@ export function risingCurve(at: (x: number) => number): Curve {
   return { at, least: (low) => at(low), greatest: (_low, high) => at(high) };
 }
 
-/** The same attenuation everywhere. */
-export function flatCurve(db: number): Curve {
-  return risingCurve(() => db);
-}
-
 /**
  * A curve that is monotone between the turns given.
  *

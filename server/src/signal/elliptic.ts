@@ -1,5 +1,5 @@
 import { type Curve, type Turn, turningCurve } from './curve.ts';
-import { attenuationOfLnPower, lnPowerOfAttenuation } from './decibel.ts';
+import { attenuationOfLnPower, HALF_POWER_DB, lnPowerOfAttenuation } from './decibel.ts';
 import { jacobiAt, type Modulus, modulusOfPeriodRatio, periodRatio } from './jacobi.ts';
 
 /** What the reader refuses anyway, kept within what the functions can hold. */
@@ -109,14 +109,13 @@ function turnsOf(order: number, ripple: number, stopband: number, modulus: Modul
 
 /** Between pass edge and stop edge the curve only rises. */
 function cutoffOf(curve: Curve, ripple: number, stopEdge: number): number {
-  const halfPower = 10 * Math.log10(2);
-  if (ripple >= halfPower) return 1;
+  if (ripple >= HALF_POWER_DB) return 1;
   let low = 1;
   let high = stopEdge;
   for (let step = 0; step < 100; step++) {
     const middle = (low + high) / 2;
     if (middle <= low || middle >= high) break;
-    if (curve.at(middle) < halfPower) low = middle;
+    if (curve.at(middle) < HALF_POWER_DB) low = middle;
     else high = middle;
   }
   return high;
