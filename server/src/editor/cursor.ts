@@ -25,6 +25,8 @@ const KEY_LINE =
   /^(\s*)((?:- +)*)(?:"((?:[^"\\]|\\.)*)"|'((?:[^']|'')*)'|([^\s#'"{[&*!|>%@`-][^#]*?|-[^\s][^#]*?))\s*:(?:\s+(.*))?$/;
 
 interface Line {
+  /** Nothing, or a comment alone. */
+  readonly isBlank: boolean;
   readonly indent: number;
   /** Columns of the dashes of list items that the line begins with. */
   readonly dashes: readonly number[];
@@ -37,7 +39,7 @@ interface Line {
 
 /** Finds out where a cursor stands, from the text alone: what has been typed so far need not be YAML yet. */
 export function cursorIn(text: string, offset: number): Cursor {
-  const lineStart = text.lastIndexOf('\n', offset - 1) + 1;
+  const lineStart = lineStartAt(text, offset);
   const before = text.slice(lineStart, offset);
   const trimmed = text.trimStart();
   if (trimmed.startsWith('{') || trimmed.startsWith('[')) return flowCursor(text.slice(0, offset), 0, []);
@@ -48,12 +50,8 @@ export function cursorIn(text: string, offset: number): Cursor {
 
 function blockCursor(text: string, lineStart: number, before: string): Cursor {
   const line = readLine(before);
-  const inComment = /(?:^|\s)#/.test(withoutQuoted(before));
-  const above = pathAbove(
-    text,
-    lineStart,
-    line.dashes[0] ?? (line.key === undefined ? before.search(/\S|$/) : line.keyColumn),
-  );
+  const inComment = /(?:^|\s)#/.test(withoutQuotes(before));
+  const above = pathAbove(text, lineStart, beginningOf(line));
   const items = line.dashes.map((): PathStep => ({ kind: 'item' }));
   const path = [...above.path, ...items];
   if (line.key !== undefined) {
@@ -82,48 +80,48 @@ function blockCursor(text: string, lineStart: number, before: string): Cursor {
 function pathAbove(
   text: string,
   lineStart: number,
-  column: number,
-): { readonly path: readonly PathStep[]; readonly siblings: ReadonlySet<string> } {
+  { column, isItem }: { readonly column: number; readonly isItem: boolean },
+): {
+  readonly path: readonly PathStep[];
+  readonly siblings: ReadonlySet<string>;
+} {
   const steps: PathStep[] = [];
-  const siblings = new Set<string>();
-  let level = column;
+  const siblings = new Set<string>(keysBelow(text, lineStart, column));
+  // A list may stand at the column of its key; what is looked for is then a key at that column, past the other items.
+  let itemColumn = isItem ? column : -1;
+  let level = isItem && keyAtColumn(text, lineStart - 1, column) ? column + 1 : column;
   let end = lineStart - 1;
-  let first = true;
-  for (let count = 0; end >= 0 && level > 0 && count < MOST_LINES_UP; count++) {
-    const start = text.lastIndexOf('\n', end - 1) + 1;
-    const raw = text.slice(start, end);
+  for (let count = 0; end >= 0 && count < MOST_LINES_UP; count++) {
+    const start = lineStartAt(text, end);
+    const line = readLine(text.slice(start, end));
     end = start - 1;
-    if (/^\s*(?:#|$)/.test(raw)) continue;
-    const line = readLine(raw);
-    if (line.key === undefined && line.dashes.length === 0) continue;
-    if (first && line.key !== undefined && line.keyColumn === level) siblings.add(line.key);
-    const outer = line.dashes.filter((dash) => dash < level);
-    if (line.key !== undefined && line.keyColumn < level && (line.value === '' || /^[&!]\S+\s*$/.test(line.value))) {
-      steps.unshift({ kind: 'key', key: line.key });
+    if (line.isBlank || (line.dashes[0] !== undefined && line.dashes[0] === itemColumn)) continue;
+    if (steps.length === 0 && line.key !== undefined && line.keyColumn === column) siblings.add(line.key);
+    if (level === 0 && steps.length > 0) break;
+    const opens = line.value === '' || /^[&!]\S+\s*$/.test(line.value);
+    const isAbove = line.key !== undefined && line.keyColumn < level && opens;
+    const dashes = line.dashes.filter((dash) => dash < level);
+    if (!isAbove && dashes.length === 0) continue;
+    if (isAbove) {
+      steps.unshift({ kind: 'key', key: line.key! });
       level = line.keyColumn;
-      first = false;
-    } else if (outer.length === 0) continue;
-    for (const dash of outer.reverse()) {
-      if (dash >= level) continue;
-      steps.unshift({ kind: 'item' });
-      level = dash;
-      first = false;
+      itemColumn = -1;
     }
-    // A list may stand at the column of its key: the key is then the next line above without a dash there.
-    if (line.dashes.length > 0 && steps[0]?.kind === 'item') level += keyAtColumn(text, end, level) ? 1 : 0;
+    for (const dash of dashes.reverse()) {
+      steps.unshift({ kind: 'item' });
+      itemColumn = dash;
+      level = keyAtColumn(text, end, dash) ? dash + 1 : dash;
+    }
   }
-  // Siblings below the cursor count too: a key is offered once.
-  for (const key of keysBelow(text, lineStart, column)) siblings.add(key);
   return { path: steps, siblings };
 }
 
 function keyAtColumn(text: string, end: number, column: number): boolean {
   for (let at = end, count = 0; at >= 0 && count < MOST_LINES_UP; count++) {
-    const start = text.lastIndexOf('\n', at - 1) + 1;
-    const raw = text.slice(start, at);
+    const start = lineStartAt(text, at);
+    const line = readLine(text.slice(start, at));
     at = start - 1;
-    if (/^\s*(?:#|$)/.test(raw)) continue;
-    const line = readLine(raw);
+    if (line.isBlank) continue;
     if (line.indent > column || line.dashes[0] === column) continue;
     return line.indent === column && line.key !== undefined && line.value === '';
   }
@@ -137,8 +135,8 @@ function keysBelow(text: string, lineStart: number, column: number): readonly st
     const next = text.indexOf('\n', start);
     const raw = text.slice(start, next < 0 ? undefined : next);
     start = next + 1;
-    if (/^\s*(?:#|$)/.test(raw)) continue;
     const line = readLine(raw);
+    if (line.isBlank) continue;
     if (line.indent < column) break;
     if (line.key !== undefined && line.keyColumn === column && line.dashes.length === 0) keys.push(line.key);
   }
@@ -157,6 +155,7 @@ function readLine(raw: string): Line {
   const key = match && (match[3] ?? match[4] ?? match[5]);
   const value = match?.[6] ?? '';
   return {
+    isBlank: /^\s*(?:#|$)/.test(text),
     indent: text.search(/\S|$/),
     dashes,
     key: key ?? undefined,
@@ -179,7 +178,7 @@ function openFlow(
     const opened = firstBracket(head);
     if (opened >= 0 && isOpen(text.slice(start + opened, offset))) {
       const line = readLine(head.slice(0, opened));
-      const above = pathAbove(text, start, line.dashes[0] ?? line.keyColumn);
+      const above = pathAbove(text, start, beginningOf(line));
       const own: PathStep[] = line.key === undefined ? [] : [{ kind: 'key', key: line.key }];
       return {
         start: start + opened,
@@ -188,7 +187,7 @@ function openFlow(
     }
     // A flow map may run over lines; the line it begins on is indented less than those it goes on in.
     if (start === 0 || (count === 0 && /^\S/.test(head))) return undefined;
-    start = text.lastIndexOf('\n', start - 2) + 1;
+    start = lineStartAt(text, start - 1);
   }
   return undefined;
 }
@@ -209,11 +208,24 @@ function isOpen(text: string): boolean {
   return depth > 0;
 }
 
-/** Quoted stretches and comments as blanks, so that brackets and hashes in them do not count. */
+/** Quoted stretches as blanks, so that brackets and hashes in them do not count. */
+function withoutQuotes(text: string): string {
+  return text.replaceAll(/"(?:[^"\\\n]|\\.)*"|(?<=[\s:,[{])'(?:[^'\n]|'')*'/g, (run) => ' '.repeat(run.length));
+}
+
+/** Quoted stretches and comments as blanks. */
 function withoutQuoted(text: string): string {
-  return text.replaceAll(/"(?:[^"\\\n]|\\.)*"|(?<=[\s:,[{])'(?:[^'\n]|'')*'|(?<=^|\s)#[^\n]*/g, (run) =>
-    ' '.repeat(run.length),
-  );
+  return withoutQuotes(text).replaceAll(/(?<=^|\s)#[^\n]*/g, (run) => ' '.repeat(run.length));
+}
+
+/** `lastIndexOf` takes a negative start for 0: the first line has to be told apart. */
+function lineStartAt(text: string, offset: number): number {
+  return offset <= 0 ? 0 : text.lastIndexOf('\n', offset - 1) + 1;
+}
+
+/** Where a line's own words begin: at its first dash, or at its key. */
+function beginningOf({ dashes, keyColumn }: Line): { readonly column: number; readonly isItem: boolean } {
+  return { column: dashes[0] ?? keyColumn, isItem: dashes.length > 0 };
 }
 
 interface OpenBracket {

@@ -123,10 +123,19 @@ export class Workbench {
     );
   }
 
-  /** Everything that `fix` and `Fix every channel` would do, as edits of the file as it stands. */
-  fixAll(uri: string, kinds: ReadonlySet<RemedyKind>, isCancelled: () => boolean): FixAllResult | undefined {
+  /**
+   * Everything that `fix` and `Fix every channel` would do, as edits of the file as it stands.
+   *
+   * @param only the name of the one remedy to apply, where not all are meant
+   */
+  fixAll(
+    uri: string,
+    kinds: ReadonlySet<RemedyKind>,
+    isCancelled: () => boolean,
+    only?: string,
+  ): FixAllResult | undefined {
     const evaluation = this.evaluation(uri);
-    return evaluation && fixAll(evaluation, kinds, (from, edits) => this.#after(from, edits), isCancelled);
+    return evaluation && fixAll(evaluation, kinds, (from, edits) => this.#after(from, edits), isCancelled, only);
   }
 
   #after(evaluation: Evaluation, edits: readonly TextEdit[]): Evaluation {

@@ -1,0 +1,11 @@
+/** Markdown of ours as plain text, for clients that show nothing else: pictures go, tables keep their columns. */
+export function plainTextOf(markdown: string): string {
+  return markdown
+    .replaceAll(/!\[((?:[^\]\\]|\\.)*)\]\([^)]*\)/g, '$1')
+    .replaceAll(/^\|(?:---\|)+$\n?/gm, '')
+    .replaceAll(/^\| (.*) \|$/gm, (_line, cells: string) => cells.split(' | ').join('   '))
+    .replaceAll(/^```\w*$\n?/gm, '')
+    .replaceAll('**', '')
+    .replaceAll('`', '')
+    .trim();
+}

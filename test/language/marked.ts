@@ -1,0 +1,19 @@
+/** The mark that stands for the cursor in fixtures: a sign that no rig file has. */
+const MARK = '▮';
+
+/** A text with a cursor mark, as the text without it and the cursor's place. */
+export function marked(fixture: string): {
+  readonly text: string;
+  readonly offset: number;
+  readonly position: { readonly line: number; readonly character: number };
+} {
+  const offset = fixture.indexOf(MARK);
+  if (offset < 0 || fixture.indexOf(MARK, offset + 1) >= 0) throw new Error('A fixture has one cursor mark.');
+  const before = fixture.slice(0, offset);
+  const lines = before.split('\n');
+  return {
+    text: before + fixture.slice(offset + MARK.length),
+    offset,
+    position: { line: lines.length - 1, character: lines.at(-1)!.length },
+  };
+}
