@@ -6,7 +6,7 @@ import type { Inheritance } from './model.ts';
 import type { Place } from './place.ts';
 import { placedProblem, type Reader, report } from './reader.ts';
 import type { MapNode, ScalarNode, TreeNode } from './tree.ts';
-import { rowsOf } from './vocabulary.ts';
+import { rowsOf, UNCOMPUTED_CONTEXTS } from './vocabulary.ts';
 import type { ContextName, KeyRow, ValueKind } from './vocabulary-kinds.ts';
 
 /** A value on its way to being read: what it should be, and where it stands. */
@@ -157,7 +157,8 @@ function addField(
     return;
   }
   byKey.set(key.text, { kind: row.value, row, path, node, entry, inherited });
-  if (!row.computed && keyEntry === reader.entry) noteNotComputed(reader, row.key, placeOf(keyEntry, key));
+  if (!row.computed && keyEntry === reader.entry && !UNCOMPUTED_CONTEXTS.has(context))
+    noteNotComputed(reader, row.key, placeOf(keyEntry, key));
   if (node.kind === 'empty' && entry === keyEntry && entry.text.charCodeAt(node.start) !== STAR) {
     report(reader, {
       name: 'wrong-kind',

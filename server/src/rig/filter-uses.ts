@@ -30,7 +30,7 @@ export function readFilterUse(reader: Reader, field: Field, where: FilterPlace):
 function readUsedFilter(reader: Reader, field: Field): Filter | undefined {
   const { node } = field;
   if (node.kind === 'scalar') return findThing(reader, field, node, 'filter');
-  if (node.kind === 'map') return sharedInPlace(reader, field, node, readInPlace);
+  if (node.kind === 'map') return sharedInPlace(reader, field, node, 'filter', readInPlace);
   if (node.kind !== 'empty') reportWrongKind(reader, field);
   return undefined;
 }

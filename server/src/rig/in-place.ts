@@ -10,6 +10,7 @@ export function sharedInPlace<T extends object>(
   reader: Reader,
   field: Field,
   node: MapNode,
+  name: 'filter' | 'sensor',
   read: (reader: Reader, field: Field, node: MapNode) => T,
 ): T {
   if (field.entry === reader.entry) return read(reader, field, node);
@@ -19,7 +20,10 @@ export function sharedInPlace<T extends object>(
     return known.thing as T;
   }
   const before = reader.origin.length;
-  const thing = read(reader, field, node);
+  // Whoever comes first must not show in what all share: the thing is read as if nobody in particular inherited it.
+  const from = field.entry.section === undefined && field.entry.name === 'defaults' ? 'defaults' : 'merge';
+  const place = { entry: field.entry, start: node.start, end: node.end };
+  const thing = read(reader, { ...field, path: name, inherited: { from, place } }, node);
   reader.scope.inPlace.set(node, { thing, problems: reader.origin.slice(before) });
   return thing;
 }

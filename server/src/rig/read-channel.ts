@@ -111,7 +111,7 @@ function readChannelSensor(reader: Reader, fields: Fields): UsedSensor | undefin
   }
   const { node, entry } = field;
   if (node.kind === 'map')
-    return { thing: sharedInPlace(reader, field, node, readInPlace), place: placeOf(entry, node) };
+    return { thing: sharedInPlace(reader, field, node, 'sensor', readInPlace), place: placeOf(entry, node) };
   const scalar = scalarOf(reader, field);
   return scalar && { thing: findThing(reader, field, scalar, 'sensor'), place: innerPlace(entry, scalar) };
 }

@@ -92,10 +92,10 @@ function readRange(reader: Reader, field: Field | undefined, measures: Measured 
 
 /** A bridge: volts per measured unit are rated times excitation over range. */
 function readBridge(reader: Reader, fields: Fields, range: SensorRange | undefined): Scale | undefined {
-  if (!fields.byKey.has('rated') || fields.byKey.has('sensitivity')) return undefined;
-  reportMissingKeys(reader, fields, ['excitation', 'range']);
   const rated = readValue(reader, fields.byKey.get('rated'));
   const excitation = readValue(reader, fields.byKey.get('excitation'));
+  if (!fields.byKey.has('rated') || fields.byKey.has('sensitivity')) return undefined;
+  reportMissingKeys(reader, fields, ['excitation', 'range']);
   if (!rated || !excitation || !range?.unit) return undefined;
   const { written: _, ...place } = rated;
   const value = (rated.value * excitation.value) / range.magnitude.value;

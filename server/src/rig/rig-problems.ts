@@ -3,7 +3,7 @@ import type { Environment } from './environment.ts';
 import { clipped } from './fields.ts';
 import type { Place } from './place.ts';
 import type { PlacedProblem } from './problem.ts';
-import { placedProblem } from './reader.ts';
+import { type Lookup, placedProblem } from './reader.ts';
 import type { ThingKind } from './vocabulary-kinds.ts';
 
 /**
@@ -69,13 +69,21 @@ function unusedNames(environment: Environment, readings: readonly ChannelReading
     ]),
   );
   for (const { kind, name } of environment.mentions) unused.get(kind)?.delete(name);
+  for (const { dependencies } of environment.core.readings.values()) dropLookedUp(unused, dependencies.lookups);
   let left = 0;
   for (const names of unused.values()) left += names.size;
-  for (const { mentions } of readings) {
+  for (const { dependencies } of readings) {
     if (left === 0) break;
-    for (const { kind, name } of mentions) if (unused.get(kind)?.delete(name)) left--;
+    left -= dropLookedUp(unused, dependencies.lookups);
   }
   return [...unused].flatMap(([kind, names]) => [...names].map(([name, place]) => unusedName(kind, name, place)));
+}
+
+/** Takes out what was looked up, inherited text included; how many names that were. */
+function dropLookedUp(unused: ReadonlyMap<ThingKind, Map<string, Place>>, lookups: readonly Lookup[]): number {
+  let dropped = 0;
+  for (const lookup of lookups) if ('name' in lookup && unused.get(lookup.kind)?.delete(lookup.name)) dropped++;
+  return dropped;
 }
 
 function unusedName(kind: ThingKind, name: string, place: Place): PlacedProblem {

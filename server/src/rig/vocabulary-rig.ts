@@ -115,7 +115,7 @@ export const RIG_ROWS: readonly KeyRow[] = [
     'acceptance',
     'on',
     either(nameOf('channel'), TEXT),
-    'strain-{01..08}',
+    '"strain-{01..08}"',
     'The channel it is accepted on; brace ranges and `*` stand for several.',
     { computed: false },
   ),

@@ -63,6 +63,11 @@ export function keysOf(context: ContextName): readonly KeyRow[] {
   return KEYS_BY_CONTEXT.get(context) ?? [];
 }
 
+/** Contexts of which nothing is computed: what is said of the key that holds them goes for all of their own. */
+export const UNCOMPUTED_CONTEXTS: ReadonlySet<ContextName> = new Set(
+  CONTEXTS.map(({ name }) => name).filter((name) => keysOf(name).every((row) => !row.computed)),
+);
+
 /** The rows of a context by key. */
 export function rowsOf(context: ContextName): ReadonlyMap<string, KeyRow> {
   return ROWS_BY_CONTEXT.get(context) as ReadonlyMap<string, KeyRow>;
