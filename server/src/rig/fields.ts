@@ -31,6 +31,8 @@ export interface Fields {
   readonly place: Place;
   /** `''`, or the path of the map with a dot behind it. */
   readonly prefix: string;
+  /** True where no map stands, which has been said: what it would lack is then not worth saying. */
+  readonly unreadable?: true;
 }
 
 /** The value behind an entry's key or in a list, with an alias followed; `undefined` where that leads nowhere. */
@@ -70,7 +72,8 @@ export function readEntryFields(reader: Reader, context: ContextName): Fields {
   const { entry } = reader;
   const place = namePlace(entry);
   const found = resolved(reader, entry.value, entry, undefined);
-  if (!found || found.node.kind === 'empty') return { context, byKey: new Map(), place, prefix: '' };
+  if (!found) return { context, byKey: new Map(), place, prefix: '', unreadable: true };
+  if (found.node.kind === 'empty') return { context, byKey: new Map(), place, prefix: '' };
   if (found.node.kind !== 'map') {
     report(reader, {
       name: 'wrong-kind',
@@ -78,7 +81,7 @@ export function readEntryFields(reader: Reader, context: ContextName): Fields {
       message: `\`${clipped(entry.name)}\` needs keys of its own beneath it; here stands ${describeNode(found.node)}.`,
       about: '',
     });
-    return { context, byKey: new Map(), place, prefix: '' };
+    return { context, byKey: new Map(), place, prefix: '', unreadable: true };
   }
   const inherited = found.inherited;
   return readMapFields(reader, context, found.node, found.entry, inherited, place, '');
@@ -230,6 +233,7 @@ export function reportMissingKeys(reader: Reader, fields: Fields, keys: readonly
 }
 
 export function reportMissingKey(reader: Reader, fields: Fields, key: string, example: string | undefined): void {
+  if (fields.unreadable) return;
   report(reader, {
     name: 'missing-key',
     place: fields.place,

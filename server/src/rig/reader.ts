@@ -135,7 +135,10 @@ export function report(reader: Reader, said: Report): void {
   let alike = 1;
   for (const { problem, place } of problems) {
     if (problem.name !== said.name) continue;
-    if (place.start === said.place.start && place.end === said.place.end && place.entry === said.place.entry) return;
+    const samePlace =
+      place.start === said.place.start && place.end === said.place.end && place.entry === said.place.entry;
+    // Several keys may be missing at one place.
+    if (samePlace && (said.name !== 'missing-key' || problem.about === said.about)) return;
     if (problem.about === about) about = `${said.about ?? ''} ${++alike}`;
   }
   if (problems.length >= MOST_PROBLEMS) return;

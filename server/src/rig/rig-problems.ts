@@ -29,7 +29,7 @@ function inheritedProblems(environment: Environment, readings: readonly ChannelR
   if (inherited.length === 0) return inherited;
   const said = new Map<object, Set<string>>();
   const sayOnce = ({ problem, place }: PlacedProblem): boolean => {
-    const identity = `${problem.name} ${place.start} ${place.end}`;
+    const identity = `${problem.name} ${place.start} ${place.end} ${problem.name === 'missing-key' ? problem.about : ''}`;
     let known = said.get(place.entry);
     if (!known) {
       known = new Set();
