@@ -69,8 +69,8 @@ function isSameScale(first: LevelScale, second: LevelScale): boolean {
     first.unit === second.unit &&
     first.fullScaleV === second.fullScaleV &&
     first.sensitivity === second.sensitivity &&
-    first.measures === second.measures &&
-    first.quantity === second.quantity
+    first.sensor?.measures?.value === second.sensor?.measures?.value &&
+    first.sensor?.unit === second.sensor?.unit
   );
 }
 
@@ -157,6 +157,14 @@ export function slackOf(piece: FoldedPiece, clockTolerance: number): number {
     ? piece.trueLowHz + piece.recordedHighHz
     : Math.abs(piece.trueLowHz - piece.recordedLowHz);
   return foldedAboutHz * clockTolerance;
+}
+
+/** Where an arrival is recorded at the point of its level. */
+export function recordedAtHz(arrival: Arrival): number {
+  const { trueLowHz, recordedLowHz, recordedHighHz, mirrored, atHz } = arrival;
+  const along = atHz - trueLowHz;
+  const hz = mirrored ? recordedHighHz - along : recordedLowHz + along;
+  return Math.min(Math.max(hz, recordedLowHz), recordedHighHz);
 }
 
 /** The part of a piece that is recorded within a range, along its true frequency from 0 to 1. */

@@ -13,14 +13,23 @@ import { planOf, signalPathOf } from './signal-path.ts';
  */
 export function chainOf(channel: Channel): Chain | undefined {
   const { rateHz: rate, band } = channel;
-  if (!rate || !band || !(rate.value > 0 && rate.value < Infinity) || !(band.value.highHz > 0)) return undefined;
+  if (!channel.complete || !rate || !band || !(rate.value > 0 && rate.value < Infinity) || !(band.value.highHz > 0))
+    return undefined;
   const exact = exactRate(channel.digitizer, rate);
   const plan = planOf(channel);
-  const path = signalPathOf(channel, plan, exact ?? rate.value);
+  const rateHz = exact ?? rate.value;
+  const path = signalPathOf(channel, plan, rateHz);
   const stages = plan.stages.map(({ kind, step, filters }, index): Stage => {
-    const rateHz = path.ratesHz[index]!;
+    const stageRateHz = path.ratesHz[index]!;
     const inputRateHz = index === 0 ? undefined : path.ratesHz[index - 1]!;
-    return { rateHz, nyquistHz: rateHz / 2, inputRateHz, kind, step, filters: resolved(filters, path, index) };
+    return {
+      rateHz: stageRateHz,
+      nyquistHz: stageRateHz / 2,
+      inputRateHz,
+      kind,
+      step,
+      filters: resolved(filters, path, index),
+    };
   });
   const scale = levelScaleOf(channel);
   const { lowHz, highHz } = band.value;
@@ -28,6 +37,7 @@ export function chainOf(channel: Channel): Chain | undefined {
     channel,
     stages,
     after: resolved(plan.after, path, stages.length),
+    rateHz,
     ratesHz: path.ratesHz,
     sensor: path.sensor,
     scale,
@@ -38,6 +48,7 @@ export function chainOf(channel: Channel): Chain | undefined {
     levelUnit: scale.unit,
     path,
     rateReachable: exact !== undefined,
+    understood: path.responses.every((stage) => stage.every((response) => response !== undefined)),
   };
 }
 
@@ -46,7 +57,8 @@ function resolved(filters: readonly PlannedFilter[], path: SignalPath, stage: nu
   const found: StageFilter[] = [];
   for (let index = 0; index < filters.length; index++) {
     const response = path.responses[stage]![index];
-    if (response) found.push({ ...filters[index]!, response });
+    const { use, role } = filters[index]!;
+    if (response) found.push({ use, role, response });
   }
   return found;
 }

@@ -1,5 +1,5 @@
 import { quantityOfLevel, quantityOfSensor } from '../rig/levels.ts';
-import type { Channel, Level, Limit, Measured, Sensor } from '../rig/model.ts';
+import type { Channel, Level, Limit, Sensor } from '../rig/model.ts';
 import { decibels } from '../signal/decibel.ts';
 import { fullScalePeakV } from '../signal/levels.ts';
 import type { LevelUnit } from './model.ts';
@@ -15,9 +15,8 @@ export interface LevelScale {
   readonly fullScaleV: number | undefined;
   /** Volts per base unit at the sensor; `undefined` without a sensitivity. */
   readonly sensitivity: number | undefined;
-  readonly measures: Measured | undefined;
-  /** What the sensor measures, as far as it must agree for two levels to compare. */
-  readonly quantity: string | undefined;
+  /** Whose measured unit levels may be in. */
+  readonly sensor: Sensor | undefined;
   readonly foldLimit: number;
   /** True where the fold limit that was given can't be placed on the scale and the default stands in for it. */
   readonly foldLimitAssumed: boolean;
@@ -30,18 +29,22 @@ export type Entry = 'sensor' | 'wiring';
 
 /** The scale on which a channel's levels are compared. */
 export function levelScaleOf(channel: Channel): LevelScale {
+  const { sensor } = channel;
   const fullScaleV = fullScaleOf(channel);
-  const sensitivity = channel.sensor?.sensitivity?.value;
+  const sensitivity = sensor?.sensitivity?.value;
   const limit = channel.foldLimit?.value;
-  const measures = channel.sensor?.measures?.value;
-  const quantity = quantityOfSensor(channel.sensor);
-  const unit = unitFor(limit, fullScaleV, sensitivity, measures);
-  const base = { unit, fullScaleV, sensitivity, measures, quantity };
-  const given = limit && placedLimit(limit, base);
-  const isRelative = unit === 'dbfs' || unit === 'relative';
+  const unit = unitFor(limit, fullScaleV, sensitivity, sensor);
+  const given = limit && placedLimit(limit, { unit, fullScaleV, sensitivity, sensor });
   const foldLimit = given ?? DEFAULT_FOLD_LIMIT_DB;
-  const fullScaleDb = isRelative ? 0 : foldLimit - DEFAULT_FOLD_LIMIT_DB;
-  return { ...base, foldLimit, foldLimitAssumed: limit !== undefined && given === undefined, fullScaleDb };
+  return {
+    unit,
+    fullScaleV,
+    sensitivity,
+    sensor,
+    foldLimit,
+    foldLimitAssumed: limit !== undefined && given === undefined,
+    fullScaleDb: unit === 'dbfs' || unit === 'relative' ? 0 : foldLimit - DEFAULT_FOLD_LIMIT_DB,
+  };
 }
 
 /** Peak volts of a full-scale sinusoid at the digitizer's input. */
@@ -62,15 +65,15 @@ function unitFor(
   limit: Limit | undefined,
   fullScaleV: number | undefined,
   sensitivity: number | undefined,
-  measures: Measured | undefined,
+  sensor: Sensor | undefined,
 ): LevelUnit {
   if (fullScaleV !== undefined) return 'dbfs';
   if (limit === undefined || limit.kind === 'ratio' || limit.kind === 'dbfs') return 'relative';
-  if (limit.kind === 'volts' && measures !== 'voltage') return 'db-volt';
+  if (limit.kind === 'volts' && !measuresVolts(sensor)) return 'db-volt';
   return sensitivity === undefined ? 'db-measured' : 'db-volt';
 }
 
-type Placing = Pick<LevelScale, 'unit' | 'fullScaleV' | 'sensitivity' | 'measures' | 'quantity'>;
+type Placing = Pick<LevelScale, 'unit' | 'fullScaleV' | 'sensitivity' | 'sensor'>;
 
 function placedLimit(limit: Limit, scale: Placing): number | undefined {
   if (limit.kind !== 'ratio') return placedLevel(limit, scale);
@@ -86,10 +89,16 @@ function placedLimit(limit: Limit, scale: Placing): number | undefined {
 export function placedLevel(level: Level, scale: Placing, enters: Entry = 'wiring'): number | undefined {
   if (level.kind === 'dbfs') return scale.unit === 'dbfs' || scale.unit === 'relative' ? level.dbfs : undefined;
   if (level.kind === 'volts') {
-    const isMeasured = enters === 'sensor' && scale.measures === 'voltage';
+    const isMeasured = enters === 'sensor' && measuresVolts(scale.sensor);
     return isMeasured ? placedMeasured(level.peakV, scale) : placedVolts(level.peakV, scale);
   }
-  return quantityOfLevel(level) === scale.quantity ? placedMeasured(level.peak, scale) : undefined;
+  return isMeasuredHere(level, scale) ? placedMeasured(level.peak, scale) : undefined;
+}
+
+/** Whether a level is in what the sensor measures. The same unit is so without looking either of them up. */
+function isMeasuredHere(level: Extract<Level, { kind: 'measured' }>, { sensor }: Placing): boolean {
+  if (sensor?.unit !== undefined && level.unit === sensor.unit) return true;
+  return quantityOfLevel(level) === quantityOfSensor(sensor);
 }
 
 function placedMeasured(peak: number, scale: Placing): number | undefined {
@@ -105,5 +114,9 @@ function placedVolts(peakV: number, { unit, fullScaleV }: Placing): number | und
 /** Where a level enters where that is not said: in the measured unit at the sensor, otherwise behind it. */
 export function impliedEntry(level: Level | undefined, sensor: Sensor | undefined): Entry {
   if (level?.kind === 'measured') return 'sensor';
-  return level?.kind === 'volts' && sensor?.measures?.value === 'voltage' ? 'sensor' : 'wiring';
+  return level?.kind === 'volts' && measuresVolts(sensor) ? 'sensor' : 'wiring';
+}
+
+function measuresVolts(sensor: Sensor | undefined): boolean {
+  return sensor?.measures?.value === 'voltage';
 }

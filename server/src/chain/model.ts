@@ -35,6 +35,9 @@ export interface Chain {
   readonly stages: readonly Stage[];
   /** Digital filters after the last sampling (steps that do not decimate). */
   readonly after: readonly StageFilter[];
+  /** The channel's own rate, exact. */
+  readonly rateHz: number;
+  /** The rate of each stage. */
   readonly ratesHz: readonly number[];
   readonly sensor: Response;
   readonly scale: LevelScale;
@@ -49,6 +52,8 @@ export interface Chain {
   readonly path: SignalPath;
   /** False where the digitizer can't make the rate that is written: what is written is computed with all the same. */
   readonly rateReachable: boolean;
+  /** False where a filter on the way was not understood: what it does is not known, so little is said of what folds. */
+  readonly understood: boolean;
 }
 
 /** One piece of one component of a source, as it arrives in the record. */

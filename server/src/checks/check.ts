@@ -1,26 +1,38 @@
+import type { BandResponse } from '../chain/band-response.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import type { UndeclaredFold } from '../chain/undeclared.ts';
+import type { ChannelReading } from '../rig/channel-reading.ts';
+import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
 import type { Finding, Severity } from './finding.ts';
+import type { ChannelResult } from './judge.ts';
+import type { Shortfall } from './shortfall.ts';
 
 /** Everything a check of one channel may look at. */
 export interface ChannelView {
   readonly channel: Channel;
-  /** `undefined` where the channel is not complete enough to have one. */
-  readonly chain: Chain | undefined;
+  readonly chain: Chain;
   readonly arrivals: readonly Arrival[];
+  /** By stage: the worst that what no source declares may leave in the band. */
+  readonly undeclared: readonly (UndeclaredFold | undefined)[];
+  readonly bandResponse: BandResponse;
+  /** What is to be said of the filtering: at most one of three checks speaks. */
+  readonly shortfall: Shortfall | undefined;
 }
 
-/** What a check says; severity, channel and check name are filled in by the list that runs it. */
+/** What a check says; channel and check name are filled in by the list that runs it, and the severity where it is the usual one. */
 export type Said = Omit<
   Finding,
   'check' | 'severity' | 'channel' | 'thing' | 'stage' | 'about' | 'related' | 'figures' | 'excess'
 > &
-  Partial<Pick<Finding, 'stage' | 'about' | 'related' | 'figures' | 'excess'>>;
+  Partial<Pick<Finding, 'severity' | 'stage' | 'about' | 'related' | 'figures' | 'excess'>>;
 
-/** One check, as its file exports it: documentation, examples and the function. */
-export interface Check<Kind extends 'channel' | 'rig'> {
+/** What a check over many channels says. */
+export type SaidOfRig = Said & Partial<Pick<Finding, 'channel' | 'thing'>>;
+
+/** A check as its reference page shows it. */
+export interface CheckPage {
   readonly name: string;
-  readonly kind: Kind;
   readonly severity: Severity;
   /** One sentence: what it finds. */
   readonly finds: string;
@@ -30,16 +42,26 @@ export interface Check<Kind extends 'channel' | 'rig'> {
   readonly shows: string;
   readonly clean: string;
   readonly sources: readonly string[];
-  readonly run: Kind extends 'channel' ? (view: ChannelView) => readonly Said[] : (rig: RigView) => readonly Finding[];
 }
 
-/**
- * The small summary of a channel that checks over many channels fold: rates one digitizer must run together.
- */
+/** One check, as its file exports it: documentation, examples and the function. */
+export interface Check<Kind extends 'channel' | 'rig'> extends CheckPage {
+  readonly kind: Kind;
+  readonly run: Kind extends 'channel'
+    ? (view: ChannelView) => readonly Said[]
+    : (rig: RigView) => readonly SaidOfRig[];
+}
+
+/** A channel as read and judged: what checks over many channels fold. */
 export interface ChannelSummary {
-  readonly channel: Channel;
+  readonly reading: ChannelReading;
+  readonly result: ChannelResult;
 }
 
 export interface RigView {
+  readonly environment: Environment;
   readonly channels: readonly ChannelSummary[];
 }
+
+/** What nothing is said in. */
+export const SAYS_NOTHING: readonly never[] = [];

@@ -1,0 +1,71 @@
+import { formatHz } from '../quantity/write.ts';
+import { type ChannelView, type Check, SAYS_NOTHING } from './check.ts';
+import { filtersAhead, type Standing, standingOn, standingOnStage } from './standing.ts';
+import { differenceText, levelFigures, levelText, stageText } from './wording.ts';
+
+export const filterShort: Check<'channel'> = {
+  name: 'filter-short',
+  kind: 'channel',
+  severity: 'warning',
+  finds:
+    'The filter takes too little off what would fold into the band, so content that no source declares may be left there.',
+  why: 'Over all true frequencies that fold into the band, however high and at whatever stage, the least attenuation decides what may be left of what nobody has declared. Without a word on it, that is taken to be as high as full scale. State what is there with `undeclared`, from a measurement or a data sheet, or filter more. At the input of a modulator, whose rate is far above the band, this is only a hint until `undeclared` is stated.',
+  shows: `rig: Fan bearing
+digitizers:
+  front-end: { bits: 24, full-scale: ±10 V }
+filters:
+  card: { response: butterworth, order: 6, cutoff: 6 kHz }
+channels:
+  bearing:
+    digitizer: front-end
+    rate: 25.6 kHz
+    filter: card
+    band: 10 Hz .. 5 kHz
+`,
+  clean: `rig: Fan bearing
+digitizers:
+  front-end: { bits: 24, full-scale: ±10 V }
+filters:
+  # 20.6 kHz folds to 5 kHz, and there this filter takes off 64.3 dB.
+  card: { response: butterworth, order: 6, cutoff: 6 kHz }
+channels:
+  bearing:
+    digitizer: front-end
+    rate: 25.6 kHz
+    filter: card
+    band: 10 Hz .. 5 kHz
+    undeclared: -10 dBFS
+`,
+  sources: ['Oppenheim and Schafer, Discrete-Time Signal Processing, the chapter on sampling.'],
+  run(view) {
+    const { shortfall } = view;
+    if (shortfall?.kind !== 'filter-short') return SAYS_NOTHING;
+    const { chain } = view;
+    const { fold, isHint } = shortfall;
+    const { stage, level, atHz, attenuationDb, undeclaredDb } = fold;
+    const excess = level - chain.foldLimit;
+    const standing = standingFor(view, stage);
+    const where = stageText(chain, stage);
+    return [
+      {
+        ...(isHint ? { severity: 'hint' as const } : {}),
+        stage,
+        message: `What no source declares near ${formatHz(atHz)} may be recorded inside the band: ${attenuationText(attenuationDb)}, and of ${levelText(undeclaredDb, chain)} that leaves ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.${where === '' ? '' : ` It folds ${where}.`}`,
+        place: standing.place,
+        related: [...standing.related, ...filtersAhead(chain, stage)],
+        figures: { atHz, attenuationDb, ...levelFigures(level, chain), stage },
+        excess,
+      },
+    ];
+  },
+};
+
+function attenuationText(db: number): string {
+  return db < 0.05 ? 'nothing is taken off it' : `only ${differenceText(db)} is taken off it`;
+}
+
+/** At the channel's own filter ahead of the stage, or at the rate where it has none of its own. */
+function standingFor({ chain, channel }: ChannelView, stage: number): Standing {
+  const own = chain.stages[stage - 1]!.filters.find(({ role }) => role === 'channel' || role === 'step');
+  return own?.use ? standingOn(channel, own.use) : standingOnStage(chain, stage);
+}

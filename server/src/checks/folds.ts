@@ -1,0 +1,83 @@
+import { recordedAtHz } from '../chain/arrivals.ts';
+import type { Arrival, Chain } from '../chain/model.ts';
+import { formatHz } from '../quantity/write.ts';
+import type { ChannelView, Said } from './check.ts';
+import { SAYS_NOTHING } from './check.ts';
+import { filtersAhead, standingOnStage } from './standing.ts';
+import { differenceText, hzText, levelFigures, levelText, listText, stageText } from './wording.ts';
+
+/** What one source leaves in the band by folding at one stage: its worst line, and the others. */
+export interface Fold {
+  readonly worst: Arrival;
+  readonly others: readonly Arrival[];
+  /** From 1. */
+  readonly stage: number;
+}
+
+/** Everything that folds into the band above the limit, by source and stage; levels known or assumed, as asked. */
+export function foldsOf({ arrivals, chain }: ChannelView, levelKnown: boolean): readonly Fold[] {
+  let folds: Fold[] | undefined;
+  // A filter that was not understood may well take off what seems to be left.
+  if (!chain.understood) return SAYS_NOTHING;
+  for (const arrival of arrivals) {
+    if (!arrival.overLimit || arrival.levelKnown !== levelKnown) continue;
+    folds ??= [];
+    addTo(folds, arrival);
+  }
+  return folds ?? SAYS_NOTHING;
+}
+
+/** Whether anything that is declared, level and all, folds into the band above the limit. */
+export function hasFoldInBand(view: Pick<ChannelView, 'chain' | 'arrivals'>): boolean {
+  return view.chain.understood && view.arrivals.some((arrival) => arrival.overLimit && arrival.levelKnown);
+}
+
+function addTo(folds: Fold[], arrival: Arrival): void {
+  const stage = arrival.foldsAtStage ?? 1;
+  const index = folds.findIndex(({ worst, stage: other }) => worst.source === arrival.source && other === stage);
+  const known = folds[index];
+  if (!known) {
+    folds.push({ worst: arrival, others: [], stage });
+    return;
+  }
+  const { worst, others } = known;
+  folds[index] =
+    arrival.level > worst.level
+      ? { worst: arrival, others: [...others, worst], stage }
+      : { worst, others: [...others, arrival], stage };
+}
+
+/** A fold as a finding: `opening` is said of its worst line, the figures follow. */
+export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): Said {
+  const { worst, others, stage } = fold;
+  const { source, level } = worst;
+  const recordedHz = recordedAtHz(worst);
+  const excess = level - chain.foldLimit;
+  const name = `\`${source.name}\``;
+  const truth = hzText(worst.trueLowHz, worst.trueHighHz);
+  const where = stageText(chain, stage);
+  const sentences = [
+    `${name} will be recorded at ${formatHz(recordedHz)}, inside the band, though its ${worst.component} is at ${truth}.`,
+    `There it ${verb} ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
+  ];
+  if (where !== '') sentences.push(`It folds ${where}.`);
+  if (others.length > 0) sentences.push(`With it: ${listText(others.map(lineText))}.`);
+  const standing = standingOnStage(chain, stage);
+  return {
+    about: source.name,
+    stage,
+    message: sentences.join(' '),
+    place: standing.place,
+    related: [
+      ...standing.related,
+      { place: source.place, message: `${name} is declared here.` },
+      ...filtersAhead(chain, stage),
+    ],
+    figures: { recordedHz, ...levelFigures(level, chain), stage },
+    excess,
+  };
+}
+
+function lineText({ component, recordedLowHz, recordedHighHz }: Arrival): string {
+  return `${component} at ${hzText(recordedLowHz, recordedHighHz)}`;
+}

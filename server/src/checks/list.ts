@@ -1,0 +1,50 @@
+import { bandDroop } from './band-droop.ts';
+import { bandOverNyquist } from './band-over-nyquist.ts';
+import type { Check, CheckPage } from './check.ts';
+import { clips } from './clips.ts';
+import { DOCUMENT_PAGES } from './document/pages.ts';
+import { filterShort } from './filter-short.ts';
+import { foldInBand } from './fold-in-band.ts';
+import { foldUnlevelled } from './fold-unlevelled.ts';
+import { headroomThin } from './headroom-thin.ts';
+import { levelUnplaced } from './level-unplaced.ts';
+import { noFilter } from './no-filter.ts';
+import { onNyquist } from './on-nyquist.ts';
+import { rangeWasted } from './range-wasted.ts';
+import { rateOverConverter } from './rate-over-converter.ts';
+import { rateUnreachable } from './rate-unreachable.ts';
+import { ratesConflict } from './rates-conflict.ts';
+import { resonanceInBand } from './resonance-in-band.ts';
+import { stepWithoutFilter } from './step-without-filter.ts';
+import { thinMargin } from './thin-margin.ts';
+
+export type { CheckPage } from './check.ts';
+
+/** The checks of one channel, in the order in which a reference shows them. */
+export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
+  rateUnreachable,
+  rateOverConverter,
+  bandOverNyquist,
+  thinMargin,
+  foldInBand,
+  foldUnlevelled,
+  filterShort,
+  noFilter,
+  stepWithoutFilter,
+  onNyquist,
+  bandDroop,
+  clips,
+  headroomThin,
+  rangeWasted,
+  resonanceInBand,
+  levelUnplaced,
+];
+
+/** The checks over many channels. */
+export const RIG_CHECKS: readonly Check<'rig'>[] = [ratesConflict];
+
+/** Every check, as its reference page shows it. */
+export const ALL_CHECKS: readonly CheckPage[] = [...RIG_CHECKS, ...CHANNEL_CHECKS, ...DOCUMENT_PAGES];
+
+/** What may stand in `checks`. */
+export const CHECK_NAMES: readonly string[] = ALL_CHECKS.map(({ name }) => name);

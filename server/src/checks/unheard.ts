@@ -1,0 +1,32 @@
+import type { Source } from '../rig/model.ts';
+import type { RigView, SaidOfRig } from './check.ts';
+import { levelUnplaced } from './level-unplaced.ts';
+
+/**
+ * One hint for each source that channels leave out of `hears: all`, because its level is in a quantity that they don't
+ * measure: told at the source, as `level-unplaced`, with the number of those channels.
+ */
+export function unheardSources({ channels }: RigView): readonly SaidOfRig[] {
+  const counts = new Map<Source, number>();
+  for (const { result } of channels) {
+    for (const source of result.channel.unheard) counts.set(source, (counts.get(source) ?? 0) + 1);
+  }
+  return [...counts].map(([source, count]) => saidOf(source, count));
+}
+
+function saidOf(source: Source, count: number): SaidOfRig {
+  const level = source.levels[0]?.value;
+  const unit = level?.kind === 'measured' ? level.unit : 'another unit';
+  const who = count === 1 ? '1 channel does not hear' : `${count} channels do not hear`;
+  return {
+    severity: 'hint',
+    thing: `sources/${source.name}`,
+    message: `${who} \`${source.name}\`, because its level is in ${unit}, which they do not measure. One that hears it all the same has to name it in \`hears\`.`,
+    place: source.place,
+    figures: { channels: count },
+    excess: count,
+  };
+}
+
+/** The check that this is told as. */
+export const UNHEARD_IS = levelUnplaced.name;

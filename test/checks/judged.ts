@@ -1,0 +1,42 @@
+import type { Finding } from '../../server/src/checks/finding.ts';
+import { type Guard, judgeChannel, judgeRig } from '../../server/src/checks/judge.ts';
+import { CHECK_NAMES } from '../../server/src/checks/list.ts';
+import { readChannel } from '../../server/src/rig/channel-reading.ts';
+import { readEnvironment } from '../../server/src/rig/environment.ts';
+import { readSnapshot } from '../../server/src/rig/snapshot.ts';
+
+/** In the tests a check that throws fails the test. */
+export const NO_GUARD: Guard = (_name, run) => run();
+
+/** Every finding of a rig file's text, those of the rig first, then channel by channel. */
+export function findingsOf(text: string): readonly Finding[] {
+  const environment = readEnvironment(readSnapshot(text), CHECK_NAMES);
+  const channels = environment.channelEntries.map((entry) => {
+    const reading = readChannel(entry, environment);
+    return { reading, result: judgeChannel(reading, environment.severities, NO_GUARD) };
+  });
+  return [...judgeRig(environment, channels, NO_GUARD), ...channels.flatMap(({ result }) => result.findings)];
+}
+
+/** The findings of one check. */
+export function found(text: string, check: string): readonly Finding[] {
+  return findingsOf(text).filter((finding) => finding.check === check);
+}
+
+/** The one finding of a check. */
+export function only(text: string, check: string): Finding {
+  const findings = found(text, check);
+  if (findings.length !== 1) throw new Error(`${check} is said ${findings.length} times, not once.`);
+  return findings[0]!;
+}
+
+/** The text that a finding stands under. */
+export function underlined(finding: Pick<Finding, 'place'>): string {
+  const { entry, start, end } = finding.place;
+  return entry.text.slice(start, end);
+}
+
+/** `check` or `check about`, for comparing whole lists. */
+export function names(findings: readonly Finding[]): readonly string[] {
+  return findings.map(({ check, about }) => (about === undefined ? check : `${check} ${about}`));
+}
