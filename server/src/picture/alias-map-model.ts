@@ -1,0 +1,154 @@
+import type { Arrival, Chain } from '../chain/model.ts';
+import { formatHz } from '../quantity/write.ts';
+import type { FoldLine, FoldPoint } from './fold-line.ts';
+import { foldLineOf, pointAt } from './fold-line.ts';
+import type { Stretch } from './stretches.ts';
+import { stretchesOf } from './stretches.ts';
+
+/** What an arrival is to the record; a picture tells it by shape, and repeats it by colour. */
+export type MarkKind = 'native' | 'harmless' | 'spoils';
+
+/** An arrival as a mark on the fold line and a line of the record's spectrum. */
+export interface Mark {
+  readonly kind: MarkKind;
+  readonly label: string;
+  /** Ends of a range, the same point twice for a single frequency. */
+  readonly from: FoldPoint;
+  readonly to: FoldPoint;
+  readonly recordedLowHz: number;
+  readonly recordedHighHz: number;
+  readonly level: number;
+  readonly inBand: boolean;
+  /** Places in the picture go to the heaviest first. */
+  readonly weight: number;
+}
+
+/** An alias map, ready to be drawn in any way: frequencies in Hz, levels in decibels on the chain's scale. */
+export interface AliasMap {
+  readonly title: string;
+  /** The same in words, for those who do not see the picture. */
+  readonly description: string;
+  readonly recordRateHz: number;
+  readonly nyquistHz: number;
+  readonly bandLowHz: number;
+  readonly bandHighHz: number;
+  readonly stretches: readonly (Stretch & { readonly line: FoldLine })[];
+  readonly marks: readonly Mark[];
+  readonly foldLimit: number;
+  readonly levelUnit: string;
+  /** The attenuation at which the fold line has faded away: what is quieter than this by the filters cannot spoil the band. */
+  readonly fadedAtDb: number;
+  readonly levelLow: number;
+  readonly levelHigh: number;
+  /** Marks that were left out because there were too many. */
+  readonly leftOut: number;
+}
+
+/** More marks than this make a picture that nobody reads; the lightest are left out and counted. */
+const MOST_MARKS = 160;
+const LEAST_FADE_DB = 40;
+
+/** What the picture of a channel's alias map shows. */
+export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
+  const last = chain.stages.at(-1)!;
+  const marks = arrivals
+    .filter(({ level }) => Number.isFinite(level))
+    .map((arrival) => markOf(arrival, chain))
+    .sort((a, b) => b.weight - a.weight);
+  const shown = marks.slice(0, MOST_MARKS);
+  const levels = shown.map(({ level }) => level);
+  const limit = Number.isFinite(chain.foldLimit) ? chain.foldLimit : 0;
+  const levelHigh = 10 * Math.ceil(Math.max(chain.levelUnit === 'dbfs' ? 0 : limit + 40, ...levels) / 10);
+  const levelLow = 10 * Math.floor((Math.min(limit, ...levels.filter((level) => level > limit - 60)) - 15) / 10);
+  return {
+    title: `Alias map of ${chain.channel.name}`,
+    description: describe(chain, arrivals),
+    recordRateHz: last.rateHz,
+    nyquistHz: last.nyquistHz,
+    bandLowHz: chain.bandLowHz,
+    bandHighHz: chain.bandHighHz,
+    stretches: stretchesOf(chain, arrivals).map((stretch) => ({
+      ...stretch,
+      line: foldLineOf(chain, stretch.lowHz, stretch.highHz),
+    })),
+    marks: shown,
+    foldLimit: limit,
+    levelUnit: unitOf(chain),
+    fadedAtDb: Math.max(LEAST_FADE_DB, chain.levelUnit === 'dbfs' || chain.levelUnit === 'relative' ? -limit : 80),
+    levelLow,
+    levelHigh,
+    leftOut: marks.length - shown.length,
+  };
+}
+
+function markOf(arrival: Arrival, chain: Chain): Mark {
+  const kind: MarkKind = arrival.overLimit ? 'spoils' : arrival.folded ? 'harmless' : 'native';
+  const rank = kind === 'spoils' ? 3_000 : arrival.inBand ? (kind === 'native' ? 2_000 : 1_000) : 0;
+  return {
+    kind,
+    label: labelOf(arrival),
+    from: pointAt(chain, arrival.trueLowHz),
+    to: pointAt(chain, arrival.trueHighHz),
+    recordedLowHz: arrival.recordedLowHz,
+    recordedHighHz: arrival.recordedHighHz,
+    level: arrival.level,
+    inBand: arrival.inBand,
+    weight: rank + Math.max(-900, Math.min(900, arrival.level)),
+  };
+}
+
+/** A source's name, with the component where that is not its plain self. */
+function labelOf({ source, component }: Arrival): string {
+  return component === 'fundamental' || component === 'carrier'
+    ? source.name
+    : `${source.name} ${shortComponent(component)}`;
+}
+
+function shortComponent(component: string): string {
+  return component
+    .replace('harmonic ', '×')
+    .replace('carrier x', '×')
+    .replace('carrier ', '')
+    .replace('sideband ', 'sb ');
+}
+
+/** How a chain's levels are called. */
+export function unitOf(chain: Chain): string {
+  switch (chain.levelUnit) {
+    case 'dbfs':
+      return 'dBFS';
+    case 'db-volt':
+      return 'dB re 1 V';
+    case 'db-measured':
+      return 'dB re 1 unit';
+    case 'relative':
+      return 'dB';
+  }
+}
+
+function describe(chain: Chain, arrivals: readonly Arrival[]): string {
+  const unit = unitOf(chain);
+  const spoiling = arrivals.filter(({ overLimit }) => overLimit).sort((a, b) => b.level - a.level);
+  const folded = arrivals.filter((arrival) => arrival.folded && !arrival.overLimit).length;
+  const native = arrivals.filter((arrival) => !arrival.folded).length;
+  const record = `The record of ${chain.channel.name} is sampled at ${formatHz(chain.stages.at(-1)!.rateHz)}; its band is ${formatHz(chain.bandLowHz)} to ${formatHz(chain.bandHighHz)}.`;
+  const told = spoiling
+    .slice(0, 3)
+    .map(
+      (arrival) =>
+        `${arrival.source.name} ${arrival.component} at ${formatHz(arrival.atHz)} folds into the band at ${spanOf(arrival)}, ${arrival.level.toFixed(1)} ${unit}, ${(arrival.level - chain.foldLimit).toFixed(1)} dB over the limit.`,
+    );
+  const more = spoiling.length > 3 ? [`${spoiling.length - 3} more fold into the band over the limit.`] : [];
+  const rest = `${count(folded, 'arrival folds', 'arrivals fold')} without harm, ${count(native, 'arrives', 'arrive')} unfolded.`;
+  return [record, ...told, ...more, rest].join(' ');
+}
+
+function spanOf({ recordedLowHz, recordedHighHz }: Arrival): string {
+  return recordedLowHz === recordedHighHz
+    ? formatHz(recordedLowHz)
+    : `${formatHz(recordedLowHz)} to ${formatHz(recordedHighHz)}`;
+}
+
+function count(number: number, one: string, many: string): string {
+  return `${number} ${number === 1 ? one : many}`;
+}
