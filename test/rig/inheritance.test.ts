@@ -167,3 +167,34 @@ describe('anchors, aliases and merge keys', () => {
     expect(saidOf(rig)).toEqual(['wrong-kind: clocks']);
   });
 });
+
+describe('much of a bad thing', () => {
+  it('keeps a suggestion for a misspelled name among thousands, in short time', () => {
+    const sensors = Array.from({ length: 5_000 }, (_, index) => `  gauge-${index}: { sensitivity: 1 V/N }\n`);
+    const channels = Array.from(
+      { length: 5_000 },
+      (_, index) => `  c${index}: { rate: 1 kHz, band: 1..2 Hz, sensor: guage-${index} }\n`,
+    );
+    const started = performance.now();
+    const rig = readRig(`rig: R\nsensors:\n${sensors.join('')}channels:\n${channels.join('')}`);
+    const named = rig.problems.filter(({ problem }) => problem.name === 'unknown-name');
+    expect(named).toHaveLength(5_000);
+    expect(named[4_321]!.problem.cure).toEqual({ kind: 'replace', text: 'gauge-4321' });
+    expect(performance.now() - started).toBeLessThan(20_000);
+  });
+
+  it('stops saying more of one channel than anybody would read', () => {
+    const keys = Array.from({ length: 5_000 }, (_, index) => `    key-${index}: 1\n`).join('');
+    const rig = readRig(`rig: R\nchannels:\n  a:\n${keys}  b: { rate: 1 kHz, band: 1..2 Hz }\n`);
+    expect(rig.readings[0]!.problems.length).toBeLessThanOrEqual(102);
+    expect(rig.readings[1]!.channel.complete).toBe(true);
+  });
+
+  it('keeps merged maps to a size', () => {
+    const keys = Array.from({ length: 3_000 }, (_, index) => `k${index}: 1`).join(', ');
+    const many = Array.from({ length: 300 }, (_, index) => `  c${index}: { <<: *a, rate: 1 kHz, band: 1..2 Hz }\n`);
+    const rig = readRig(`rig: R\nchannels:\n  a: &a { ${keys} }\n${many.join('')}`);
+    expect(rig.problems.some(({ problem }) => problem.name === 'too-much')).toBe(true);
+    expect(rig.readings.at(-1)!.channel.complete).toBe(true);
+  });
+});

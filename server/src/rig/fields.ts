@@ -4,7 +4,7 @@ import { MOST_ALIAS_EXPANSIONS } from './limits.ts';
 import { anchoredMap, followAlias, inheritance, MERGE_KEY, type MergedMap, mergedMap } from './merging.ts';
 import type { Inheritance } from './model.ts';
 import type { Place } from './place.ts';
-import { placedProblem, type Reader, report } from './reader.ts';
+import { hasSaidEnough, placedProblem, type Reader, report } from './reader.ts';
 import type { MapNode, ScalarNode, TreeNode } from './tree.ts';
 import { rowsOf, UNCOMPUTED_CONTEXTS } from './vocabulary.ts';
 import type { ContextName, KeyRow, ValueKind } from './vocabulary-kinds.ts';
@@ -196,6 +196,7 @@ export function reportUnknownKey(
   path: string,
   known: readonly string[],
 ): void {
+  if (hasSaidEnough(reader, entry)) return;
   const near = nearest(key.text, known);
   report(reader, {
     name: 'unknown-key',

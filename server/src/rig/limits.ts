@@ -12,6 +12,16 @@ export const MOST_DEPTH = 64;
 /** Times that aliases and merge keys are followed in one file. */
 export const MOST_ALIAS_EXPANSIONS = 10_000;
 
+/** Pairs of one map that is merged into another, or into many. */
+export const MOST_MERGED_PAIRS = 1_000;
+
+/** Names that a misspelled one is compared with one by one. */
+export const MOST_COMPARED_NAMES = 250;
+
+/** Problems noted of one entry's own text, and of text that it inherits. */
+export const MOST_ENTRY_PROBLEMS = 100;
+export const MOST_INHERITED_PROBLEMS = 20;
+
 /** Harmonics of one source. */
 export const MOST_HARMONICS = 1_000;
 

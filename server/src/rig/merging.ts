@@ -1,7 +1,13 @@
 import { nearest } from '../quantity/spelling.ts';
 import { type AnchorTable, type AnchorTarget, findAnchor, standsInside } from './anchors.ts';
 import type { Entry } from './entry.ts';
-import { MOST_ALIAS_EXPANSIONS, MOST_DEPTH } from './limits.ts';
+import {
+  MOST_ALIAS_EXPANSIONS,
+  MOST_COMPARED_NAMES,
+  MOST_DEPTH,
+  MOST_INHERITED_PROBLEMS,
+  MOST_MERGED_PAIRS,
+} from './limits.ts';
 import type { Inheritance } from './model.ts';
 import type { Place } from './place.ts';
 import type { Report } from './reader.ts';
@@ -42,7 +48,7 @@ export function followAlias(alias: AliasNode, entry: Entry, table: AnchorTable, 
   const target = findAnchor(table, alias, entry, epoch);
   const place: Place = { entry, start: alias.start, end: alias.end };
   if (!target || target.node.kind === 'alias') {
-    const near = nearest(alias.name, [...table.byName.keys()]);
+    const near = table.byName.size <= MOST_COMPARED_NAMES ? nearest(alias.name, table.byName.keys()) : undefined;
     return {
       problem: {
         name: 'unknown-name',
@@ -74,11 +80,21 @@ export function followAlias(alias: AliasNode, entry: Entry, table: AnchorTable, 
  * means depends on the table alone. This keeps nested aliases from multiplying.
  */
 export function mergedMap(node: MapNode, entry: Entry, table: AnchorTable, epoch: number, depth = 0): MergedMap {
-  const merging: Merging = { table, epoch, entry, depth, pairs: [], seen: new Set(), problems: [], expansions: 0 };
+  const merging: Merging = {
+    table,
+    epoch,
+    entry,
+    depth,
+    pairs: [],
+    seen: new Set(),
+    merged: new Set(),
+    problems: [],
+    expansions: 0,
+  };
   const merges: TreeNode[] = [];
   for (const { key, value } of node.pairs) {
     if (key.text === MERGE_KEY && key.style === 'plain') merges.push(value);
-    else addOwnPair(merging, key, value);
+    else if (hasRoom(merging, key, merging.entry)) addOwnPair(merging, key, value);
   }
   for (const merge of merges) addMerge(merging, merge, true);
   return merging;
@@ -92,8 +108,23 @@ interface Merging {
   readonly depth: number;
   readonly pairs: MergedPair[];
   readonly seen: Set<string>;
+  /** Anchored maps that have been merged in. */
+  readonly merged: Set<TreeNode>;
   readonly problems: Report[];
   expansions: number;
+}
+
+/** Whether one more pair may be kept: what many merge must not grow with every merge. */
+function hasRoom(merging: Merging, node: TreeNode, entry: Entry): boolean {
+  if (merging.pairs.length < MOST_MERGED_PAIRS) return true;
+  if (merging.problems.some(({ name }) => name === 'too-much')) return false;
+  merging.problems.push({
+    name: 'too-much',
+    place: { entry, start: node.start, end: node.end },
+    message: `More than ${MOST_MERGED_PAIRS} keys would come together here; the rest is not read.`,
+    about: MERGE_KEY,
+  });
+  return false;
 }
 
 function addOwnPair(merging: Merging, key: ScalarNode, value: TreeNode): void {
@@ -115,20 +146,33 @@ function addMerge(merging: Merging, merge: TreeNode, listAllowed: boolean): void
   if (merge.kind === 'alias') {
     const target = follow(merging, merge);
     if (!target) return;
-    if (target.node.kind !== 'map') addWrongMerge(merging, merge);
-    else addMerged(merging, anchoredMap(target.node, target.entry, merging.table, merging.depth + 1));
+    if (target.node.kind === 'map') addAnchored(merging, target.node, target.entry);
+    else addWrongMerge(merging, merge);
   } else if (merge.kind === 'map') {
-    addMerged(merging, mergedMap(merge, merging.entry, merging.table, merging.epoch, merging.depth));
+    const merged = mergedMap(merge, merging.entry, merging.table, merging.epoch, merging.depth);
+    merging.expansions = Math.min(merging.expansions + merged.expansions, MOST_ALIAS_EXPANSIONS + 1);
+    addMerged(merging, merged);
   } else if (merge.kind === 'list' && listAllowed) {
     for (const item of merge.items) addMerge(merging, item, false);
   } else addWrongMerge(merging, merge);
 }
 
-function addMerged(merging: Merging, merged: MergedMap): void {
+function addAnchored(merging: Merging, node: MapNode, entry: Entry): void {
+  const merged = anchoredMap(node, entry, merging.table, merging.depth + 1);
   merging.expansions = Math.min(merging.expansions + merged.expansions, MOST_ALIAS_EXPANSIONS + 1);
-  for (const problem of merged.problems) merging.problems.push(problem);
+  // The same map once more adds nothing but work.
+  if (merging.merged.has(node)) return;
+  merging.merged.add(node);
+  addMerged(merging, merged);
+}
+
+function addMerged(merging: Merging, merged: MergedMap): void {
+  for (const problem of merged.problems) {
+    if (merging.problems.length < MOST_INHERITED_PROBLEMS) merging.problems.push(problem);
+  }
   for (const pair of merged.pairs) {
     if (merging.seen.has(pair.key.text)) continue;
+    if (!hasRoom(merging, pair.key, pair.keyEntry)) return;
     merging.seen.add(pair.key.text);
     const inherited = pair.inherited ?? inheritance('merge', pair.entry, pair.value);
     merging.pairs.push(pair.inherited ? pair : { ...pair, inherited });

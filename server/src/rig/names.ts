@@ -1,7 +1,7 @@
-import { nearest } from '../quantity/spelling.ts';
 import { clipped, type Field, innerPlace } from './fields.ts';
+import { nearestName } from './nearest-name.ts';
 import type { Place } from './place.ts';
-import { mention, type Reader, report, type Things } from './reader.ts';
+import { hasSaidEnough, mention, type Reader, report, type Things } from './reader.ts';
 import type { ScalarNode } from './tree.ts';
 import { scalarOf } from './values.ts';
 import type { ThingKind } from './vocabulary-kinds.ts';
@@ -57,8 +57,8 @@ function noteMissing(reader: Reader, name: string, place: Place, kind: Exclude<T
   const { names: all, usesOthers } = reader.scope;
   const known = all[kind];
   reader.lookups.push({ kind, names: known, usesOthers });
-  if (usesOthers || known.set.has(name)) return;
-  const near = nearest(name, known.names);
+  if (usesOthers || known.set.has(name) || hasSaidEnough(reader, place.entry)) return;
+  const near = nearestName(known, name);
   const what = KIND_NAMES[kind];
   const message = near
     ? `There is no ${what} \`${clipped(name)}\`; \`${near}\` is the nearest.`

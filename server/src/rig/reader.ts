@@ -1,5 +1,6 @@
 import type { AnchorTable } from './anchors.ts';
 import type { Entry } from './entry.ts';
+import { MOST_ENTRY_PROBLEMS, MOST_INHERITED_PROBLEMS } from './limits.ts';
 import type { Clock, Digitizer, Filter, HeardSource, Sensor, Source } from './model.ts';
 import type { Place } from './place.ts';
 import type { Cure, PlacedProblem, ProblemName } from './problem.ts';
@@ -130,6 +131,7 @@ export function placedProblem({ name, place, message, about, cure, related }: Re
  * Two problems of one name about the same thing are told apart by a number, so that each has an identity of its own.
  */
 export function report(reader: Reader, said: Report): void {
+  if (hasSaidEnough(reader, said.place.entry)) return;
   const problems = said.place.entry === reader.entry ? reader.own : reader.origin;
   let about = said.about;
   let alike = 1;
@@ -141,12 +143,14 @@ export function report(reader: Reader, said: Report): void {
     if (samePlace && (said.name !== 'missing-key' || problem.about === said.about)) return;
     if (problem.about === about) about = `${said.about ?? ''} ${++alike}`;
   }
-  if (problems.length >= MOST_PROBLEMS) return;
   problems.push(placedProblem(about === said.about || about === undefined ? said : { ...said, about }));
 }
 
-/** Of one entry, as many as anybody would read; it also keeps the search for equal ones short. */
-const MOST_PROBLEMS = 100;
+/** True where so much has been said of a text already that more would help nobody. */
+export function hasSaidEnough(reader: Reader, entry: Entry): boolean {
+  if (entry === reader.entry) return reader.own.length >= MOST_ENTRY_PROBLEMS;
+  return reader.origin.length >= MOST_INHERITED_PROBLEMS;
+}
 
 /** Notes that a thing is named in the entry's own text. */
 export function mention(reader: Reader, kind: ThingKind, name: string, place: Place): void {
