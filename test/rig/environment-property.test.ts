@@ -209,8 +209,9 @@ describe('reading after edits', () => {
 });
 
 describe('reading unfinished text', () => {
-  it.each(TEXTS)('never throws, whatever prefix (%s)', (_, rig) => {
-    for (let length = 0; length <= rig.length; length++) {
+  it.each(TEXTS)('never throws, whatever is there of it (%s)', (_, rig) => {
+    const stride = Math.ceil(rig.length / (8 * runs(1_000)));
+    for (let length = 0; length <= rig.length; length += stride) {
       const state = following(readSnapshot(rig.slice(0, length)), undefined);
       expect(rigProblems(state.environment, state.readings)).toBeInstanceOf(Array);
     }
