@@ -45,23 +45,27 @@ const SECTIONS: ReadonlySet<string> = new Set(NAMED_SECTIONS);
 const NO_KEY = new Set(['{', '['].map((character) => character.charCodeAt(0)));
 const CLOSERS = new Set(['}', ']'].map((character) => character.charCodeAt(0)));
 
-/** Whether the document is written with brackets: its first character that says anything is `{` or `[`. */
-export function isFlowStyle(text: string): boolean {
-  for (let at = 0; at < text.length; ) {
+/** How the document is written, by the first character that says anything; `undefined` where none does. */
+export function styleOf(text: string): 'block' | 'flow' | undefined {
+  let sawDocumentStart = false;
+  for (let at = 0; at < text.length; at = lineEnd(text, at)) {
     const end = lineEnd(text, at);
     const first = firstOfLine(text, at, end, at === 0);
-    const code = first < end ? text.charCodeAt(first) : LINE_FEED;
-    if (NO_KEY.has(code)) return true;
-    const atMargin = first === at || (at === 0 && first === 1 && text.charCodeAt(0) === BYTE_ORDER_MARK);
-    if (atMargin && isMarker(text, first, '---')) {
-      const rest = text.slice(first + 3, end).trimStart();
-      if (rest !== '' && !rest.startsWith('#')) return NO_KEY.has(rest.charCodeAt(0));
-    } else if (!isBlankOrComment(text, first, end) && !(atMargin && code === PERCENT)) {
-      return false;
+    if (isBlankOrComment(text, first, end)) continue;
+    if (isPreludeLine(text, at, first, end, sawDocumentStart)) {
+      sawDocumentStart ||= text.charCodeAt(first) === DASH;
+      continue;
     }
-    at = end;
+    const isMarked = !sawDocumentStart && isMarker(text, first, '---');
+    const code = isMarked
+      ? text
+          .slice(first + 3, end)
+          .trimStart()
+          .charCodeAt(0)
+      : text.charCodeAt(first);
+    return NO_KEY.has(code) ? 'flow' : 'block';
   }
-  return false;
+  return undefined;
 }
 
 /**
@@ -147,8 +151,7 @@ class Splitter {
     const isItem = isListItem(text, first, end);
     const code = text.charCodeAt(first);
     if (this.#kind === undefined) {
-      this.#open('entry', at, this.#before);
-      if (this.#indent === 0) this.#indent = indent;
+      this.#takeFirst(at, indent);
       return;
     }
     switch (this.#kind) {
@@ -170,6 +173,16 @@ class Splitter {
         if (indent > this.#indent || isItem || CLOSERS.has(code)) return;
         this.#openEntry(at, { section: this.#section, indent: this.#indent });
     }
+  }
+
+  /** The first line of a text from the middle of a document, of which the state says what it is. */
+  #takeFirst(at: number, indent: number): void {
+    if (this.#section === undefined) {
+      this.#open('whole', at, TOP);
+      return;
+    }
+    this.#openEntry(at, this.#before);
+    if (this.#indent === 0) this.#indent = indent;
   }
 
   #openEntry(at: number, before: SplitState): void {

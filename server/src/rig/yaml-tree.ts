@@ -1,5 +1,6 @@
 import type { Problem } from './problem.ts';
 import type { TreeNode } from './tree.ts';
+import { readDirectly } from './yaml-tree-direct.ts';
 import { composeYaml } from './yaml-tree-library.ts';
 
 /** What one text says, and what is wrong with its YAML; offsets count from the start of the text. */
@@ -10,5 +11,6 @@ export interface YamlReading {
 
 /** Reads one YAML document. Never throws: what can't be read is an empty node and a problem. */
 export function readYaml(text: string): YamlReading {
-  return composeYaml(text);
+  const root = readDirectly(text);
+  return root ? { root, problems: [] } : composeYaml(text);
 }
