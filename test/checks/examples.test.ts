@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { ALL_CHECKS, CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { identityOf } from '../../server/src/checks/finding.ts';
+import { ALL_CHECKS, CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { findingsOf, found, names } from './judged.ts';
 
 /** What a document check's example can't do without: a finding of its own that leaves nothing else to say. */

@@ -3,6 +3,7 @@ import { type FoldedPiece, foldThrough } from '../signal/folding.ts';
 import { type Component, componentsOf } from './components.ts';
 import type { LevelScale } from './level-scale.ts';
 import type { Arrival, Chain } from './model.ts';
+import { onNyquistAtStage } from './on-nyquist.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
 import type { SignalPath } from './signal-path.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
@@ -20,6 +21,7 @@ export const LEVEL_ROUNDING_DB = 1e-9;
 /** One piece of a component, and how much is left of it at most. */
 interface TracedPiece {
   readonly component: Component;
+  readonly onNyquistAtStage: number | null;
   readonly piece: FoldedPiece;
   readonly strongest: Strongest;
 }
@@ -100,17 +102,19 @@ function tracedSource(path: SignalPath, source: Source, entersAtSensor: boolean)
   }
   const components = componentsOf(source);
   const limit = Math.min(MOST_PIECES_OF_COMPONENT, Math.ceil(MOST_PIECES_OF_SOURCE / components.length));
-  const pieces = components.flatMap((component) =>
-    foldThrough(component.lowHz, component.highHz, path.ratesHz, limit).map((piece) => {
-      return { component, piece, strongest: strongestOf(path, piece, entersAtSensor) };
-    }),
-  );
+  const pieces = components.flatMap((component) => {
+    const onMultiple = onNyquistAtStage(component, path);
+    return foldThrough(component.lowHz, component.highHz, path.ratesHz, limit).map((piece): TracedPiece => {
+      const strongest = strongestOf(path, piece, entersAtSensor);
+      return { component, onNyquistAtStage: onMultiple, piece, strongest };
+    });
+  });
   return note(path, TRACED, { source, entersAtSensor, pieces });
 }
 
 function arrivalOf(
   source: Source,
-  { component, piece, strongest }: TracedPiece,
+  { component, onNyquistAtStage, piece, strongest }: TracedPiece,
   entersAtSensor: boolean,
   componentDb: number,
   levelKnown: boolean,
@@ -143,6 +147,7 @@ function arrivalOf(
     overLimit: folded && inBand && level > chain.foldLimit + LEVEL_ROUNDING_DB,
     levelKnown,
     nominalHz: component.nominalHz,
+    onNyquistAtStage,
   };
 }
 

@@ -84,4 +84,9 @@ export interface Arrival {
   readonly levelKnown: boolean;
   /** Where it stands without its source's tolerance; `undefined` where it is a range all the same. */
   readonly nominalHz: number | undefined;
+  /**
+   * The first stage, from 1, at which it may stand on a multiple of half the rate, where its phase decides how high it
+   * is recorded; `null` where it can't, or sweeps past.
+   */
+  readonly onNyquistAtStage: number | null;
 }

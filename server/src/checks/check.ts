@@ -5,6 +5,7 @@ import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
 import type { Finding, Severity } from './finding.ts';
+import type { InputRange } from './input-range.ts';
 import type { ChannelResult } from './judge.ts';
 import type { Shortfall } from './shortfall.ts';
 
@@ -18,6 +19,8 @@ export interface ChannelView {
   readonly bandResponse: BandResponse;
   /** What is to be said of the filtering: at most one of three checks speaks. */
   readonly shortfall: Shortfall | undefined;
+  /** What is expected at the input and what it takes, where both are known in volts. */
+  readonly input: InputRange | undefined;
 }
 
 /** What a check says; channel and check name are filled in by the list that runs it, and the severity where it is the usual one. */

@@ -1,6 +1,6 @@
 import { quantityOfSensor } from '../rig/levels.ts';
 import { type ChannelView, type Check, SAYS_NOTHING, type Said } from './check.ts';
-import { endsText, fullScaleOf, inputRangeOf, overshootOf } from './input-range.ts';
+import { endsText, fullScaleOf, overshootOf } from './input-range.ts';
 import { standingOn } from './standing.ts';
 import { differenceText, voltsText } from './wording.ts';
 
@@ -44,8 +44,7 @@ channels:
 };
 
 function pastFullScale(view: ChannelView): readonly Said[] {
-  const { channel } = view;
-  const range = inputRangeOf(view);
+  const { channel, input: range } = view;
   if (!range) return SAYS_NOTHING;
   const { peak, ends } = range;
   const overshoot = overshootOf(peak, ends);

@@ -45,7 +45,7 @@ function beyond(
     {
       about: use.filter.name === '' ? 'filter' : use.filter.name,
       stage,
-      message: `${name} can not do what it says here: ${formatHz(greatest)} is not below ${formatHz(limitHz)}, ${part} of the ${rateText(inputRateHz)} that it is given.`,
+      message: `${name} can't do what it says here: ${formatHz(greatest)} is not below ${formatHz(limitHz)}, ${part} of the ${rateText(inputRateHz)} that it is given.`,
       place: standing.place,
       related: [...standing.related, { place: use.filter.place, message: `${name} is described here.` }],
       figures: { frequencyHz: greatest, limitHz, stage },

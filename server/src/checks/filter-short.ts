@@ -21,6 +21,7 @@ channels:
     rate: 25.6 kHz
     filter: card
     band: 10 Hz .. 5 kHz
+    fold-limit: -70 dBFS
 `,
   clean: `rig: Fan bearing
 digitizers:
@@ -34,6 +35,7 @@ channels:
     rate: 25.6 kHz
     filter: card
     band: 10 Hz .. 5 kHz
+    fold-limit: -70 dBFS
     undeclared: -10 dBFS
 `,
   sources: ['Oppenheim and Schafer, Discrete-Time Signal Processing, the chapter on sampling.'],

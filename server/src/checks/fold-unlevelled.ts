@@ -49,7 +49,7 @@ function said(fold: Fold, { chain, channel }: ChannelView): Said {
   const heard = channel.heard.find((one) => one.source === source);
   const hasLevel = heard !== undefined && levelsOf(heard).length > 0;
   const assumed = hasLevel
-    ? 'Its level can not be placed on this channel, so full scale is assumed.'
+    ? "Its level can't be placed on this channel, so full scale is assumed."
     : 'It has no level, so full scale is assumed.';
   return { ...plain, message: `${plain.message} ${assumed}` };
 }

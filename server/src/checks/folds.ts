@@ -57,7 +57,7 @@ export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): S
   const truth = hzText(worst.trueLowHz, worst.trueHighHz);
   const where = stageText(chain, stage);
   const sentences = [
-    `${name} will be recorded at ${formatHz(recordedHz)}, inside the band, though its ${worst.component} is at ${truth}.`,
+    `${name} will be recorded at ${formatHz(recordedHz)}, inside the band, though ${whatText(worst)} is at ${truth}.`,
     `There it ${verb} ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
   ];
   if (where !== '') sentences.push(`It folds ${where}.`);
@@ -76,6 +76,10 @@ export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): S
     figures: { recordedHz, ...levelFigures(level, chain), stage },
     excess,
   };
+}
+
+function whatText({ component }: Arrival): string {
+  return component === 'fundamental' ? 'it' : `its ${component}`;
 }
 
 function lineText({ component, recordedLowHz, recordedHighHz }: Arrival): string {

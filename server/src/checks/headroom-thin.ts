@@ -1,5 +1,5 @@
 import { type Check, SAYS_NOTHING } from './check.ts';
-import { DEFAULT_HEADROOM_DB, endsText, fullScaleOf, inputRangeOf, overshootOf } from './input-range.ts';
+import { DEFAULT_HEADROOM_DB, endsText, fullScaleOf, overshootOf } from './input-range.ts';
 import { standingOn } from './standing.ts';
 import { differenceText } from './wording.ts';
 
@@ -37,8 +37,7 @@ channels:
 `,
   sources: ['Arithmetic: 20 log10(end of full scale / peak). 3 dB: common practice.'],
   run(view) {
-    const { channel } = view;
-    const range = channel.peak && inputRangeOf(view);
+    const { channel, input: range } = view;
     if (!range) return SAYS_NOTHING;
     const { headroomDb, peak, ends } = range;
     const wantedDb = channel.headroomDb?.value ?? DEFAULT_HEADROOM_DB;

@@ -4,6 +4,9 @@ import { decibels, ratioOf } from '../signal/decibel.ts';
 import type { ChannelView } from './check.ts';
 import { voltsText } from './wording.ts';
 
+/** What volts are reckoned from. */
+type View = Pick<ChannelView, 'channel' | 'chain' | 'bandResponse'>;
+
 /** Two ends in volts at the digitizer's input. */
 export interface Volts {
   readonly lowV: number;
@@ -22,9 +25,9 @@ export interface InputRange {
 export const DEFAULT_HEADROOM_DB = 3;
 
 /** How a channel's `peak` stands to its full scale; `undefined` where either is not known in volts. */
-export function inputRangeOf(view: ChannelView): InputRange | undefined {
+export function inputRangeOf(view: View): InputRange | undefined {
   const given = fullScaleOf(view.channel);
-  if (!given) return undefined;
+  if (!given || !view.channel.peak) return undefined;
   const ends = endsOf(given.value, gainOf(view.channel));
   const peak = peakAt(view, ends);
   return peak && { peak, ends, headroomDb: headroomOf(peak, ends) };
@@ -41,7 +44,7 @@ export function endsOf({ lowV, highV }: FullScale, gain: number): Volts {
 }
 
 /** What is expected, in volts, where the full scale has these ends: a single value means ± where it has two sides. */
-export function peakAt(view: ChannelView, ends: Volts): Volts | undefined {
+export function peakAt(view: View, ends: Volts): Volts | undefined {
   const given = view.channel.peak?.value;
   if (!given) return undefined;
   const first = voltsOf(given.low, view);
@@ -53,7 +56,7 @@ export function peakAt(view: ChannelView, ends: Volts): Volts | undefined {
 }
 
 /** With what the sensor makes of it at worst, inside the band. */
-function voltsOf(level: Level, { chain, bandResponse }: ChannelView): number | undefined {
+function voltsOf(level: Level, { chain, bandResponse }: View): number | undefined {
   const { fullScaleV, sensitivity } = chain.scale;
   switch (level.kind) {
     case 'dbfs':

@@ -13,6 +13,7 @@ import { sharedProblems } from './document/inherited.ts';
 import { saidOfProblem } from './document/problems.ts';
 import { unusedNames } from './document/unused-name.ts';
 import { type Finding, identityOf, SEVERITIES, type Severity } from './finding.ts';
+import { inputRangeOf } from './input-range.ts';
 import { CHANNEL_CHECKS, RIG_CHECKS } from './list.ts';
 import { shortfallOf } from './shortfall.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
@@ -103,7 +104,9 @@ function viewOf(channel: Channel): ChannelView | undefined {
   const arrivals = arrivalsOf(chain);
   const undeclared = undeclaredFolds(chain);
   const shortfall = shortfallOf({ channel, chain, arrivals, undeclared });
-  return { channel, chain, arrivals, undeclared, bandResponse: bandResponseOf(chain), shortfall };
+  const bandResponse = bandResponseOf(chain);
+  const input = inputRangeOf({ channel, chain, bandResponse });
+  return { channel, chain, arrivals, undeclared, bandResponse, shortfall, input };
 }
 
 function addFinding(

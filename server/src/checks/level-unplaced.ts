@@ -10,7 +10,7 @@ export const levelUnplaced: Check<'channel'> = {
   kind: 'channel',
   severity: 'warning',
   finds:
-    'A level can not be turned into volts, or compared with full scale; or channels leave out a source because of that.',
+    "A level can't be turned into volts, or compared with full scale; or channels leave out a source because of that.",
   why: 'A level in the measured unit needs a sensitivity to become volts, and volts need a full scale to become dBFS. Without them the level is not used: full scale is assumed for its source, the peak is not checked, and what is said of them is less than could be said. At a source it is only a hint: it counts the channels that do not hear it because it is in a quantity that they do not measure.',
   shows: `rig: Fan bearing
 digitizers:
@@ -108,7 +108,7 @@ function otherQuantity(heard: HeardSource, { channel }: ChannelView, level: Leve
   const standing = standingOn(channel, heard.mention ? { place: heard.mention } : undefined);
   return {
     about: heard.source.name,
-    message: `How high \`${heard.source.name}\` is recorded here can not be said: its level is in ${unit}, which this channel does not measure.`,
+    message: `How high \`${heard.source.name}\` is recorded here can't be said: its level is in ${unit}, which this channel does not measure.`,
     place: standing.place,
     related: given
       ? [...standing.related, { place: given.place, message: 'The level stands here.' }]
@@ -123,7 +123,7 @@ function noFullScale(what: readonly string[], { channel }: ChannelView): Said {
   const missing = digitizer ? `\`${digitizer.name}\` has no \`full-scale\`` : 'the channel names no digitizer';
   return {
     about: 'full-scale',
-    message: `How high ${listText(what)} will stand against full scale can not be said, because ${missing}.`,
+    message: `How high ${listText(what)} will stand against full scale can't be said, because ${missing}.`,
     place: standing.place,
     related: digitizer
       ? [...standing.related, { place: digitizer.place, message: 'The digitizer is described here.' }]
@@ -138,7 +138,7 @@ function noSensitivity(what: readonly string[], { channel }: ChannelView): Said 
   const missing = sensor ? 'the sensor has no `sensitivity`' : 'the channel has no sensor';
   return {
     about: 'sensitivity',
-    message: `How many volts ${listText(what)} will make can not be said, because ${missing}.`,
+    message: `How many volts ${listText(what)} will make can't be said, because ${missing}.`,
     place: standing.place,
     related:
       sensor && sensor.name !== ''

@@ -1,13 +1,10 @@
 import { LEVEL_ROUNDING_DB } from '../chain/arrivals.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import { recordedPointHz } from '../chain/on-nyquist.ts';
 import { formatHz } from '../quantity/write.ts';
-import { foldHz } from '../signal/folding.ts';
 import { type ChannelView, type Check, SAYS_NOTHING, type Said } from './check.ts';
 import { standingOnStage } from './standing.ts';
 import { levelFigures, levelText, rateText, stageText } from './wording.ts';
-
-/** Frequencies closer than this, relative to a rate, are the same. */
-const ROUNDING = 1e-9;
 
 export const onNyquist: Check<'channel'> = {
   name: 'on-nyquist',
@@ -50,83 +47,30 @@ channels:
 
 function onNyquistOf({ arrivals, chain }: ChannelView): readonly Said[] {
   if (!chain.understood) return SAYS_NOTHING;
-  let said: (Said & { readonly level: number })[] | undefined;
-  let start = 0;
-  while (start < arrivals.length) {
-    const end = endOfComponent(arrivals, start);
-    const found = onMultiple(arrivals, start, end, chain);
-    start = end;
-    if (!found) continue;
-    said ??= [];
-    const same = said.findIndex(({ about, stage }) => about === found.about && stage === found.stage);
-    if (same < 0) said.push(found);
-    else if (found.level > said[same]!.level) said[same] = found;
+  let worst: Arrival[] | undefined;
+  for (const arrival of arrivals) {
+    if (arrival.onNyquistAtStage === null || !isToBeSaid(arrival, chain)) continue;
+    worst ??= [];
+    const { source, onNyquistAtStage, level } = arrival;
+    const same = worst.findIndex((one) => one.source === source && one.onNyquistAtStage === onNyquistAtStage);
+    if (same < 0) worst.push(arrival);
+    else if (level > worst[same]!.level) worst[same] = arrival;
   }
-  return said?.map(({ level: _, ...rest }) => rest) ?? SAYS_NOTHING;
+  return worst?.map((arrival) => saidOf(arrival, chain)) ?? SAYS_NOTHING;
 }
 
-/** Pieces of one component stand one after another. */
-function endOfComponent(arrivals: readonly Arrival[], start: number): number {
-  const { source, component } = arrivals[start]!;
-  let end = start + 1;
-  while (end < arrivals.length && arrivals[end]!.source === source && arrivals[end]!.component === component) end++;
-  return end;
+/** Above the fold limit, and recorded in the band, or near a point that is in the band. */
+function isToBeSaid({ level, inBand, nominalHz, onNyquistAtStage }: Arrival, chain: Chain): boolean {
+  if (level <= chain.foldLimit + LEVEL_ROUNDING_DB) return false;
+  if (inBand || nominalHz === undefined || onNyquistAtStage === null) return inBand;
+  const pointHz = recordedPointHz(nominalHz, onNyquistAtStage, chain.ratesHz);
+  return pointHz >= chain.bandLowHz && pointHz <= chain.bandHighHz;
 }
 
-/** The first stage at which the component of the pieces `start .. end` may stand on a multiple of half the rate. */
-function onMultiple(
-  arrivals: readonly Arrival[],
-  start: number,
-  end: number,
-  chain: Chain,
-): (Said & { readonly level: number }) | undefined {
-  const { nominalHz } = arrivals[start]!;
-  // What sweeps over a range passes such a point and does not stay there.
-  if (nominalHz === undefined) return undefined;
-  const worst = highest(arrivals, start, end);
-  if (worst.level <= chain.foldLimit + LEVEL_ROUNDING_DB) return undefined;
-  const reachHz = Math.max(nominalHz - arrivals[start]!.trueLowHz, arrivals[end - 1]!.trueHighHz - nominalHz);
-  let hz = nominalHz;
-  for (let index = 0; index < chain.ratesHz.length; index++) {
-    const rateHz = chain.ratesHz[index]!;
-    const multiple = Math.round((2 * hz) / rateHz);
-    const pointHz = (multiple * rateHz) / 2;
-    // Whose tolerance spans whole zones stands on a multiple whatever the rate.
-    const isNear =
-      multiple >= 1 &&
-      reachHz < rateHz / 2 &&
-      Math.abs(hz - pointHz) <= reachHz + pointHz * chain.path.clockTolerance + ROUNDING * rateHz;
-    if (isNear && concernsBand(arrivals, start, end, pointHz, index, chain)) {
-      return { ...saidOf(worst, nominalHz, index + 1, chain), level: worst.level };
-    }
-    hz = foldHz(hz, rateHz);
-  }
-  return undefined;
-}
-
-function highest(arrivals: readonly Arrival[], start: number, end: number): Arrival {
-  let worst = arrivals[start]!;
-  for (let index = start + 1; index < end; index++) if (arrivals[index]!.level > worst.level) worst = arrivals[index]!;
-  return worst;
-}
-
-/** Whether the component is recorded in the band, or the point itself is. */
-function concernsBand(
-  arrivals: readonly Arrival[],
-  start: number,
-  end: number,
-  pointHz: number,
-  stage: number,
-  { ratesHz, bandLowHz, bandHighHz }: Chain,
-): boolean {
-  for (let index = start; index < end; index++) if (arrivals[index]!.inBand) return true;
-  let hz = pointHz;
-  for (let later = stage; later < ratesHz.length; later++) hz = foldHz(hz, ratesHz[later]!);
-  return hz >= bandLowHz && hz <= bandHighHz;
-}
-
-function saidOf(worst: Arrival, nominalHz: number, stage: number, chain: Chain): Said {
-  const { source, component, level, levelKnown } = worst;
+function saidOf(worst: Arrival, chain: Chain): Said {
+  const { source, component, level, levelKnown, atHz } = worst;
+  const stage = worst.onNyquistAtStage ?? 1;
+  const nominalHz = worst.nominalHz ?? atHz;
   const { rateHz } = chain.stages[stage - 1]!;
   const standing = standingOnStage(chain, stage);
   const where = stageText(chain, stage);

@@ -8,7 +8,6 @@ import {
   endsText,
   fullScaleOf,
   headroomOf,
-  inputRangeOf,
   overshootOf,
   peakAt,
   type Volts,
@@ -63,7 +62,7 @@ channels:
     const { channel } = view;
     const { digitizer } = channel;
     if (!channel.peak || !digitizer || !(digitizer.ranges || digitizer.gains)) return SAYS_NOTHING;
-    const today = inputRangeOf(view);
+    const today = view.input;
     if (!today || overshootOf(today.peak, today.ends) > ROUNDING) return SAYS_NOTHING;
     const best = bestSetting(view);
     const todaySpanV = today.ends.highV - today.ends.lowV;

@@ -9,8 +9,7 @@ export const rateUnreachable: Check<'channel'> = {
   name: 'rate-unreachable',
   kind: 'channel',
   severity: 'error',
-  finds:
-    'The clock and its dividers, or the list of rates, can not make this rate; names the two nearest that they can.',
+  finds: "The clock and its dividers, or the list of rates, can't make this rate; names the two nearest that they can.",
   why: 'A digitizer that is asked for a rate it does not have takes another one, with or without a word. Every frequency in the record is then off by the difference. A rate written by hand is right within half a unit of its last digit.',
   shows: `rig: Fan bearing
 clocks:
@@ -46,7 +45,7 @@ channels:
       nearest.length === 0 ? '' : ` The nearest it can: ${nearest.map((hz) => rateText(hz)).join(' and ')}.`;
     return [
       {
-        message: `The record will not be at ${rateText(rateHz)}, because \`${channel.digitizer.name}\` can not make that rate.${advice}`,
+        message: `The record will not be at ${rateText(rateHz)}, because \`${channel.digitizer.name}\` can't make that rate.${advice}`,
         place: standing.place,
         related: [...standing.related, ...originOf(channel.digitizer)],
         figures: {

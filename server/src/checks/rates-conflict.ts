@@ -18,7 +18,7 @@ export const ratesConflict: Check<'rig'> = {
   name: 'rates-conflict',
   kind: 'rig',
   severity: 'error',
-  finds: 'Channels of one digitizer have rates that it can not run together.',
+  finds: "Channels of one digitizer have rates that it can't run together.",
   why: 'Many chassis run all their channels at one rate, or at whole fractions of the fastest. Asked for anything else they refuse, or set the odd channel to a rate of their own choosing.',
   shows: `rig: Fan bearing
 digitizers:

@@ -3,7 +3,7 @@ import { findUnit, ownUnit } from '../quantity/unit.ts';
 import { formatHz, formatQuantity } from '../quantity/write.ts';
 import { ratioOf } from '../signal/decibel.ts';
 
-/** Significant digits of a difference in decibels. */
+/** Significant digits of a difference in decibels, and of levels that are not in decibels. */
 const DIFFERENCE_DIGITS = 3;
 
 /** A level on a channel's scale, as messages show it. */
@@ -36,9 +36,10 @@ export function levelFigures(level: number, chain: Chain): Readonly<Record<strin
   }
 }
 
-/** A difference in decibels: `15.9 dB`. */
+/** A difference in decibels, to no more than a hundredth: `15.9 dB`, `0.08 dB`. */
 export function differenceText(db: number): string {
-  return formatQuantity(db, 'decibel', DIFFERENCE_DIGITS);
+  if (Math.abs(db) >= 1) return formatQuantity(db, 'decibel', DIFFERENCE_DIGITS);
+  return db > 0 && db < 0.005 ? 'less than 0.01 dB' : formatQuantity(db, 'decibel');
 }
 
 /** A point or a range of frequency. */

@@ -22,7 +22,7 @@ export const DOCUMENT_PAGES: readonly (CheckPage & { readonly name: ProblemName 
     'syntax',
     'error',
     'The text is not YAML at this place.',
-    'An entry that can not be read is not checked. A slip costs only the entry that it stands in: all others are read and checked as if it were not there.',
+    "An entry that can't be read is not checked. A slip costs only the entry that it stands in: all others are read and checked as if it were not there.",
     'rig: Fan bearing\nchannels:\n  bearing:\n    rate: 25.6 kHz\n    band: 10 Hz .. 5 kHz\n    note: "above the coupling\n',
     'rig: Fan bearing\nchannels:\n  bearing:\n    rate: 25.6 kHz\n    band: 10 Hz .. 5 kHz\n    note: "above the coupling"\n',
     [YAML],
@@ -89,7 +89,7 @@ export const DOCUMENT_PAGES: readonly (CheckPage & { readonly name: ProblemName 
   page(
     'out-of-range',
     'error',
-    'A number that can not be: a negative rate, an order of 0 or over 50, a range upside down, a digital filter whose corner is at or beyond half the rate that it is given.',
+    "A number that can't be: a negative rate, an order of 0 or over 50, a range upside down, a digital filter whose corner is at or beyond half the rate that it is given.",
     'The value is not read, or the filter does not do what it says. Where it depends on the rate of the channel, it is told at the channel.',
     'rig: Fan bearing\nchannels:\n  bearing:\n    rate: -25.6 kHz\n    band: 10 Hz .. 5 kHz\n',
     'rig: Fan bearing\nchannels:\n  bearing:\n    rate: 25.6 kHz\n    band: 10 Hz .. 5 kHz\n',

@@ -1,6 +1,6 @@
 import type { Source, Thing } from '../../rig/model.ts';
-import type { Mention } from '../../rig/reader.ts';
 import type { ChannelSummary, RigView } from '../check.ts';
+import { mentionCounts } from './mention-counts.ts';
 import type { SaidOfDocument } from './problems.ts';
 
 type Kind = 'clock' | 'digitizer' | 'sensor' | 'filter';
@@ -12,25 +12,19 @@ const SECTIONS: readonly (readonly [Kind, 'clocks' | 'digitizers' | 'sensors' | 
   ['filter', 'filters'],
 ];
 
-/**
- * Named things that nothing names, and sources that no channel hears. It stops looking as soon as every name has been
- * seen, mostly after a few channels.
- */
+/** Named things that nothing names, and sources that no channel hears. */
 export function unusedNames({ environment, channels }: RigView): readonly SaidOfDocument[] {
-  const unseen = new Map<string, SaidOfDocument>();
+  const counts = mentionCounts(channels);
+  const elsewhere = new Set(environment.mentions.map(({ kind, name }) => `${kind} ${name}`));
+  const said: SaidOfDocument[] = [];
   for (const [kind, section] of SECTIONS) {
-    for (const thing of environment[section].values())
-      unseen.set(`${kind} ${thing.name}`, saidOf(thing, kind, section));
+    const counted = counts.get(kind);
+    const things: Iterable<Thing> = environment[section].values();
+    for (const thing of things) {
+      if (!counted?.has(thing.name) && !elsewhere.has(`${kind} ${thing.name}`)) said.push(saidOf(thing, kind, section));
+    }
   }
-  const see = ({ kind, name }: Mention): void => {
-    if (unseen.size > 0) unseen.delete(`${kind} ${name}`);
-  };
-  for (const mention of environment.mentions) see(mention);
-  for (const { reading } of channels) {
-    if (unseen.size === 0) break;
-    for (const mention of reading.mentions) see(mention);
-  }
-  return [...unseen.values(), ...unheardByAll(environment.sources, channels)];
+  return [...said, ...unheardByAll(environment.sources, channels)];
 }
 
 function saidOf({ name, place }: Thing, kind: string, section: string): SaidOfDocument {
