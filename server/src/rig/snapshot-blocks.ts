@@ -2,8 +2,19 @@ import { type SplitState, type Stretch, splitBlocks, styleOf, TOP } from './bloc
 import { BlockPool } from './blocks-pool.ts';
 import { type Block, placeholder, readBlock } from './blocks-read.ts';
 import { MOST_CHARACTERS } from './limits.ts';
-import type { BlockSnapshot, StyledBlocks } from './snapshot-store.ts';
+import { BlockList } from './snapshot-list.ts';
 import { applyTextEdits, type TextEdit } from './text-edit.ts';
+
+/** The blocks of a document, and how it is written. */
+export interface StyledBlocks {
+  readonly style: 'block' | 'flow';
+  readonly list: BlockList;
+}
+
+/** What is known of a document before an edit. */
+interface EditedDocument extends StyledBlocks {
+  text(): string;
+}
 
 /**
  * Reads a text from nothing.
@@ -14,7 +25,7 @@ export function readBlocks(text: string, old: readonly Block[]): StyledBlocks {
   const pool = new BlockPool(old);
   if (styleOf(text) === 'flow') {
     const isTooLong = text.length > MOST_CHARACTERS;
-    return { style: 'flow', blocks: [isTooLong ? unreadBlock(text) : pool.read('whole', text, TOP)] };
+    return { style: 'flow', list: BlockList.of([isTooLong ? unreadBlock(text) : pool.read('whole', text, TOP)]) };
   }
   const blocks: Block[] = [];
   for (const { kind, start, end, before } of splitBlocks(text, TOP, true)) {
@@ -24,7 +35,7 @@ export function readBlocks(text: string, old: readonly Block[]): StyledBlocks {
     }
     blocks.push(pool.read(kind, text.slice(start, end), before));
   }
-  return { style: 'block', blocks };
+  return { style: 'block', list: BlockList.of(blocks) };
 }
 
 /**
@@ -33,24 +44,25 @@ export function readBlocks(text: string, old: readonly Block[]): StyledBlocks {
  *
  * @param edits in order, within the text, at least one
  */
-export function editBlocks(old: BlockSnapshot, edits: readonly TextEdit[]): StyledBlocks {
+export function editBlocks(old: EditedDocument, edits: readonly TextEdit[]): StyledBlocks {
+  const { list } = old;
   const growth = edits.reduce((sum, { start, end, text }) => sum + text.length - (end - start), 0);
-  const isTooLong = Math.max(old.length, old.length + growth) > MOST_CHARACTERS;
-  const from = Math.max(0, old.indexAt(edits[0]!.start) - 1);
-  const touched = old.indexAt(edits.at(-1)!.end) + 1;
-  const readAll = (): StyledBlocks => readBlocks(applyTextEdits(old.text(), edits), old.blocks);
-  if (old.style === 'flow' || isTooLong || old.blocks.length === 0) return readAll();
+  const isTooLong = Math.max(list.length, list.length + growth) > MOST_CHARACTERS;
+  const from = Math.max(0, list.indexAt(edits[0]!.start) - 1);
+  const touched = list.indexAt(edits.at(-1)!.end) + 1;
+  const readAll = (): StyledBlocks => readBlocks(applyTextEdits(old.text(), edits), list.blocks);
+  if (old.style === 'flow' || isTooLong) return readAll();
 
   for (let more = 1; ; more *= 4) {
-    const to = Math.min(old.blocks.length, touched + more);
-    const stretch = editedStretch(old, from, to, edits, growth);
+    const to = Math.min(list.blocks.length, touched + more);
+    const stretch = editedStretch(list, from, to, edits, growth);
     if (from === 0 && styleOf(stretch.text) !== 'block') return readAll();
-    const meeting = meetingPoint(old, from, stretch);
-    if (!meeting && to < old.blocks.length) continue;
-    const { splits, next } = meeting ?? { splits: stretch.splits, next: old.blocks.length };
-    const pool = new BlockPool(old.blocks.slice(from, next));
+    const meeting = meetingPoint(list, from, stretch);
+    if (!meeting && to < list.blocks.length) continue;
+    const { splits, next } = meeting ?? { splits: stretch.splits, next: list.blocks.length };
+    const pool = new BlockPool(list.blocks.slice(from, next));
     const fresh = splits.map(({ kind, start, end, before }) => pool.read(kind, stretch.text.slice(start, end), before));
-    return { style: 'block', blocks: [...old.blocks.slice(0, from), ...fresh, ...old.blocks.slice(next)] };
+    return { style: 'block', list: list.spliced(from, next, fresh) };
   }
 }
 
@@ -64,16 +76,17 @@ interface EditedStretch {
 }
 
 function editedStretch(
-  old: BlockSnapshot,
+  old: BlockList,
   from: number,
   to: number,
   edits: readonly TextEdit[],
   growth: number,
 ): EditedStretch {
-  const offset = old.startOfBlock(from);
+  const offset = old.startOf(from);
   const before: SplitState = from === 0 ? TOP : old.blocks[from]!.before;
   const moved = edits.map(({ start, end, text }) => ({ start: start - offset, end: end - offset, text }));
-  const text = applyTextEdits(old.sliceText(offset, old.startOfBlock(to)), moved);
+  const was = old.blocks.slice(from, to).map(({ text }) => text);
+  const text = applyTextEdits(was.join(''), moved);
   return {
     text,
     splits: splitBlocks(text, before, from === 0),
@@ -84,7 +97,7 @@ function editedStretch(
 
 /** The first block start behind the edits that the old document has too, met in the same state. */
 function meetingPoint(
-  old: BlockSnapshot,
+  old: BlockList,
   from: number,
   { splits, unchangedFrom, toOld }: EditedStretch,
 ): { readonly splits: readonly Stretch[]; readonly next: number } | undefined {
@@ -92,7 +105,7 @@ function meetingPoint(
     const { start, before } = splits[index]!;
     if (start < unchangedFrom) continue;
     const next = old.indexAt(start + toOld);
-    if (next <= from || old.startOfBlock(next) !== start + toOld) continue;
+    if (next <= from || old.startOf(next) !== start + toOld) continue;
     const was = old.blocks[next]!.before;
     if (was.section === before.section && was.indent === before.indent) return { splits: splits.slice(0, index), next };
   }

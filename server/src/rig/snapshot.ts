@@ -32,7 +32,8 @@ export interface Snapshot {
 
 /** Reads a rig file from nothing. Never throws, whatever the text. */
 export function readSnapshot(text: string): Snapshot {
-  return new BlockSnapshot(readBlocks(text, []), text);
+  const { style, list } = readBlocks(text, []);
+  return new BlockSnapshot(style, list, text);
 }
 
 /**
@@ -43,7 +44,9 @@ export function readSnapshot(text: string): Snapshot {
  * @param edits in any order; of two that overlap the later one is dropped
  */
 export function editSnapshot(snapshot: Snapshot, edits: readonly TextEdit[]): Snapshot {
-  if (!(snapshot instanceof BlockSnapshot)) return snapshot;
+  if (!(snapshot instanceof BlockSnapshot)) throw new TypeError('Not a snapshot of readSnapshot or editSnapshot');
   const ordered = orderedEdits(edits, snapshot.length);
-  return ordered.length === 0 ? snapshot : new BlockSnapshot(editBlocks(snapshot, ordered), undefined);
+  if (ordered.length === 0) return snapshot;
+  const { style, list } = editBlocks(snapshot, ordered);
+  return new BlockSnapshot(style, list, undefined);
 }
