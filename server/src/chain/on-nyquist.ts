@@ -9,7 +9,7 @@ const ROUNDING = 1e-9;
  * The first stage, from 1, at which a component may stand on a multiple of half the rate: within its own tolerance
  * and the clock's. `null` where it can't.
  *
- * What sweeps over a range passes such a point and does not stay there; what has a tolerance of whole zones stands on
+ * What sweeps over a range passes such a point and does not stay there; what has a tolerance of half a zone is near
  * a multiple whatever the rate. Neither is meant.
  */
 export function onNyquistAtStage(component: Component, { ratesHz, clockTolerance }: SignalPath): number | null {
@@ -21,7 +21,7 @@ export function onNyquistAtStage(component: Component, { ratesHz, clockTolerance
     const rateHz = ratesHz[index]!;
     const pointHz = pointNear(hz, rateHz);
     const slackHz = reachHz + pointHz * clockTolerance + ROUNDING * rateHz;
-    if (pointHz > 0 && reachHz < rateHz / 2 && Math.abs(hz - pointHz) <= slackHz) return index + 1;
+    if (pointHz > 0 && reachHz < rateHz / 4 && Math.abs(hz - pointHz) <= slackHz) return index + 1;
     hz = foldHz(hz, rateHz);
   }
   return null;

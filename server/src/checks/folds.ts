@@ -49,19 +49,20 @@ function addTo(folds: Fold[], arrival: Arrival): void {
 
 /** A fold as a finding: `opening` is said of its worst line, the figures follow. */
 export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): Said {
-  const { worst, others, stage } = fold;
+  const { worst, stage } = fold;
   const { source, level } = worst;
   const recordedHz = recordedAtHz(worst);
   const excess = level - chain.foldLimit;
   const name = `\`${source.name}\``;
-  const truth = hzText(worst.trueLowHz, worst.trueHighHz);
+  const [own, ...rest] = linesOf(fold);
+  const truth = hzText(own!.trueLowHz, own!.trueHighHz);
   const where = stageText(chain, stage);
   const sentences = [
     `${name} will be recorded at ${formatHz(recordedHz)}, inside the band, though ${whatText(worst)} is at ${truth}.`,
     `There it ${verb} ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
   ];
   if (where !== '') sentences.push(`It folds ${where}.`);
-  if (others.length > 0) sentences.push(`With it: ${listText(others.map(lineText))}.`);
+  if (rest.length > 0) sentences.push(`With it: ${listText(rest.map(lineText))}.`);
   const standing = standingOnStage(chain, stage);
   return {
     about: source.name,
@@ -82,6 +83,38 @@ function whatText({ component }: Arrival): string {
   return component === 'fundamental' ? 'it' : `its ${component}`;
 }
 
-function lineText({ component, recordedLowHz, recordedHighHz }: Arrival): string {
+/** A component of a source, whatever pieces it folds in. */
+interface Line {
+  readonly component: string;
+  readonly level: number;
+  readonly trueLowHz: number;
+  readonly trueHighHz: number;
+  readonly recordedLowHz: number;
+  readonly recordedHighHz: number;
+}
+
+/** What folds, a line for each component: the worst first, then the others from the highest down. */
+function linesOf({ worst, others }: Fold): readonly Line[] {
+  const lines = new Map<string, Line>([[worst.component, worst]]);
+  for (const arrival of others) {
+    const known = lines.get(arrival.component);
+    lines.set(arrival.component, known ? joined(known, arrival) : arrival);
+  }
+  const [own, ...rest] = lines.values();
+  return [own!, ...rest.sort((first, second) => second.level - first.level)];
+}
+
+function joined(first: Line, second: Line): Line {
+  return {
+    component: first.component,
+    level: Math.max(first.level, second.level),
+    trueLowHz: Math.min(first.trueLowHz, second.trueLowHz),
+    trueHighHz: Math.max(first.trueHighHz, second.trueHighHz),
+    recordedLowHz: Math.min(first.recordedLowHz, second.recordedLowHz),
+    recordedHighHz: Math.max(first.recordedHighHz, second.recordedHighHz),
+  };
+}
+
+function lineText({ component, recordedLowHz, recordedHighHz }: Line): string {
   return `${component} at ${hzText(recordedLowHz, recordedHighHz)}`;
 }

@@ -1,4 +1,3 @@
-import { LEVEL_ROUNDING_DB } from '../chain/arrivals.ts';
 import type { UndeclaredFold } from '../chain/undeclared.ts';
 import type { ChannelView } from './check.ts';
 import { hasFoldInBand } from './folds.ts';
@@ -9,6 +8,12 @@ type View = Pick<ChannelView, 'channel' | 'chain' | 'arrivals' | 'undeclared'>;
 /** Margin that spectrum work leaves between its band and half the rate: rate / 2.56. Common practice; no source. */
 export const COMMON_MARGIN = 1.28;
 const MARGIN_ROUNDING = 1e-9;
+
+/**
+ * A bound on what nobody declares is no more exact than this: the ripple of a digital filter alone must not carry one
+ * that is stated to be at the limit over it.
+ */
+const BOUND_ROUNDING_DB = 0.01;
 
 /**
  * What is wrong with the filtering ahead of a channel's samplings, in one word: of the three, a channel is told one,
@@ -41,7 +46,7 @@ export function shortfallOf(view: View): Shortfall | undefined {
 
 /** Whether more may be left of what nobody declares than the fold limit allows. */
 export function isOver({ chain }: View, fold: UndeclaredFold): boolean {
-  return fold.level > chain.foldLimit + LEVEL_ROUNDING_DB;
+  return fold.level > chain.foldLimit + BOUND_ROUNDING_DB;
 }
 
 /** AC coupling keeps nothing out that could fold. */
