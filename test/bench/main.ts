@@ -112,9 +112,8 @@ function editInFlow(size: number, style: 'flow' | 'json'): number {
 }
 
 function remediesAtOne(text: string): number {
-  const faulty = text
-    .replace(/rate: 25.6 kHz/, 'rate: 20.48 kHz')
-    .replace(/fold-limit: -60 dBFS/, 'fold-limit: -100 dBFS');
+  // A carrier a hundred times as loud, and a filter that begins too late: the first channel then has a fold in its band.
+  const faulty = text.replace('level: 40 mV', 'level: 4 V').replaceAll('cutoff: 9.5 kHz', 'cutoff: 12 kHz');
   const workbench = opened(faulty);
   const finding = [...allFindings(workbench.evaluation(URI)!)].find((one) => one.check === 'fold-in-band');
   if (!finding) throw new Error('The generated rig has no fold to remedy.');

@@ -3,7 +3,7 @@ import { DiagnosticSeverity, DiagnosticTag } from 'vscode-languageserver-types';
 import { MOST_FINDINGS_SENT } from '../rig/limits.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
 import type { LocatedFinding } from '../workbench/findings.ts';
-import { countFindings, locatedFindings } from '../workbench/findings.ts';
+import { allFindings, gravestFindings } from '../workbench/findings.ts';
 import { protocolSeverity } from './convert.ts';
 import type { ReferenceLinks } from './reference-links.ts';
 
@@ -12,19 +12,18 @@ import type { ReferenceLinks } from './reference-links.ts';
  * out, the last one says how many.
  */
 export function diagnosticsOf(uri: string, evaluation: Evaluation, links: ReferenceLinks): Diagnostic[] {
-  const counts = countFindings(evaluation);
-  const total = counts.error + counts.warning + counts.hint;
-  if (total <= MOST_FINDINGS_SENT) {
-    return locatedFindings(evaluation).map((located) => diagnosticOf(uri, located, evaluation, links));
-  }
-  const shown = locatedFindings(evaluation, MOST_FINDINGS_SENT - 1);
+  const all = allFindings(evaluation);
+  const allFit = all.length <= MOST_FINDINGS_SENT;
+  const sent = gravestFindings(evaluation, all, allFit ? MOST_FINDINGS_SENT : MOST_FINDINGS_SENT - 1);
+  const diagnostics = sent.map((located) => diagnosticOf(uri, located, evaluation, links));
+  if (allFit) return diagnostics;
   return [
-    ...shown.map((located) => diagnosticOf(uri, located, evaluation, links)),
+    ...diagnostics,
     {
       range: { start: { line: 0, character: 0 }, end: { line: 0, character: 0 } },
       severity: DiagnosticSeverity.Information,
       source: 'ratewright',
-      message: `${total - shown.length} more findings are not shown here. \`ratewright check\` lists all ${total}.`,
+      message: `${all.length - sent.length} more findings are not shown here. \`ratewright check\` lists all ${all.length}.`,
     },
   ];
 }

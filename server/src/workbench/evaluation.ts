@@ -45,8 +45,7 @@ export function* evaluating(
   const environment = readEnvironment(snapshot, CHECK_NAMES, previous?.environment);
   const channels = reuse(environment, previous);
   yield;
-  for (const index of outward(channels.length, near ? environment.channelEntries.indexOf(near) : 0)) {
-    if (channels[index]) continue;
+  for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
     channels[index] = judged(environment.channelEntries[index]!, environment, guard);
     yield;
   }
@@ -84,7 +83,8 @@ function reuse(environment: Environment, previous: Evaluation | undefined): (Jud
     head++;
   }
   let tail = 0;
-  while (tail < Math.min(entries.length, before.length) - head && entries.at(-1 - tail) === before.at(-1 - tail)) {
+  const longestTail = Math.min(entries.length, before.length) - head;
+  while (tail < longestTail && entries[entries.length - 1 - tail] === before[before.length - 1 - tail]) {
     keep(entries.length - 1 - tail, before.length - 1 - tail);
     tail++;
   }
@@ -97,11 +97,9 @@ function reuse(environment: Environment, previous: Evaluation | undefined): (Jud
   return channels;
 }
 
-/** Every index once, from `middle` outward. */
-function* outward(count: number, middle: number): Generator<number> {
-  const start = Math.min(Math.max(0, middle), count);
-  for (let distance = 0; distance <= count; distance++) {
-    if (start + distance < count) yield start + distance;
-    if (distance > 0 && start - distance >= 0) yield start - distance;
-  }
+/** The places that are still empty, those nearest to `middle` first. */
+function missing(channels: readonly (JudgedChannel | undefined)[], middle: number): readonly number[] {
+  const empty: number[] = [];
+  for (let index = 0; index < channels.length; index++) if (!channels[index]) empty.push(index);
+  return empty.sort((a, b) => Math.abs(a - middle) - Math.abs(b - middle) || a - b);
 }

@@ -12,9 +12,13 @@ export interface LocatedFinding {
 export type SeverityCounts = Readonly<Record<Severity, number>>;
 
 /** Every finding of an evaluation, in no particular order. */
-export function* allFindings(evaluation: Evaluation): Generator<Finding> {
-  yield* evaluation.rigFindings;
-  for (const channel of evaluation.channels) yield* channel.result.findings;
+export function allFindings(evaluation: Evaluation): readonly Finding[] {
+  const all: Finding[] = [...evaluation.rigFindings];
+  // Most channels of a large rig have nothing to say, and this runs after every keystroke.
+  for (const { result } of evaluation.channels) {
+    if (result.findings.length > 0) all.push(...result.findings);
+  }
+  return all;
 }
 
 /** How many findings of each severity there are. */
@@ -24,26 +28,30 @@ export function countFindings(evaluation: Evaluation): SeverityCounts {
   return counts;
 }
 
-/**
- * At most `most` findings with their ranges, ordered by position; where some have to be left out, hints go first,
- * then warnings.
- */
-export function locatedFindings(evaluation: Evaluation, most = Number.POSITIVE_INFINITY): readonly LocatedFinding[] {
-  const chosen: Finding[] = [];
-  for (const severity of SEVERITIES) {
-    if (chosen.length >= most) break;
-    collect(evaluation, severity, most, chosen);
-  }
-  const located = chosen.map((finding) => ({ finding, range: evaluation.snapshot.rangeOf(finding.place) }));
-  return located.sort(byPosition);
+/** Every finding with its range, ordered by position. */
+export function locatedFindings(evaluation: Evaluation): readonly LocatedFinding[] {
+  return located(evaluation, allFindings(evaluation));
 }
 
-function collect(evaluation: Evaluation, severity: Severity, most: number, into: Finding[]): void {
-  for (const finding of allFindings(evaluation)) {
-    if (finding.severity !== severity) continue;
-    if (into.length >= most) return;
-    into.push(finding);
+/** At most `most` of an evaluation's findings, ordered by position; hints are left out first, then warnings. */
+export function gravestFindings(
+  evaluation: Evaluation,
+  all: readonly Finding[],
+  most: number,
+): readonly LocatedFinding[] {
+  if (all.length <= most) return located(evaluation, all);
+  const chosen: Finding[] = [];
+  for (const severity of SEVERITIES) {
+    for (const finding of all) {
+      if (chosen.length >= most) break;
+      if (finding.severity === severity) chosen.push(finding);
+    }
   }
+  return located(evaluation, chosen);
+}
+
+function located({ snapshot }: Evaluation, findings: readonly Finding[]): readonly LocatedFinding[] {
+  return findings.map((finding) => ({ finding, range: snapshot.rangeOf(finding.place) })).sort(byPosition);
 }
 
 function byPosition(a: LocatedFinding, b: LocatedFinding): number {

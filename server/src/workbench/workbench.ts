@@ -143,11 +143,10 @@ export class Workbench {
   }
 
   #report(checkName: string, fault: unknown): void {
-    const message = fault instanceof Error ? (fault.stack ?? fault.message) : String(fault);
-    const first = `${checkName}: ${message}`;
-    if (this.#faults.has(first)) return;
-    this.#faults.add(first);
-    this.#log(`The check ${first}`);
+    const what = `${checkName}: ${fault instanceof Error ? fault.message : String(fault)}`;
+    if (this.#faults.has(what)) return;
+    this.#faults.add(what);
+    this.#log(`The check ${what}${fault instanceof Error && fault.stack ? `\n${fault.stack}` : ''}`);
   }
 }
 
