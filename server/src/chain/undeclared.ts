@@ -28,8 +28,8 @@ const MOST_ZONES = 64;
 /** Pieces that are searched for their least before the rest are taken at their bounds. */
 const MOST_SEARCHED = 4096;
 
-/** Differences below this don't make one frequency worse than another. */
-const CLOSE_DB = 1e-6;
+/** Where no more than this can be gained by looking on, the bound is taken: an equal ripple would never end. */
+const CLOSE_DB = 0.01;
 
 /** The bound on what is not declared: the same at every frequency, or a curve. */
 interface Bound {
@@ -122,7 +122,7 @@ function searched(chain: Chain, entersAtSensor: boolean, curve: Response | undef
     const before = found[stage];
     const { lowHz, highHz } = trueRange(image, zone, path);
     const boundDb = image.laterDb + sumOfLeast(ahead, lowHz, highHz);
-    if (before && boundDb >= before.attenuationDb - CLOSE_DB) return;
+    if (before && boundDb >= before.attenuationDb) return;
     const isSearched = !image.piece.collapsed && searches++ < MOST_SEARCHED;
     const least = isSearched ? leastOf(image, zone, ahead, path) : { attenuationDb: boundDb, atHz: lowHz };
     if (!before || least.attenuationDb < before.attenuationDb) found[stage] = least;
@@ -134,7 +134,10 @@ function searched(chain: Chain, entersAtSensor: boolean, curve: Response | undef
       const beyondHz = trueRange(image, zone, path).lowHz;
       const boundDb = image.laterDb + sumOfLeast(ahead, beyondHz, Infinity);
       const before = found[0];
-      if (before && boundDb >= before.attenuationDb - CLOSE_DB) break;
+      if (before && boundDb >= before.attenuationDb - CLOSE_DB) {
+        if (boundDb < before.attenuationDb) found[0] = { attenuationDb: boundDb, atHz: before.atHz };
+        break;
+      }
       if (zone === MOST_ZONES) found[0] = { attenuationDb: boundDb, atHz: beyondHz };
       else consider(0, image, zone);
     }

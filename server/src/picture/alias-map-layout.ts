@@ -49,11 +49,12 @@ export function layOut(map: AliasMap, width: number, height: number): MapLayout 
   };
 }
 
-/** A mark's ends on the map; `undefined` where it comes from a stretch that is not shown. */
+/** A mark's ends on the map; `undefined` where it comes from a stretch that is not shown, or has no place on the line. */
 export function endsOf(
-  { from, to }: Mark,
+  { from, to, isOnLine }: Mark,
   { trueAxes, recordedAxis }: MapLayout,
 ): { readonly x1: number; readonly y1: number; readonly x2: number; readonly y2: number } | undefined {
+  if (!isOnLine) return undefined;
   const middle = (from.trueHz + to.trueHz) / 2;
   const axis = trueAxes.find(({ low, high }) => middle >= low && middle <= high);
   if (!axis) return undefined;

@@ -11,10 +11,17 @@ export type MarkKind = 'native' | 'harmless' | 'spoils';
 /** An arrival as a mark on the fold line and a line of the record's spectrum. */
 export interface Mark {
   readonly kind: MarkKind;
+  readonly sourceName: string;
+  /** The source's name, with the component where that is not its plain self. */
   readonly label: string;
+  /** Where it comes from and where it arrives, as labels say it. */
+  readonly trueText: string;
+  readonly recordedText: string;
   /** Ends of a range, the same point twice for a single frequency. */
   readonly from: FoldPoint;
   readonly to: FoldPoint;
+  /** False for what stands for more folds than can be told apart: it has no place on the fold line. */
+  readonly isOnLine: boolean;
   readonly recordedLowHz: number;
   readonly recordedHighHz: number;
   readonly level: number;
@@ -30,6 +37,8 @@ export interface AliasMap {
   readonly description: string;
   readonly recordRateHz: number;
   readonly nyquistHz: number;
+  /** The rate of each sampling, the record's last. */
+  readonly ratesHz: readonly number[];
   readonly bandLowHz: number;
   readonly bandHighHz: number;
   readonly stretches: readonly (Stretch & { readonly line: FoldLine })[];
@@ -47,6 +56,7 @@ export interface AliasMap {
 /** More marks than this make a picture that nobody reads; the lightest are left out and counted. */
 const MOST_MARKS = 160;
 const LEAST_FADE_DB = 40;
+const LONGEST_NAME = 28;
 
 /** What the picture of a channel's alias map shows. */
 export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
@@ -65,6 +75,7 @@ export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): Alias
     description: describe(chain, arrivals),
     recordRateHz: last.rateHz,
     nyquistHz: last.nyquistHz,
+    ratesHz: chain.ratesHz,
     bandLowHz: chain.bandLowHz,
     bandHighHz: chain.bandHighHz,
     stretches: stretchesOf(chain, arrivals).map((stretch) => ({
@@ -84,11 +95,16 @@ export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): Alias
 function markOf(arrival: Arrival, chain: Chain): Mark {
   const kind: MarkKind = arrival.overLimit ? 'spoils' : arrival.folded ? 'harmless' : 'native';
   const rank = kind === 'spoils' ? 3_000 : arrival.inBand ? (kind === 'native' ? 2_000 : 1_000) : 0;
+  const from = pointAt(chain, arrival.trueLowHz);
+  const to = pointAt(chain, arrival.trueHighHz);
   return {
     kind,
+    sourceName: clipped(arrival.source.name),
     label: labelOf(arrival),
-    from: pointAt(chain, arrival.trueLowHz),
-    to: pointAt(chain, arrival.trueHighHz),
+    ...placesOf(arrival, chain),
+    from,
+    to,
+    isOnLine: isStraight(from, to),
     recordedLowHz: arrival.recordedLowHz,
     recordedHighHz: arrival.recordedHighHz,
     level: arrival.level,
@@ -97,11 +113,36 @@ function markOf(arrival: Arrival, chain: Chain): Mark {
   };
 }
 
-/** A source's name, with the component where that is not its plain self. */
+/** A single frequency without its tolerance, or the ends of a range. */
+function placesOf(arrival: Arrival, chain: Chain): Pick<Mark, 'trueText' | 'recordedText'> {
+  const { nominalHz } = arrival;
+  if (nominalHz === undefined) {
+    return {
+      trueText: spanText(arrival.trueLowHz, arrival.trueHighHz),
+      recordedText: spanText(arrival.recordedLowHz, arrival.recordedHighHz),
+    };
+  }
+  return { trueText: formatHz(nominalHz, 4), recordedText: formatHz(pointAt(chain, nominalHz).recordedHz, 4) };
+}
+
+function spanText(lowHz: number, highHz: number): string {
+  return lowHz === highHz ? formatHz(lowHz, 4) : `${formatHz(lowHz, 3)} .. ${formatHz(highHz, 3)}`;
+}
+
+/** Along a piece of the fold line a step of true frequency is as large a step of recorded frequency. */
+function isStraight(from: FoldPoint, to: FoldPoint): boolean {
+  const trueSpan = Math.abs(to.trueHz - from.trueHz);
+  return Math.abs(Math.abs(to.recordedHz - from.recordedHz) - trueSpan) <= 1e-6 * Math.max(trueSpan, to.trueHz * 1e-6);
+}
+
 function labelOf({ source, component }: Arrival): string {
-  return component === 'fundamental' || component === 'carrier'
-    ? source.name
-    : `${source.name} ${shortComponent(component)}`;
+  const name = clipped(source.name);
+  return component === 'fundamental' || component === 'carrier' ? name : `${name} ${shortComponent(component)}`;
+}
+
+function clipped(name: string): string {
+  const characters = [...name];
+  return characters.length <= LONGEST_NAME ? name : `${characters.slice(0, LONGEST_NAME - 1).join('')}…`;
 }
 
 function shortComponent(component: string): string {

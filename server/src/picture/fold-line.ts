@@ -11,17 +11,20 @@ export interface FoldPoint {
 /** The straight pieces of the fold line over a stretch of true frequency, each as points of ascending frequency. */
 export type FoldLine = readonly (readonly FoldPoint[])[];
 
-/** Points on each straight piece: enough for it to fade smoothly. */
-const POINTS_A_PIECE = 9;
-/** A picture with more pieces than this shows a grey block; a stretch is chosen so that it has fewer. */
+/** Points on all pieces together: enough for what the filters take off to be followed smoothly. */
+const POINTS = 320;
+const LEAST_POINTS_A_PIECE = 5;
+/** More pieces than this on one stretch are a thicket; stretches are chosen so that they have fewer. */
 const MOST_PIECES = 96;
 
 /** The fold line over a stretch of true frequency. */
 export function foldLineOf(chain: Chain, lowHz: number, highHz: number): FoldLine {
-  return foldThrough(lowHz, highHz, chain.ratesHz, MOST_PIECES).map((piece) =>
-    Array.from({ length: POINTS_A_PIECE }, (_, index) => {
-      const trueHz = piece.trueLowHz + ((piece.trueHighHz - piece.trueLowHz) * index) / (POINTS_A_PIECE - 1);
-      return pointAt(chain, trueHz);
+  const pieces = foldThrough(lowHz, highHz, chain.ratesHz, MOST_PIECES).filter(({ collapsed }) => !collapsed);
+  const count = Math.max(LEAST_POINTS_A_PIECE, Math.round(POINTS / Math.max(1, pieces.length)));
+  return pieces.map(({ trueLowHz, trueHighHz }) =>
+    Array.from({ length: count }, (_, index) => {
+      const part = index / (count - 1);
+      return pointAt(chain, index === count - 1 ? trueHighHz : trueLowHz + (trueHighHz - trueLowHz) * part);
     }),
   );
 }

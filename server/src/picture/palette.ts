@@ -14,6 +14,8 @@ export interface Palette {
   readonly bandEdge: string;
   readonly native: string;
   readonly spoils: string;
+  /** How much is left, of 1, of a fold line that has faded: a trace of where it goes on. */
+  readonly faintest: number;
 }
 
 const LIGHT: Palette = {
@@ -26,6 +28,7 @@ const LIGHT: Palette = {
   bandEdge: '#7c99ad',
   native: '#1f5f8b',
   spoils: '#b3261e',
+  faintest: 0.1,
 };
 
 const PALETTES: Readonly<Record<PictureTheme, Palette>> = {
@@ -41,6 +44,7 @@ const PALETTES: Readonly<Record<PictureTheme, Palette>> = {
     bandEdge: '#5f86a3',
     native: '#86c0ea',
     spoils: '#ff8a75',
+    faintest: 0.12,
   },
   'high-contrast': {
     background: 'none',
@@ -52,6 +56,7 @@ const PALETTES: Readonly<Record<PictureTheme, Palette>> = {
     bandEdge: '#ffffff',
     native: '#7fd4ff',
     spoils: '#ffb000',
+    faintest: 0.28,
   },
   'high-contrast-light': {
     background: 'none',
@@ -63,6 +68,7 @@ const PALETTES: Readonly<Record<PictureTheme, Palette>> = {
     bandEdge: '#000000',
     native: '#00407a',
     spoils: '#9c0000',
+    faintest: 0.25,
   },
 };
 

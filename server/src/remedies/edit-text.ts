@@ -1,7 +1,7 @@
 import type { Entry } from '../rig/entry.ts';
 import type { Place } from '../rig/place.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
-import type { MapNode, TreeNode } from '../rig/tree.ts';
+import type { MapNode, ScalarNode, TreeNode } from '../rig/tree.ts';
 import type { NewValue, Quote, TextStyle } from './written-value.ts';
 import { pairText, scalarText, valueText } from './written-value.ts';
 
@@ -10,18 +10,65 @@ import { pairText, scalarText, valueText } from './written-value.ts';
  * answers `undefined` where the text is not of a kind that it can edit without harm.
  */
 
-/** Puts a text in place of a scalar, inside the quotes that it had. */
+/** Puts a text in place of a scalar, inside the quotes that it had; the place may be that between its quotes. */
 export function replaceScalar(snapshot: Snapshot, place: Place, text: string): TextEdit | undefined {
   const start = snapshot.startOf(place.entry);
   if (start === undefined) return undefined;
-  const old = place.entry.text.slice(place.start, place.end);
+  const { start: from, end: to } = withQuotes(place);
+  const old = place.entry.text.slice(from, to);
   if (/^[|>]/.test(old)) return undefined;
-  const style = styleAt(snapshot, place.entry, place.start);
-  return {
-    start: start + place.start,
-    end: start + place.end,
-    text: scalarText(text, style, quoteOf(old)),
-  };
+  const style = styleAt(snapshot, place.entry, from);
+  return { start: start + from, end: start + to, text: scalarText(text, style, quoteOf(old)) };
+}
+
+/**
+ * Puts a text in place of a part of a scalar, or behind it where `start` and `end` are one. A plain scalar gets quotes
+ * where the whole needs them.
+ */
+export function replacePart(snapshot: Snapshot, place: Place, text: string): TextEdit | undefined {
+  const { entry } = place;
+  const scalar = scalarAround(entry, place);
+  const start = snapshot.startOf(entry);
+  if (start === undefined) return undefined;
+  if (scalar?.style !== 'plain') return { start: start + place.start, end: start + place.end, text };
+  const whole = entry.text.slice(scalar.start, place.start) + text + entry.text.slice(place.end, scalar.end);
+  return replaceScalar(snapshot, { entry, start: scalar.start, end: scalar.end }, whole);
+}
+
+/** The key or value that a place is in. */
+function scalarAround(entry: Entry, place: Place): ScalarNode | undefined {
+  if (entry.key && contains(entry.key, place)) return entry.key;
+  return scalarIn(entry.value, place);
+}
+
+function scalarIn(node: TreeNode, place: Place): ScalarNode | undefined {
+  if (node.kind === 'scalar') return contains(node, place) ? node : undefined;
+  if (node.kind === 'list') return firstScalar(node.items, place);
+  if (node.kind === 'map')
+    return firstScalar(
+      node.pairs.flatMap(({ key, value }) => [key, value]),
+      place,
+    );
+  return undefined;
+}
+
+function firstScalar(nodes: readonly TreeNode[], place: Place): ScalarNode | undefined {
+  for (const node of nodes) {
+    const found = scalarIn(node, place);
+    if (found) return found;
+  }
+  return undefined;
+}
+
+function contains(node: TreeNode, place: Place): boolean {
+  return node.start <= place.start && place.end <= node.end;
+}
+
+/** A place between quotes, with its quotes. */
+function withQuotes({ entry, start, end }: Place): { readonly start: number; readonly end: number } {
+  const before = entry.text[start - 1];
+  const isBetween = (before === '"' || before === "'") && entry.text[end] === before;
+  return isBetween ? { start: start - 1, end: end + 1 } : { start, end };
 }
 
 /** Puts any value in place of a node. */

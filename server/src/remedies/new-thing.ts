@@ -2,7 +2,7 @@ import type { Entry, NamedSection } from '../rig/entry.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 import { columnOf, isFlowEntry, lineEndAfter, setKey, significantEnd, styleAt } from './edit-text.ts';
 import type { NewValue } from './written-value.ts';
-import { pairText, valueText } from './written-value.ts';
+import { pairText } from './written-value.ts';
 
 /** A name that no entry of the section has: the wanted one, or that with a number after it. */
 export function freeName(snapshot: Snapshot, section: NamedSection, wanted: string): string {
@@ -22,7 +22,7 @@ export function addThing(
   name: string,
   value: NewValue,
 ): readonly TextEdit[] | undefined {
-  const last = snapshot.entries.findLast((entry) => entry.section === section);
+  const last = snapshot.entries.filter((entry) => entry.section === section).at(-1);
   if (last) return afterThing(snapshot, last, name, value);
   const head = snapshot.entries.find((entry) => entry.section === undefined && entry.name === section);
   if (head) return intoEmptySection(snapshot, head, name, value);
@@ -86,14 +86,24 @@ function withNewSection(
   ];
 }
 
-function firstInFlow(snapshot: Snapshot, section: NamedSection, value: NewValue): readonly TextEdit[] | undefined {
+/** Writes a top-level key ahead of all others. */
+export function firstPair(snapshot: Snapshot, key: string, value: NewValue): readonly TextEdit[] | undefined {
+  if (snapshot.style === 'flow') return firstInFlow(snapshot, key, value);
+  const first = snapshot.entries[0];
+  if (!first) return undefined;
+  const start = snapshot.startOf(first);
+  const { lineEnd } = styleAt(snapshot, first, 0);
+  if (start === undefined) return undefined;
+  return [{ start, end: start, text: pairText(key, value, { json: false, flow: false, lineEnd }) + lineEnd }];
+}
+
+function firstInFlow(snapshot: Snapshot, key: string, value: NewValue): readonly TextEdit[] | undefined {
   const first = snapshot.entries[0];
   const start = first && snapshot.startOf(first);
   if (!first?.key || start === undefined) return undefined;
-  const style = styleAt(snapshot, first, 0);
+  const style = { ...styleAt(snapshot, first, 0), flow: true };
   const at = start + first.key.start;
   const gap = /\s*$/.exec(snapshot.sliceText(Math.max(0, at - 200), at))?.[0] ?? '';
-  const key = style.json ? JSON.stringify(section) : section;
   const separator = gap.includes('\n') ? gap : ' ';
-  return [{ start: at, end: at, text: `${key}: ${valueText(value, style)},${separator}` }];
+  return [{ start: at, end: at, text: `${pairText(key, value, style)},${separator}` }];
 }

@@ -136,7 +136,7 @@ function noKeyProblem(root: TreeNode): Problem {
   const { start, end } = root;
   const message =
     root.kind === 'list'
-      ? 'A list can’t stand here: a name and a colon are due.'
+      ? "A list can't stand here: a name and a colon are due."
       : 'A colon and a value are missing after this.';
   return { name: 'syntax', start, end, message };
 }

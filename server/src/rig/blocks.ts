@@ -35,7 +35,6 @@ const LINE_FEED = 10;
 const CARRIAGE_RETURN = 13;
 const HASH = 35;
 const DASH = 45;
-const PERCENT = 37;
 const BYTE_ORDER_MARK = 0xfeff;
 
 const HEAD = /^(?:"([a-z]+)"|'([a-z]+)'|([a-z]+))[ \t]*:(?:[ \t]+[&!]\S*)*(?:[ \t]+#.*)?[ \t]*\r?$/;
@@ -246,7 +245,7 @@ function isWhite(code: number): boolean {
 /** A directive, or the first `---` with nothing but a comment behind it. */
 function isPreludeLine(text: string, at: number, first: number, end: number, sawDocumentStart: boolean): boolean {
   if (first - at > (at === 0 && text.charCodeAt(0) === BYTE_ORDER_MARK ? 1 : 0) || sawDocumentStart) return false;
-  if (text.charCodeAt(first) === PERCENT) return true;
+  if (text.startsWith('%YAML ', first) || text.startsWith('%TAG ', first)) return true;
   if (!isMarker(text, first, '---')) return false;
   const rest = text.slice(first + 3, end).trim();
   return rest === '' || rest.startsWith('#');

@@ -10,7 +10,7 @@ export interface Inheritance {
 
 /**
  * A value as somebody wrote it. Numbers are in base units (Hz, s, V, m/s2, ...; ratios as fractions; angles in
- * radians) or in the unit that the field's name says.
+ * degrees) or in the unit that the field's name says.
  */
 export interface Given<T> {
   readonly value: T;

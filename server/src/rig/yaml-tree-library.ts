@@ -38,7 +38,7 @@ function compose(text: string): YamlReading {
     addErrors(text, document.errors, problems);
     if (second) {
       const start = second.range[0];
-      problems.push(syntax(start, Math.max(start, second.range[1]), 'A second document can’t stand in a rig file.'));
+      problems.push(syntax(start, Math.max(start, second.range[1]), "A second document can't stand in a rig file."));
     }
     return { root, problems: inOrder(problems) };
   } catch {

@@ -10,11 +10,11 @@ export function plainMessage({ code, message }: YAMLParseError): string {
     case 'BAD_DQ_ESCAPE':
       return 'This is no escape sequence of a double-quoted text: write \\\\ for a backslash.';
     case 'BAD_SCALAR_START':
-      return 'A value can’t start with this character: put the value in quotes.';
+      return "A value can't start with this character: put the value in quotes.";
     case 'BAD_PROP_ORDER':
       return 'An anchor or tag stands after the indicator that it belongs to, not before it.';
     case 'BLOCK_AS_IMPLICIT_KEY':
-      return 'A second "key: value" can’t stand on the same line: start a new line, or put the value in quotes.';
+      return `A second "key: value" can't stand on the same line: start a new line, or put the value in quotes.`;
     case 'BLOCK_IN_FLOW':
       return 'Inside { } and [ ] everything is written with commas and brackets, not by indentation.';
     case 'KEY_OVER_1024_CHARS':
@@ -43,7 +43,7 @@ export function plainMessage({ code, message }: YAMLParseError): string {
   }
 }
 
-export const TABS_MESSAGE = 'Tabs can’t indent YAML: use spaces.';
+export const TABS_MESSAGE = "Tabs can't indent YAML: use spaces.";
 export const UNCLOSED_QUOTE_MESSAGE = 'The quote opened here is never closed.';
 
 export function unclosedBracketMessage(bracket: string): string {
@@ -80,5 +80,5 @@ function unexpectedMessage(message: string): string {
   if (message.includes('Unexpected flow-seq-end') || message.includes('Unexpected flow-map-end')) {
     return 'This bracket closes nothing.';
   }
-  return 'This can’t stand here: is a quote, a comma or a colon missing before it?';
+  return "This can't stand here: is a quote, a comma or a colon missing before it?";
 }

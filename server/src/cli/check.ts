@@ -1,0 +1,123 @@
+import { CHECK_NAMES } from '../checks/list.ts';
+import { nearest } from '../quantity/spelling.ts';
+import type { FileReport, ReportedFinding } from '../report/findings-json.ts';
+import { findingsJson, summaryOf } from '../report/findings-json.ts';
+import { findingsText, summaryText } from '../report/findings-text.ts';
+import { locatedFindings } from '../workbench/findings.ts';
+import type { Workbench } from '../workbench/workbench.ts';
+import type { Command } from './command.ts';
+import { deliver } from './command.ts';
+import { findFiles } from './find-files.ts';
+import type { CommandIo, ExitCode } from './io.ts';
+import { graver, UsageError } from './io.ts';
+import { newWorkbench, type OpenedRig, openRig } from './open-rig.ts';
+import type { ParsedOptions } from './options.ts';
+import { choice, failOn, fails, listOf, paintFor, parseOptions } from './options.ts';
+import { progressOver } from './progress.ts';
+
+const OPTIONS = {
+  format: { type: 'string' },
+  'fail-on': { type: 'string' },
+  only: { type: 'string' },
+  remedies: { type: 'boolean' },
+  'stdin-filename': { type: 'string' },
+} as const;
+
+export const check: Command = {
+  name: 'check',
+  summary: 'check rig files and say what will spoil the data',
+  help: `Usage: ratewright check [PATH...]
+
+Checks rig files. A PATH is a file, a folder (searched for *.rig.yaml, *.rig.yml
+and *.rig.json, honouring .gitignore) or - for standard input; without one, the
+folder here.
+
+  --format text|json        how results are written (text)
+  --fail-on error|warning|hint|none
+                            the least severity that exits with 1 (error)
+  --only NAME,...           only these checks
+  --remedies                search the remedies of every finding and list them
+  --stdin-filename NAME     what to call standard input (stdin.rig.yaml)
+  -o, --output FILE         write results to FILE
+  -q, --quiet               no summary and no progress
+  --color auto|always|never
+
+Exit: 0 nothing at or above the severity, 1 findings, 2 something could not be read.
+`,
+  run: runCheck,
+};
+
+async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCode> {
+  const options = parseOptions(argv, OPTIONS);
+  const format = choice(options, 'format', ['text', 'json'] as const, 'text');
+  const from = failOn(options);
+  const only = checkNames(listOf(options.text('only')));
+  const paths = options.words.length === 0 ? ['.'] : options.words;
+  const found = findFiles(
+    paths.filter((path) => path !== '-'),
+    io.cwd,
+  );
+  for (const { path, reason } of found.faults) io.stderr(`ratewright: ${path} ${reason}\n`);
+  let exit: ExitCode = found.faults.length > 0 ? 2 : 0;
+
+  const files = [...(paths.includes('-') ? ['-'] : []), ...found.files];
+  if (files.length === 0 && exit === 0)
+    io.stderr('ratewright: no rig files here (*.rig.yaml, *.rig.yml, *.rig.json)\n');
+  const progress = progressOver(files.length, options.flag('quiet'), io);
+  const reports: FileReport[] = [];
+  for (const [index, path] of files.entries()) {
+    const workbench = newWorkbench(io);
+    const rig = await openRig(workbench, path, io, options.text('stdin-filename') ?? 'stdin.rig.yaml');
+    progress.step(index + 1);
+    if ('fault' in rig) {
+      progress.clear();
+      io.stderr(`ratewright: ${rig.path} ${rig.fault}\n`);
+      exit = 2;
+      continue;
+    }
+    reports.push(reportOf(rig, workbench, only, options));
+  }
+  progress.clear();
+
+  if (reports.some(({ findings }) => findings.some(({ finding }) => fails(finding.severity, from))))
+    exit = graver(exit, 1);
+  const paint = paintFor(options, io);
+  if (format === 'json') return graver(exit, deliver(findingsJson(reports), options, io));
+  const text = reports.map((report) => findingsText(report, paint)).join('');
+  const summary = options.flag('quiet') ? '' : summaryText(reports.length, summaryOf(reports), paint);
+  return graver(exit, deliver(text + summary, options, io));
+}
+
+function reportOf(
+  rig: Exclude<OpenedRig, { readonly fault: string }>,
+  workbench: Workbench,
+  only: ReadonlySet<string> | undefined,
+  options: ParsedOptions,
+): FileReport {
+  const findings = locatedFindings(rig.evaluation)
+    .filter(({ finding }) => !only || only.has(finding.check))
+    .map(
+      (located): ReportedFinding =>
+        options.flag('remedies')
+          ? {
+              ...located,
+              remedies: workbench.remedies(rig.uri, located.finding, () => false),
+            }
+          : located,
+    );
+  return {
+    path: rig.path,
+    text: rig.text,
+    channels: rig.evaluation.channels.length,
+    findings,
+  };
+}
+
+function checkNames(names: readonly string[] | undefined): ReadonlySet<string> | undefined {
+  for (const name of names ?? []) {
+    if (CHECK_NAMES.includes(name)) continue;
+    const near = nearest(name, CHECK_NAMES);
+    throw new UsageError(`there is no check '${name}'${near === undefined ? '' : `; the nearest is '${near}'`}`);
+  }
+  return names && new Set(names);
+}

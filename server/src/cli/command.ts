@@ -1,0 +1,36 @@
+import { writeFileSync } from 'node:fs';
+import { resolve } from 'node:path';
+import type { CommandIo, ExitCode } from './io.ts';
+import type { ParsedOptions } from './options.ts';
+import { reasonOf } from './read-file.ts';
+import { replaceFile } from './write-file.ts';
+
+/** One command of the command line. */
+export interface Command {
+  readonly name: string;
+  /** One line for the list of commands. */
+  readonly summary: string;
+  /** The whole help text. */
+  readonly help: string;
+  /** @throws UsageError where its words do not make sense */
+  readonly run: (argv: readonly string[], io: CommandIo) => Promise<ExitCode>;
+}
+
+/** Puts results where they are wanted: the file of `--output`, or standard output. */
+export function deliver(result: string, options: ParsedOptions, io: CommandIo): ExitCode {
+  const output = options.text('output');
+  if (output === undefined || output === '-') {
+    io.stdout(result);
+    return 0;
+  }
+  const path = resolve(io.cwd, output);
+  try {
+    // What is no regular file (a pipe, /dev/null) can't be replaced, only written to.
+    if (path.startsWith('/dev/')) writeFileSync(path, result);
+    else replaceFile(path, result);
+    return 0;
+  } catch (fault) {
+    io.stderr(`ratewright: ${output} ${reasonOf(fault).replace("can't be read", "can't be written")}\n`);
+    return 2;
+  }
+}

@@ -1,0 +1,38 @@
+import { resolve } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import type { Evaluation } from '../workbench/evaluation.ts';
+import { Workbench } from '../workbench/workbench.ts';
+import type { CommandIo } from './io.ts';
+import type { ReadText } from './read-file.ts';
+import { decode, readText } from './read-file.ts';
+
+/** A rig file as read and evaluated, or why it was not. */
+export type OpenedRig =
+  | {
+      readonly path: string;
+      readonly uri: string;
+      readonly text: string;
+      readonly evaluation: Evaluation;
+    }
+  | { readonly path: string; readonly fault: string };
+
+/** A workbench whose own faults go to standard error. */
+export function newWorkbench(io: CommandIo): Workbench {
+  return new Workbench((message) => io.stderr(`ratewright: ${message}\n`));
+}
+
+/** Reads a file, or standard input where the path is `-`, and has the workbench evaluate it. */
+export async function openRig(
+  workbench: Workbench,
+  path: string,
+  io: CommandIo,
+  stdinName: string,
+): Promise<OpenedRig> {
+  const shown = path === '-' ? stdinName : path;
+  const read: ReadText = path === '-' ? decode(await io.readStdin()) : readText(resolve(io.cwd, path));
+  if ('fault' in read) return { path: shown, fault: read.fault };
+  const uri = pathToFileURL(resolve(io.cwd, shown)).href;
+  workbench.setFile(uri, read);
+  const evaluation = workbench.evaluation(uri);
+  return evaluation ? { path: shown, uri, text: read.text, evaluation } : { path: shown, fault: "can't be read" };
+}

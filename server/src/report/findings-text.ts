@@ -1,0 +1,53 @@
+import type { FileReport, ReportedFinding, Summary } from './findings-json.ts';
+import type { Paint } from './paint.ts';
+
+/**
+ * The findings of one file as text: place, severity and check on a line, then what will happen to the data, then the
+ * places that matter besides. Lines and characters count from 1 here, as editors show them.
+ */
+export function findingsText(file: FileReport, paint: Paint): string {
+  return file.findings.map((reported) => findingText(file.path, reported, paint)).join('');
+}
+
+function findingText(path: string, { finding, range, remedies }: ReportedFinding, paint: Paint): string {
+  const place = `${path}:${range.start.line + 1}:${range.start.character + 1}`;
+  const subject = finding.channel ?? finding.thing;
+  const head = [
+    paint(place, 'strong'),
+    paint(finding.severity, finding.severity),
+    finding.check,
+    ...(subject === undefined || subject === '' ? [] : [paint(`(${subject})`, 'quiet')]),
+  ].join('  ');
+  const lines = [head, ...wrapped(finding.message, 96).map((line) => `    ${line}`)];
+  for (const remedy of remedies ?? []) {
+    lines.push(
+      ...wrapped(remedy.title, 92).map(
+        (line, index) => `    ${index === 0 ? (remedy.preferred ? '* ' : '- ') : '  '}${line}`,
+      ),
+    );
+  }
+  return `${lines.join('\n')}\n\n`;
+}
+
+/** One line: what was checked, and how much was found. */
+export function summaryText(files: number, { error, warning, hint, channels }: Summary, paint: Paint): string {
+  const part = (count: number, one: string, ink: 'error' | 'warning' | 'hint'): string =>
+    count === 0 ? `no ${one}s` : paint(counted(count, one), ink);
+  const checked = `${counted(channels, 'channel')} in ${counted(files, 'file')} checked`;
+  return `${checked}: ${part(error, 'error', 'error')}, ${part(warning, 'warning', 'warning')}, ${part(hint, 'hint', 'hint')}.\n`;
+}
+
+function counted(count: number, one: string): string {
+  return `${count} ${one}${count === 1 ? '' : 's'}`;
+}
+
+/** Breaks a text at spaces into lines of at most `width` characters; a longer word has a line of its own. */
+function wrapped(text: string, width: number): string[] {
+  const lines: string[] = [];
+  for (const word of text.split(/\s+/)) {
+    const last = lines.at(-1);
+    if (last !== undefined && last.length + 1 + word.length <= width) lines[lines.length - 1] = `${last} ${word}`;
+    else lines.push(word);
+  }
+  return lines;
+}

@@ -1,0 +1,49 @@
+import type { Arrival, Chain } from '../chain/model.ts';
+import { reported } from './number.ts';
+
+/** The alias map of one channel as data. */
+export function mapJson(file: string, chain: Chain, arrivals: readonly Arrival[], findings: readonly string[]): string {
+  const map = {
+    version: 1,
+    file,
+    channel: chain.channel.name,
+    stages: chain.stages.map(({ rateHz, nyquistHz }) => ({ rateHz: reported(rateHz), nyquistHz: reported(nyquistHz) })),
+    bandHz: [reported(chain.bandLowHz), reported(chain.bandHighHz)],
+    margin: reported(chain.margin),
+    ...levelKey('foldLimit', chain, chain.foldLimit),
+    arrivals: arrivals.map((arrival) => arrivalJson(arrival, chain)),
+    findings,
+  };
+  return `${JSON.stringify(map, undefined, 2)}\n`;
+}
+
+function arrivalJson(arrival: Arrival, chain: Chain): object {
+  return {
+    source: arrival.source.name,
+    component: arrival.component,
+    trueHz: [reported(arrival.trueLowHz), reported(arrival.trueHighHz)],
+    recordedHz: [reported(arrival.recordedLowHz), reported(arrival.recordedHighHz)],
+    ...levelKey('level', chain, arrival.level),
+    attenuationDb: reported(arrival.attenuationDb),
+    folded: arrival.folded,
+    foldsAtStage: arrival.foldsAtStage,
+    mirrored: arrival.mirrored,
+    inBand: arrival.inBand,
+    overLimit: arrival.overLimit,
+  };
+}
+
+/** A level under a name that tells its scale: dBFS where there is a full scale. */
+function levelKey(name: 'foldLimit' | 'level', chain: Chain, level: number): Readonly<Record<string, number | null>> {
+  const value = Number.isFinite(level) ? reported(level) : null;
+  switch (chain.levelUnit) {
+    case 'dbfs':
+      return { [`${name}Dbfs`]: value };
+    case 'db-volt':
+      return { [`${name}DbVolt`]: value };
+    case 'db-measured':
+      return { [`${name}DbMeasured`]: value };
+    case 'relative':
+      return { [`${name}Db`]: value };
+  }
+}
