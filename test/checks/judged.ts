@@ -1,5 +1,6 @@
+import type { Guard } from '../../server/src/checks/channel-result.ts';
 import type { Finding } from '../../server/src/checks/finding.ts';
-import { type Guard, judgeChannel, judgeRig } from '../../server/src/checks/judge.ts';
+import { judgeChannel, judgeRig } from '../../server/src/checks/judge.ts';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';

@@ -1,11 +1,9 @@
 import type { HeardSource, Source } from '../rig/model.ts';
 import { type FoldedPiece, foldThrough } from '../signal/folding.ts';
 import { type Component, componentsOf } from './components.ts';
-import type { LevelScale } from './level-scale.ts';
-import type { Arrival, Chain } from './model.ts';
+import type { Arrival, Chain, LevelScale, SignalPath } from './model.ts';
 import { onNyquistAtStage } from './on-nyquist.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
-import type { SignalPath } from './signal-path.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
 import { type Strongest, strongestOf } from './strongest.ts';
 

@@ -1,8 +1,8 @@
 import type { Channel } from '../rig/model.ts';
 import { levelScaleOf } from './level-scale.ts';
-import type { Chain, Stage, StageFilter } from './model.ts';
+import type { Chain, SignalPath, Stage, StageFilter } from './model.ts';
 import { exactRate } from './reachable.ts';
-import type { PlannedFilter, SignalPath } from './signal-path.ts';
+import type { PlannedFilter } from './signal-path.ts';
 import { planOf, signalPathOf } from './signal-path.ts';
 
 /**

@@ -2,27 +2,10 @@ import { quantityOfLevel, quantityOfSensor } from '../rig/levels.ts';
 import type { Channel, Level, Limit, Sensor } from '../rig/model.ts';
 import { decibels } from '../signal/decibel.ts';
 import { fullScalePeakV } from '../signal/levels.ts';
-import type { LevelUnit } from './model.ts';
+import type { LevelScale, LevelUnit } from './model.ts';
 
 /** 0.1 % of full scale: what may fold where nothing is said, and what full scale is assumed to be above any limit. */
 export const DEFAULT_FOLD_LIMIT_DB = -60;
-
-/** What one volt, one measured unit and 0 dBFS have to do with one another on a channel. */
-export interface LevelScale {
-  /** The scale on which this channel's levels and limits are compared. */
-  readonly unit: LevelUnit;
-  /** Peak volts of a full-scale sinusoid at the digitizer's input; `undefined` without a full scale. */
-  readonly fullScaleV: number | undefined;
-  /** Volts per base unit at the sensor; `undefined` without a sensitivity. */
-  readonly sensitivity: number | undefined;
-  /** Whose measured unit levels may be in. */
-  readonly sensor: Sensor | undefined;
-  readonly foldLimit: number;
-  /** True where the fold limit that was given can't be placed on the scale and the default stands in for it. */
-  readonly foldLimitAssumed: boolean;
-  /** What full scale is on this scale: 0 dB, or an assumed 60 dB above the fold limit where the scale has none. */
-  readonly fullScaleDb: number;
-}
 
 /** Where a level enters the channel. */
 export type Entry = 'sensor' | 'wiring';

@@ -1,7 +1,5 @@
-import type { Channel, FilterUse, Source, Step } from '../rig/model.ts';
+import type { Channel, FilterUse, Sensor, Source, Step } from '../rig/model.ts';
 import type { Response } from '../signal/response.ts';
-import type { LevelScale } from './level-scale.ts';
-import type { SignalPath } from './signal-path.ts';
 
 /** One sampling of the chain: the converter's, or a decimation's. */
 export interface Stage {
@@ -28,6 +26,38 @@ export interface StageFilter {
  * of what is measured. `relative` is dBFS of a full scale whose volts nobody knows.
  */
 export type LevelUnit = 'dbfs' | 'db-volt' | 'db-measured' | 'relative';
+
+/** What one volt, one measured unit and 0 dBFS have to do with one another on a channel. */
+export interface LevelScale {
+  /** The scale on which this channel's levels and limits are compared. */
+  readonly unit: LevelUnit;
+  /** Peak volts of a full-scale sinusoid at the digitizer's input; `undefined` without a full scale. */
+  readonly fullScaleV: number | undefined;
+  /** Volts per base unit at the sensor; `undefined` without a sensitivity. */
+  readonly sensitivity: number | undefined;
+  /** Whose measured unit levels may be in. */
+  readonly sensor: Sensor | undefined;
+  readonly foldLimit: number;
+  /** True where the fold limit that was given can't be placed on the scale and the default stands in for it. */
+  readonly foldLimitAssumed: boolean;
+  /** What full scale is on this scale: 0 dB, or an assumed 60 dB above the fold limit where the scale has none. */
+  readonly fullScaleDb: number;
+}
+
+/** What filters and sampling do to a signal: the same object for every channel whose filters and rates are the same. */
+export interface SignalPath {
+  /** The rate of each stage, the converter's first. */
+  readonly ratesHz: readonly number[];
+  /** Of the filters ahead of each stage in turn, and last of those behind the last stage; `undefined` for one not understood. */
+  readonly responses: readonly (readonly (Response | undefined)[])[];
+  /** The same without the gaps. */
+  readonly known: readonly (readonly Response[])[];
+  readonly sensor: Response;
+  /** True where the sensor does the same to every frequency. */
+  readonly sensorIsFlat: boolean;
+  /** Of everything that is derived from the clock, relative. */
+  readonly clockTolerance: number;
+}
 
 /** A channel's way from the sensor to the record. */
 export interface Chain {

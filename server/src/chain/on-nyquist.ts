@@ -1,6 +1,6 @@
 import { foldHz } from '../signal/folding.ts';
 import type { Component } from './components.ts';
-import type { SignalPath } from './signal-path.ts';
+import type { SignalPath } from './model.ts';
 
 /** Frequencies closer than this, relative to a rate, are the same. */
 const ROUNDING = 1e-9;

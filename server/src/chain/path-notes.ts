@@ -1,4 +1,4 @@
-import type { SignalPath } from './signal-path.ts';
+import type { SignalPath } from './model.ts';
 
 /** Something worth keeping about a signal path: `most` of a kind are kept for each. */
 export interface NoteKind<Note> {

@@ -3,23 +3,8 @@ import { analogueResponse } from '../signal/analogue.ts';
 import type { Response } from '../signal/response.ts';
 import { sensorResponse } from '../signal/sensor-response.ts';
 import { analogueResponseOf, digitalResponseOf } from './filter-response.ts';
-import type { Stage, StageFilter } from './model.ts';
+import type { SignalPath, Stage, StageFilter } from './model.ts';
 import { forgetNotes, keepNotes } from './path-notes.ts';
-
-/** What filters and sampling do to a signal: the same object for every channel whose filters and rates are the same. */
-export interface SignalPath {
-  /** The rate of each stage, the converter's first. */
-  readonly ratesHz: readonly number[];
-  /** Of the filters ahead of each stage in turn, and last of those behind the last stage; `undefined` for one not understood. */
-  readonly responses: readonly (readonly (Response | undefined)[])[];
-  /** The same without the gaps. */
-  readonly known: readonly (readonly Response[])[];
-  readonly sensor: Response;
-  /** True where the sensor does the same to every frequency. */
-  readonly sensorIsFlat: boolean;
-  /** Of everything that is derived from the clock, relative. */
-  readonly clockTolerance: number;
-}
 
 /** A filter on the way, before it is known what it does. */
 export interface PlannedFilter {

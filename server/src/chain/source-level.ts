@@ -1,6 +1,7 @@
 import type { HeardSource, Level, Sensor } from '../rig/model.ts';
 import type { Component } from './components.ts';
-import { type Entry, impliedEntry, type LevelScale, placedLevel } from './level-scale.ts';
+import { type Entry, impliedEntry, placedLevel } from './level-scale.ts';
+import type { LevelScale } from './model.ts';
 
 /** A source's level on one channel's scale. */
 export interface SourceLevels {

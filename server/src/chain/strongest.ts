@@ -1,6 +1,6 @@
 import { type Along, alongPiece, leastPointAlong } from '../signal/cascade.ts';
 import type { FoldedPiece } from '../signal/folding.ts';
-import type { SignalPath } from './signal-path.ts';
+import type { SignalPath } from './model.ts';
 
 /** Where a piece comes through least attenuated. */
 export interface Strongest {

@@ -4,9 +4,8 @@ import { type Along, leastPointAlong } from '../signal/cascade.ts';
 import { type FoldedPiece, foldsInto } from '../signal/folding.ts';
 import type { Response } from '../signal/response.ts';
 import { impliedEntry, placedLevel } from './level-scale.ts';
-import type { Chain } from './model.ts';
+import type { Chain, SignalPath } from './model.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
-import type { SignalPath } from './signal-path.ts';
 
 /** The most that what no source declares may leave in the band by folding at one stage. */
 export interface UndeclaredFold {

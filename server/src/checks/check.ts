@@ -4,10 +4,37 @@ import type { UndeclaredFold } from '../chain/undeclared.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
+import type { ChannelResult } from './channel-result.ts';
 import type { Finding, Severity } from './finding.ts';
-import type { InputRange } from './input-range.ts';
-import type { ChannelResult } from './judge.ts';
-import type { Shortfall } from './shortfall.ts';
+
+/** Two ends in volts at the digitizer's input. */
+export interface Volts {
+  readonly lowV: number;
+  readonly highV: number;
+}
+
+/** What is expected at a channel's input, and what it takes. */
+export interface InputRange {
+  readonly peak: Volts;
+  /** Ends of the full scale, over the gain ahead of the converter. */
+  readonly ends: Volts;
+  /** The least distance from what is expected to an end other than 0; negative past it. */
+  readonly headroomDb: number;
+}
+
+/**
+ * What is wrong with the filtering ahead of a channel's samplings, in one word: of the three, a channel is told one,
+ * and none where a declared source folds into the band, which says it better.
+ */
+export type Shortfall =
+  | { readonly kind: 'no-filter'; readonly fold: UndeclaredFold }
+  | { readonly kind: 'thin-margin'; readonly fold: UndeclaredFold; readonly margin: number }
+  | {
+      readonly kind: 'filter-short';
+      readonly fold: UndeclaredFold;
+      /** True at a modulator's own stage until it is stated what is undeclared. */
+      readonly isHint: boolean;
+    };
 
 /** Everything a check of one channel may look at. */
 export interface ChannelView {

@@ -1,26 +1,11 @@
 import { gainOf } from '../chain/level-scale.ts';
 import type { Channel, FullScale, Given, Level } from '../rig/model.ts';
 import { decibels, ratioOf } from '../signal/decibel.ts';
-import type { ChannelView } from './check.ts';
+import type { ChannelView, InputRange, Volts } from './check.ts';
 import { voltsText } from './wording.ts';
 
 /** What volts are reckoned from. */
 type View = Pick<ChannelView, 'channel' | 'chain' | 'bandResponse'>;
-
-/** Two ends in volts at the digitizer's input. */
-export interface Volts {
-  readonly lowV: number;
-  readonly highV: number;
-}
-
-/** What is expected at a channel's input, and what it takes. */
-export interface InputRange {
-  readonly peak: Volts;
-  /** Ends of the full scale, over the gain ahead of the converter. */
-  readonly ends: Volts;
-  /** The least distance from what is expected to an end other than 0; negative past it. */
-  readonly headroomDb: number;
-}
 
 export const DEFAULT_HEADROOM_DB = 3;
 

@@ -6,6 +6,7 @@ import { undeclaredFolds } from '../chain/undeclared.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
+import type { ChannelResult, Guard } from './channel-result.ts';
 import type { ChannelSummary, ChannelView, RigView, SaidOfRig } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
@@ -17,17 +18,6 @@ import { inputRangeOf } from './input-range.ts';
 import { CHANNEL_CHECKS, RIG_CHECKS } from './list.ts';
 import { shortfallOf } from './shortfall.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
-
-/** Runs a check so that one that throws costs only itself: the workbench hands it in and logs what was caught. */
-export type Guard = <T>(checkName: string, run: () => T, otherwise: T) => T;
-
-/** A channel as judged. Arrivals are not kept (10,000 channels): `arrivalsOf(chain)` makes them again when asked. */
-export interface ChannelResult {
-  readonly channel: Channel;
-  readonly chain: Chain | undefined;
-  /** By severity, then position. */
-  readonly findings: readonly Finding[];
-}
 
 type Severities = Environment['severities'];
 

@@ -1,17 +1,9 @@
 import { gainOf } from '../chain/level-scale.ts';
 import { formatQuantity } from '../quantity/write.ts';
 import type { FullScale } from '../rig/model.ts';
+import type { Volts } from './check.ts';
 import { type ChannelView, type Check, SAYS_NOTHING } from './check.ts';
-import {
-  DEFAULT_HEADROOM_DB,
-  endsOf,
-  endsText,
-  fullScaleOf,
-  headroomOf,
-  overshootOf,
-  peakAt,
-  type Volts,
-} from './input-range.ts';
+import { DEFAULT_HEADROOM_DB, endsOf, endsText, fullScaleOf, headroomOf, overshootOf, peakAt } from './input-range.ts';
 import { standingOn } from './standing.ts';
 
 /** How many times as much of full scale another range has to use before it is worth a word. */

@@ -1,5 +1,5 @@
 import type { UndeclaredFold } from '../chain/undeclared.ts';
-import type { ChannelView } from './check.ts';
+import type { ChannelView, Shortfall } from './check.ts';
 import { hasFoldInBand } from './folds.ts';
 
 /** What is known of a channel before it is known what its filtering lacks. */
@@ -14,20 +14,6 @@ const MARGIN_ROUNDING = 1e-9;
  * that is stated to be at the limit over it.
  */
 const BOUND_ROUNDING_DB = 0.01;
-
-/**
- * What is wrong with the filtering ahead of a channel's samplings, in one word: of the three, a channel is told one,
- * and none where a declared source folds into the band, which says it better.
- */
-export type Shortfall =
-  | { readonly kind: 'no-filter'; readonly fold: UndeclaredFold }
-  | { readonly kind: 'thin-margin'; readonly fold: UndeclaredFold; readonly margin: number }
-  | {
-      readonly kind: 'filter-short';
-      readonly fold: UndeclaredFold;
-      /** True at a modulator's own stage until it is stated what is undeclared. */
-      readonly isHint: boolean;
-    };
 
 /** What is to be said of a channel's filtering, if anything. */
 export function shortfallOf(view: View): Shortfall | undefined {

@@ -1,6 +1,6 @@
 import { arrivalsOf } from '../chain/arrivals.ts';
 import type { Arrival } from '../chain/model.ts';
-import type { ChannelResult } from '../checks/judge.ts';
+import type { ChannelResult } from '../checks/channel-result.ts';
 import { formatHz, formatQuantity } from '../quantity/write.ts';
 import type { Search } from './search.ts';
 

@@ -1,5 +1,5 @@
+import type { ChannelResult } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
-import type { ChannelResult } from '../checks/judge.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 

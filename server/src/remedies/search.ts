@@ -1,4 +1,4 @@
-import type { ChannelResult, Guard } from '../checks/judge.ts';
+import type { ChannelResult, Guard } from '../checks/channel-result.ts';
 import { judgeModel } from '../checks/judge.ts';
 import type { Channel } from '../rig/model.ts';
 import { isProved } from './proof.ts';

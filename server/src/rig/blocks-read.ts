@@ -1,7 +1,8 @@
 import type { BlockKind, SplitState } from './blocks.ts';
 import { type Entry, NAMED_SECTIONS, type NamedSection } from './entry.ts';
 import { MOST_SYNTAX_FINDINGS } from './limits.ts';
-import type { PlacedProblem, Problem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
+import type { Problem } from './problem.ts';
 import { countLineEnds, lineStarts } from './text-lines.ts';
 import type { MapNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
 import { readYaml } from './yaml-tree.ts';

@@ -5,7 +5,7 @@ import { yamlProblem } from './entry-problems.ts';
 import type { Environment } from './environment.ts';
 import { namePlace, noteNotComputed, readEntryFields } from './fields.ts';
 import type { Channel } from './model.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { addDefaults, channelOf, reportMissingChannelKeys } from './read-channel.ts';
 import { type Mention, startReading } from './reader.ts';
 

@@ -4,7 +4,7 @@ import type { Entry, NamedSection } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import type { Field } from './fields.ts';
 import type { Given, Source } from './model.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { readClock } from './read-clock.ts';
 import { readDigitizer } from './read-digitizer.ts';
 import { readNamedFilter, readNamedGroup, readNamedSensor } from './read-named.ts';

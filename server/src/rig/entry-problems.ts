@@ -1,6 +1,6 @@
 import type { Entry } from './entry.ts';
 import { placeOf } from './fields.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { placedProblem } from './reader.ts';
 
 /** A problem that the reader of the entry's YAML found, at its place. */

@@ -4,7 +4,7 @@ import type { Entry } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import { epochsOf } from './epochs.ts';
 import type { Clock, Digitizer, Filter, Given, Sensor, Source } from './model.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import type { SeverityChoice } from './read-top-level.ts';
 import type { Mention } from './reader.ts';
 import type { Snapshot } from './snapshot.ts';

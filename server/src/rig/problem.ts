@@ -1,5 +1,3 @@
-import type { Place } from './place.ts';
-
 /** The checks of the document itself, which reading decides. */
 export type ProblemName =
   | 'syntax'
@@ -33,11 +31,4 @@ export interface Problem {
   /** What tells this problem from others of its name in one entry: the key, name or unit it is about. */
   readonly about?: string;
   readonly cure?: Cure;
-}
-
-/** A problem with its place, once it is known which entry it stands in. */
-export interface PlacedProblem {
-  readonly problem: Problem;
-  readonly place: Place;
-  readonly related: readonly { readonly place: Place; readonly message: string }[];
 }

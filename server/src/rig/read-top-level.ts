@@ -14,7 +14,7 @@ import {
   resolved,
 } from './fields.ts';
 import type { Given, Source } from './model.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { channelOf } from './read-channel.ts';
 import { readMains } from './read-source.ts';
 import { placedProblem, type Reader, report } from './reader.ts';

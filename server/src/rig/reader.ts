@@ -3,7 +3,8 @@ import type { Entry } from './entry.ts';
 import { MOST_ENTRY_PROBLEMS, MOST_INHERITED_PROBLEMS } from './limits.ts';
 import type { Clock, Digitizer, Filter, HeardSource, Sensor, Source } from './model.ts';
 import type { Place } from './place.ts';
-import type { Cure, PlacedProblem, ProblemName } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
+import type { Cure, ProblemName } from './problem.ts';
 import type { TreeNode } from './tree.ts';
 import type { ThingKind } from './vocabulary-kinds.ts';
 

@@ -2,7 +2,7 @@ import type { ChannelReading } from './channel-reading.ts';
 import type { Environment } from './environment.ts';
 import { clipped } from './fields.ts';
 import type { Place } from './place.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { type Lookup, placedProblem } from './reader.ts';
 import type { ThingKind } from './vocabulary-kinds.ts';
 

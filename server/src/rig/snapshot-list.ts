@@ -1,7 +1,7 @@
 import type { Block } from './blocks-read.ts';
 import type { Entry } from './entry.ts';
 import { MOST_CHANNELS } from './limits.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { EntryIndex } from './snapshot-index.ts';
 import { lastNotAbove } from './text-lines.ts';
 

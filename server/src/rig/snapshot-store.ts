@@ -1,7 +1,7 @@
 import { lineStartsOf, type PlacedEntry } from './blocks-read.ts';
 import type { Entry } from './entry.ts';
 import type { Place, Position, PositionRange } from './place.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { type BlockList, withinLimit } from './snapshot-list.ts';
 import { positionIn } from './text-lines.ts';
 

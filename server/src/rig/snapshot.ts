@@ -1,6 +1,6 @@
 import type { Entry } from './entry.ts';
 import type { Place, Position, PositionRange } from './place.ts';
-import type { PlacedProblem } from './problem.ts';
+import type { PlacedProblem } from './placed-problem.ts';
 import { editBlocks, readBlocks } from './snapshot-blocks.ts';
 import { BlockSnapshot } from './snapshot-store.ts';
 import { orderedEdits, type TextEdit } from './text-edit.ts';

@@ -3,7 +3,7 @@ import { Composer, isAlias, isMap, isScalar, isSeq, Parser } from 'yaml';
 import { MOST_DEPTH } from './limits.ts';
 import type { Problem } from './problem.ts';
 import type { EmptyNode, MapNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
-import type { YamlReading } from './yaml-tree.ts';
+import type { YamlReading } from './yaml-reading.ts';
 import { plainMessage, TABS_MESSAGE, UNCLOSED_QUOTE_MESSAGE, unclosedBracketMessage } from './yaml-tree-messages.ts';
 
 /** A tab among the white space that a line starts with, ahead of something that is no comment. */

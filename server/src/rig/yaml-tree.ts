@@ -1,14 +1,8 @@
 import type { Problem } from './problem.ts';
-import type { TreeNode } from './tree.ts';
+import type { YamlReading } from './yaml-reading.ts';
 import { readDirectly } from './yaml-tree-direct.ts';
 import { composeYaml } from './yaml-tree-library.ts';
 import { UNCLOSED_QUOTE_MESSAGE } from './yaml-tree-messages.ts';
-
-/** What one text says, and what is wrong with its YAML; offsets count from the start of the text. */
-export interface YamlReading {
-  readonly root: TreeNode;
-  readonly problems: readonly Problem[];
-}
 
 /** Up to this length a text is read by the library once more to see what it says without an open quote. */
 const MOST_READ_TWICE = 10_000;

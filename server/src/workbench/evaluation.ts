@@ -1,5 +1,5 @@
+import type { ChannelResult, Guard } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
-import type { ChannelResult, Guard } from '../checks/judge.ts';
 import { judgeChannel, judgeRig } from '../checks/judge.ts';
 import { CHECK_NAMES } from '../checks/list.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';

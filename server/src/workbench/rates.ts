@@ -1,5 +1,5 @@
 import { reachableRates } from '../chain/reachable.ts';
-import type { Guard } from '../checks/judge.ts';
+import type { Guard } from '../checks/channel-result.ts';
 import { judgeModel } from '../checks/judge.ts';
 import { rateText, sampledAt } from '../remedies/rates.ts';
 import type { Channel } from '../rig/model.ts';

@@ -1,5 +1,5 @@
+import type { Guard } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
-import type { Guard } from '../checks/judge.ts';
 import type { FixAllResult } from '../remedies/fix-all.ts';
 import { fixAll } from '../remedies/fix-all.ts';
 import { remediesFor } from '../remedies/list.ts';

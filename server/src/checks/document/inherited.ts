@@ -1,4 +1,4 @@
-import type { PlacedProblem } from '../../rig/problem.ts';
+import type { PlacedProblem } from '../../rig/placed-problem.ts';
 import type { RigView } from '../check.ts';
 import { type SaidOfDocument, saidOfThing } from './problems.ts';
 

@@ -1,5 +1,5 @@
 import type { Entry } from '../../rig/entry.ts';
-import type { PlacedProblem } from '../../rig/problem.ts';
+import type { PlacedProblem } from '../../rig/placed-problem.ts';
 import type { SaidOfRig } from '../check.ts';
 import { documentSeverity } from './pages.ts';
 
