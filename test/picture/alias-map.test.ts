@@ -19,7 +19,7 @@ const THEMES: readonly PictureTheme[] = ['light', 'dark', 'high-contrast', 'high
 function malformed(xml: string): string | undefined {
   const open: string[] = [];
   const rest = xml.replaceAll(
-    /<(\/?)([a-z]+)((?:\s[\w:-]+="[^"<&]*(?:&(?:amp|lt|gt|quot);[^"<&]*)*")*)\s*(\/?)>/g,
+    /<(\/?)([a-zA-Z]+)((?:\s[\w:-]+="[^"<&]*(?:&(?:amp|lt|gt|quot);[^"<&]*)*")*)\s*(\/?)>/g,
     (_tag, close: string, name: string, _attributes: string, self: string) => {
       if (close && open.pop() !== name) open.push(`!${name}`);
       else if (!close && !self) open.push(name);
@@ -181,16 +181,20 @@ describe('axes and labels', () => {
   });
 
   it('labels never overlap one another, what is taken, or the edge', () => {
-    const point = fc.record({
-      text: fc.string({ minLength: 1, maxLength: 18 }),
+    const wish = fc.record({
+      names: fc.string(),
+      texts: fc.array(fc.string({ minLength: 1, maxLength: 18 }), { minLength: 1, maxLength: 2 }),
       x: fc.integer({ min: 0, max: 500 }),
       y: fc.integer({ min: 0, max: 300 }),
     });
     fc.assert(
-      fc.property(fc.array(point, { maxLength: 30 }), (wishes) => {
+      fc.property(fc.array(wish, { maxLength: 30 }), (wishes) => {
         const area = { left: 0, right: 500, top: 0, bottom: 300 };
         const taken = wishes.map(({ x, y }) => ({ left: x - 6, right: x + 6, top: y - 6, bottom: y + 6 }));
-        const boxes = placeLabels(wishes, 11, area, taken).map(({ box }) => box);
+        const lines = [{ x1: 0, y1: 300, x2: 500, y2: 0 }];
+        const placed = placeLabels(wishes, { size: 11, area, taken, lines });
+        expect(new Set(placed.map((label) => label.wish.names)).size).toBe(placed.length);
+        const boxes = placed.map(({ box }) => box);
         for (const [index, box] of boxes.entries()) {
           expect(box.left >= 0 && box.right <= 500 && box.top >= 0 && box.bottom <= 300).toBe(true);
           expect([...boxes.slice(index + 1), ...taken].some((other) => overlap(box, other))).toBe(false);
