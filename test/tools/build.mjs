@@ -1,9 +1,11 @@
-// Bundles the three programs of the package into dist/: the client, the language server and the command line.
+// Bundles the three programs of the package into dist/: the client, the language server and the command line; and writes
+// the reference pages beside them.
 // Libraries are bundled too, as CommonJS: an ESM bundle of the server dies with "Dynamic require".
-import { chmodSync, existsSync, mkdirSync, readFileSync } from 'node:fs';
+import { chmodSync, mkdirSync, readFileSync } from 'node:fs';
 import { dirname, join, resolve } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { build } from 'esbuild';
+import { writeReference } from './reference.mjs';
 
 const root = resolve(dirname(fileURLToPath(import.meta.url)), '../..');
 
@@ -38,4 +40,4 @@ async function bundle({ entry, output, external, executable = false }) {
 }
 
 mkdirSync(join(root, 'dist'), { recursive: true });
-await Promise.all(programs.filter((program) => existsSync(join(root, program.entry))).map(bundle));
+await Promise.all([...programs.map(bundle), writeReference(root, join(root, 'dist/reference'))]);
