@@ -33,8 +33,8 @@ export function strongestOf(
     const sensorDb = seesSensor ? path.sensor.leastDb(trueLowHz, trueLowHz) : 0;
     return { attenuationDb: filtersDb + sensorDb, filtersDb, atHz: trueLowHz };
   }
-  const filters = alongPiece(piece, path.known).map((member) => part(member, from, to));
-  const truth = part({ lowHz: trueLowHz, highHz: trueHighHz, reversed: false }, from, to);
+  const filters = alongPiece(piece, path.known).map((member) => partOf(member, from, to));
+  const truth = partOf({ lowHz: trueLowHz, highHz: trueHighHz, reversed: false }, from, to);
   const members = seesSensor ? [...filters, { ...truth, response: path.sensor }] : filters;
   if (members.length === 0) return { attenuationDb: 0, filtersDb: 0, atHz: truth.lowHz };
   const { attenuationDb, t } = leastPointAlong(members);
@@ -54,7 +54,7 @@ function attenuationAtPoint(path: SignalPath, piece: FoldedPiece): number {
 }
 
 /** The part of a range that a member sees from `from` to `to` along the piece. */
-function part<Range extends Omit<Along, 'response'>>(range: Range, from: number, to: number): Range {
+export function partOf<Range extends Omit<Along, 'response'>>(range: Range, from: number, to: number): Range {
   if (from <= 0 && to >= 1) return range;
   const { lowHz, highHz, reversed } = range;
   const width = highHz - lowHz;
