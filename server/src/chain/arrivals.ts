@@ -1,33 +1,27 @@
 import type { HeardSource, Source } from '../rig/model.ts';
-import { type FoldedPiece, foldThrough } from '../signal/folding.ts';
-import { type Component, componentsOf } from './components.ts';
+import { type FoldedPiece, foldHz } from '../signal/folding.ts';
+import { componentsOf } from './components.ts';
 import type { Arrival, Chain, LevelScale, SignalPath } from './model.ts';
-import { onNyquistAtStage } from './on-nyquist.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
-import { type Strongest, strongestOf } from './strongest.ts';
+import { type Strongest, strongestOf, surelyTakenOff } from './strongest.ts';
+import { type TracedMany, type TracedPart, type TracedPiece, tracedParts } from './traced-parts.ts';
+import { type BandImages, bandImages, worstFolds } from './worst-fold.ts';
 
-/** Pieces that one component is split into; what is left is one piece that claims the whole record. */
-const MOST_PIECES_OF_COMPONENT = 256;
-
-/** Pieces of all components of one source. */
-const MOST_PIECES_OF_SOURCE = 4096;
+/**
+ * A range that is sure to lose this much, and to end this far under the fold limit, is given the level that it is sure
+ * to stay under instead of its true maximum: where two deep stop bands ripple, that would take long to find.
+ */
+const PLAINLY_LOW_DB = 60;
+const PLAINLY_UNDER_DB = 10;
 
 /** Levels are compared with limits to this, so that one that is exactly at its limit is not over it. */
 export const LEVEL_ROUNDING_DB = 1e-9;
 
-/** One piece of a component, and how much is left of it at most. */
-interface TracedPiece {
-  readonly component: Component;
-  readonly onNyquistAtStage: number | null;
-  readonly piece: FoldedPiece;
-  readonly strongest: Strongest;
-}
-
 interface TracedSource {
   readonly source: Source;
   readonly entersAtSensor: boolean;
-  readonly pieces: readonly TracedPiece[];
+  readonly parts: readonly TracedPart[];
 }
 
 interface NotedArrivals {
@@ -41,14 +35,20 @@ const ARRIVALS: NoteKind<NotedArrivals> = { name: 'arrivals', most: 24 };
 
 /**
  * Where everything that a channel hears arrives in its record: each piece of each component of each source, in the
- * order in which the sources are heard. Native pieces are among them.
+ * order in which the sources are heard. Native pieces are among them. What would be very many pieces that first fold
+ * at one stage is one arrival, recorded all over; its level is the highest that lands in the band.
  */
 export function arrivalsOf(chain: Chain): readonly Arrival[] {
   const { heard } = chain.channel;
   for (const noted of notesOn(chain.path, ARRIVALS)) if (isSameQuestion(noted, chain)) return noted.arrivals;
   const arrivals: Arrival[] = [];
-  for (const one of heard) addArrivals(arrivals, one, chain);
   const { bandLowHz, bandHighHz, scale } = chain;
+  let images: BandImages | undefined;
+  const imagesOnce = (): BandImages => {
+    images ??= bandImages(chain.path, bandLowHz, bandHighHz);
+    return images;
+  };
+  for (const one of heard) addArrivals(arrivals, one, chain, imagesOnce);
   note(chain.path, ARRIVALS, { question: { bandLowHz, bandHighHz, scale }, heard, arrivals });
   return arrivals;
 }
@@ -85,12 +85,16 @@ function isSameHearing(first: readonly HeardSource[], second: readonly HeardSour
   return true;
 }
 
-function addArrivals(arrivals: Arrival[], heard: HeardSource, chain: Chain): void {
+function addArrivals(arrivals: Arrival[], heard: HeardSource, chain: Chain, images: () => BandImages): void {
   const levels = sourceLevelsOf(heard, chain.channel.sensor, chain.scale);
   const entersAtSensor = levels.entry === 'sensor';
-  for (const traced of tracedSource(chain.path, heard.source, entersAtSensor).pieces) {
+  for (const traced of tracedSource(chain.path, heard.source, entersAtSensor).parts) {
     const level = componentLevel(levels, traced.component);
-    arrivals.push(arrivalOf(heard.source, traced, entersAtSensor, level, levels.known, chain));
+    const landed =
+      traced.kind === 'piece'
+        ? landedPiece(traced, entersAtSensor, level, chain)
+        : landedMany(traced, entersAtSensor, chain, images());
+    arrivals.push(arrivalOf(heard.source, traced, landed, level, levels.known, chain));
   }
 }
 
@@ -98,51 +102,92 @@ function tracedSource(path: SignalPath, source: Source, entersAtSensor: boolean)
   for (const noted of notesOn(path, TRACED)) {
     if (noted.source === source && noted.entersAtSensor === entersAtSensor) return noted;
   }
-  const components = componentsOf(source);
-  const limit = Math.min(MOST_PIECES_OF_COMPONENT, Math.ceil(MOST_PIECES_OF_SOURCE / components.length));
-  const pieces = components.flatMap((component) => {
-    const onMultiple = onNyquistAtStage(component, path);
-    return foldThrough(component.lowHz, component.highHz, path.ratesHz, limit).map((piece): TracedPiece => {
-      const strongest = strongestOf(path, piece, entersAtSensor);
-      return { component, onNyquistAtStage: onMultiple, piece, strongest };
-    });
-  });
-  return note(path, TRACED, { source, entersAtSensor, pieces });
+  const parts = componentsOf(source).flatMap((component) => tracedParts(component, path));
+  return note(path, TRACED, { source, entersAtSensor, parts });
+}
+
+/** What of a part lands in the band, or all of it where nothing does. */
+interface Landed {
+  readonly inBand: boolean;
+  readonly slackHz: number;
+  readonly strongest: Strongest;
+}
+
+function landedPiece(traced: TracedPiece, entersAtSensor: boolean, componentDb: number, chain: Chain): Landed {
+  const { piece } = traced;
+  const { path } = chain;
+  const slackHz = slackOf(piece, path.clockTolerance);
+  const landing = landingIn(piece, chain.bandLowHz - slackHz, chain.bandHighHz + slackHz);
+  const inBand = landing !== undefined;
+  const isPart = landing !== undefined && (landing.from > 0 || landing.to < 1);
+  const sure = isPart
+    ? surelyTakenOff(path, piece, entersAtSensor, landing.from, landing.to)
+    : surelyOf(traced, entersAtSensor, path);
+  const isPlainlyLow =
+    sure.attenuationDb > PLAINLY_LOW_DB && componentDb - sure.attenuationDb < chain.foldLimit - PLAINLY_UNDER_DB;
+  if (isPlainlyLow) return { inBand, slackHz, strongest: sure };
+  const strongest = isPart
+    ? strongestOf(path, piece, entersAtSensor, landing.from, landing.to)
+    : wholeOf(traced, entersAtSensor, path);
+  return { inBand, slackHz, strongest };
+}
+
+function surelyOf(traced: TracedPiece, entersAtSensor: boolean, path: SignalPath): Strongest {
+  traced.surely ??= surelyTakenOff(path, traced.piece, entersAtSensor);
+  return traced.surely;
+}
+
+function wholeOf(traced: TracedPiece, entersAtSensor: boolean, path: SignalPath): Strongest {
+  traced.whole ??= strongestOf(path, traced.piece, entersAtSensor);
+  return traced.whole;
+}
+
+/** Of many pieces, the one that is recorded highest in the band. */
+function landedMany(traced: TracedMany, entersAtSensor: boolean, chain: Chain, images: BandImages): Landed {
+  const { lowHz, highHz, stage } = traced;
+  const { path } = chain;
+  const ahead = path.known[0]!;
+  const seesSensor = entersAtSensor && !path.sensorIsFlat;
+  const least = worstFolds(images, seesSensor ? [...ahead, path.sensor] : ahead, lowHz, highHz)[stage - 1];
+  const slackHz = highHz * path.clockTolerance;
+  if (!least) {
+    const attenuationDb = ahead.reduce((sum, response) => sum + response.leastDb(lowHz, highHz), 0);
+    return { inBand: false, slackHz, strongest: { attenuationDb, filtersDb: attenuationDb, atHz: lowHz } };
+  }
+  const { attenuationDb, atHz } = least;
+  const sensorDb = seesSensor ? path.sensor.leastDb(atHz, atHz) : 0;
+  return { inBand: true, slackHz, strongest: { attenuationDb, filtersDb: attenuationDb - sensorDb, atHz } };
 }
 
 function arrivalOf(
   source: Source,
-  { component, onNyquistAtStage, piece, strongest }: TracedPiece,
-  entersAtSensor: boolean,
+  traced: TracedPart,
+  { inBand, slackHz, strongest }: Landed,
   componentDb: number,
   levelKnown: boolean,
   chain: Chain,
 ): Arrival {
-  const slackHz = slackOf(piece, chain.path.clockTolerance);
-  const landing = landingIn(piece, chain.bandLowHz - slackHz, chain.bandHighHz + slackHz);
-  const isWhole = !landing || (landing.from <= 0 && landing.to >= 1) || piece.collapsed;
-  const { attenuationDb, filtersDb, atHz } = isWhole
-    ? strongest
-    : strongestOf(chain.path, piece, entersAtSensor, landing.from, landing.to);
+  const { component, onNyquistAtStage } = traced;
+  const { attenuationDb, filtersDb, atHz } = strongest;
   const level = componentDb - attenuationDb;
-  const folded = piece.foldsAtStage !== null;
-  const inBand = landing !== undefined;
+  const isMany = traced.kind === 'many';
+  const foldsAtStage = isMany ? traced.stage : traced.piece.foldsAtStage;
   return {
     source,
     component: component.label,
-    trueLowHz: piece.trueLowHz,
-    trueHighHz: piece.trueHighHz,
-    recordedLowHz: piece.recordedLowHz,
-    recordedHighHz: piece.recordedHighHz,
+    trueLowHz: isMany ? traced.lowHz : traced.piece.trueLowHz,
+    trueHighHz: isMany ? traced.highHz : traced.piece.trueHighHz,
+    recordedLowHz: isMany ? 0 : traced.piece.recordedLowHz,
+    recordedHighHz: isMany ? chain.stages[chain.stages.length - 1]!.nyquistHz : traced.piece.recordedHighHz,
     recordedSlackHz: slackHz,
     level,
     attenuationDb: filtersDb,
     atHz,
-    folded,
-    foldsAtStage: piece.foldsAtStage,
-    mirrored: piece.mirrored,
+    folded: foldsAtStage !== null,
+    foldsAtStage,
+    mirrored: isMany ? false : traced.piece.mirrored,
     inBand,
-    overLimit: folded && inBand && level > chain.foldLimit + LEVEL_ROUNDING_DB,
+    overLimit: foldsAtStage !== null && inBand && level > chain.foldLimit + LEVEL_ROUNDING_DB,
     levelKnown,
     nominalHz: component.nominalHz,
     onNyquistAtStage,
@@ -155,7 +200,6 @@ function arrivalOf(
  */
 export function slackOf(piece: FoldedPiece, clockTolerance: number): number {
   if (piece.foldsAtStage === null || clockTolerance === 0) return 0;
-  if (piece.collapsed) return piece.trueHighHz * clockTolerance;
   const foldedAboutHz = piece.mirrored
     ? piece.trueLowHz + piece.recordedHighHz
     : Math.abs(piece.trueLowHz - piece.recordedLowHz);
@@ -163,11 +207,8 @@ export function slackOf(piece: FoldedPiece, clockTolerance: number): number {
 }
 
 /** Where an arrival is recorded at the point of its level. */
-export function recordedAtHz(arrival: Arrival): number {
-  const { trueLowHz, recordedLowHz, recordedHighHz, mirrored, atHz } = arrival;
-  const along = atHz - trueLowHz;
-  const hz = mirrored ? recordedHighHz - along : recordedLowHz + along;
-  return Math.min(Math.max(hz, recordedLowHz), recordedHighHz);
+export function recordedAtHz({ atHz }: Arrival, { ratesHz }: Chain): number {
+  return ratesHz.reduce(foldHz, atHz);
 }
 
 /** The part of a piece that is recorded within a range, along its true frequency from 0 to 1. */

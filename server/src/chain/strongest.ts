@@ -43,6 +43,29 @@ export function strongestOf(
   return { attenuationDb, filtersDb: seesSensor ? attenuationDb - sensorDb : attenuationDb, atHz };
 }
 
+/**
+ * What is sure to be taken off a piece, or a part of it: the least of each response by itself. It is found in no time,
+ * and is the same as `strongestOf` for a point; for a range it may claim that more comes through than does.
+ */
+export function surelyTakenOff(
+  path: SignalPath,
+  piece: FoldedPiece,
+  entersAtSensor: boolean,
+  from = 0,
+  to = 1,
+): Strongest {
+  let filtersDb = 0;
+  for (let stage = 0; stage < path.known.length; stage++) {
+    const input = piece.inputs[stage];
+    const range = input ?? { lowHz: piece.recordedLowHz, highHz: piece.recordedHighHz, reversed: piece.mirrored };
+    const { lowHz, highHz } = partOf(range, from, to);
+    for (const response of path.known[stage]!) filtersDb += response.leastDb(lowHz, highHz);
+  }
+  const { lowHz, highHz } = partOf({ lowHz: piece.trueLowHz, highHz: piece.trueHighHz, reversed: false }, from, to);
+  const sensorDb = entersAtSensor && !path.sensorIsFlat ? path.sensor.leastDb(lowHz, highHz) : 0;
+  return { attenuationDb: filtersDb + sensorDb, filtersDb, atHz: lowHz };
+}
+
 /** A point sees each filter at one frequency. */
 function attenuationAtPoint(path: SignalPath, piece: FoldedPiece): number {
   let sum = 0;

@@ -72,6 +72,10 @@ export function worstFolds(
     const before = found[stage];
     const boundDb = image.laterDb + sumOfLeast(ahead, low, high);
     if (before && boundDb >= before.attenuationDb) return;
+    if (before && boundDb >= before.attenuationDb - CLOSE_DB) {
+      found[stage] = { attenuationDb: boundDb, atHz: before.atHz };
+      return;
+    }
     const isSearched = !image.piece.collapsed && searches++ < MOST_SEARCHED;
     const least = isSearched ? leastOf(image, zone, ahead, path, low, high) : { attenuationDb: boundDb, atHz: low };
     if (!before || least.attenuationDb < before.attenuationDb) found[stage] = least;
