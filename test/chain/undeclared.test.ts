@@ -1,30 +1,13 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { bandResponseOf } from '../../server/src/chain/band-response.ts';
-import type { Chain } from '../../server/src/chain/model.ts';
 import { undeclaredFolds } from '../../server/src/chain/undeclared.ts';
-import { foldHz } from '../../server/src/signal/folding.ts';
 import { runs } from '../tools/runs.ts';
+import { analogueFilters, decimations, followed } from './random-path.ts';
 import { chainOfText } from './rig.ts';
 
 function rig(keys: readonly string[], digitizer = 'full-scale: ±1 V'): string {
   return `rig: Test\nclocks: { c: { frequency: 1 MHz } }\ndigitizers: { d: { ${digitizer} } }\nchannels:\n  one:\n    digitizer: d\n${keys.map((key) => `    ${key}\n`).join('')}`;
-}
-
-/** What is left of a true frequency, by following it through the stages one after the other; `undefined` off the band. */
-function followed(chain: Chain, trueHz: number): { readonly level: number; readonly stage: number } | undefined {
-  let hz = trueHz;
-  let attenuationDb = 0;
-  let stage = 0;
-  for (const [index, { filters, rateHz }] of chain.stages.entries()) {
-    for (const { response } of filters) attenuationDb += response.leastDb(hz, hz);
-    const next = foldHz(hz, rateHz);
-    if (stage === 0 && next !== hz) stage = index + 1;
-    hz = next;
-  }
-  for (const { response } of chain.after) attenuationDb += response.leastDb(hz, hz);
-  if (stage === 0 || hz < chain.bandLowHz || hz > chain.bandHighHz) return undefined;
-  return { level: -attenuationDb, stage };
 }
 
 describe('what no source declares', () => {
@@ -103,38 +86,10 @@ describe('what no source declares', () => {
   });
 
   it('never comes out lower than any frequency that is followed through the chain', () => {
-    const filters = fc.oneof(
-      fc
-        .tuple(fc.integer({ min: 1, max: 6 }), fc.integer({ min: 100, max: 900 }))
-        .map(([order, cutoff]) => `{ response: butterworth, order: ${order}, cutoff: ${cutoff} Hz, tolerance: 3 % }`),
-      fc
-        .tuple(fc.integer({ min: 2, max: 6 }), fc.integer({ min: 100, max: 400 }))
-        .map(
-          ([order, edge]) =>
-            `{ response: elliptic, order: ${order}, ripple: 0.5 dB, stopband: 50 dB, pass-edge: ${edge} Hz }`,
-        ),
-      fc.constantFrom(
-        '{ response: aperture, time: 1.3 ms }',
-        '{ response: mask, pass: 200 Hz, stop: 700 Hz, stopband: 70 dB }',
-      ),
-    );
-    const steps = fc.array(
-      fc
-        .tuple(
-          fc.integer({ min: 2, max: 5 }),
-          fc.constantFrom(
-            '',
-            ', filter: { response: moving-average, length: 4 }',
-            ', filter: { response: kaiser, pass: 0.1 fs, stop: 0.2 fs, stopband: 60 dB }',
-          ),
-        )
-        .map(([factor, filter]) => `{ decimate: ${factor}${filter} }`),
-      { maxLength: 2 },
-    );
     fc.assert(
       fc.property(
-        fc.array(filters, { maxLength: 2 }),
-        steps,
+        analogueFilters,
+        decimations,
         fc.integer({ min: 0, max: 15 }),
         fc.array(fc.integer({ min: 1, max: 6_000_000 }), { minLength: 200, maxLength: 200 }),
         (analogue, then, lowHz, milliHz) => {

@@ -28,7 +28,7 @@ const expanded = new WeakMap<Source, readonly Component[]>();
 export function componentsOf(source: Source): readonly Component[] {
   const known = expanded.get(source);
   if (known) return known;
-  const components = bounded(source.type === 'modulated' ? modulated(source) : harmonics(source));
+  const components = bounded(source, source.type === 'modulated' ? modulated(source) : harmonics(source));
   expanded.set(source, components);
   return components;
 }
@@ -99,23 +99,26 @@ function sideband(
 }
 
 /** The components that are told apart, and one that stands for all that are too many. */
-function bounded(components: Iterable<Component>): readonly Component[] {
+function bounded(source: Source, components: Iterable<Component>): readonly Component[] {
   const told: Component[] = [];
-  let rest: Component | undefined;
   for (const next of components) {
-    if (told.length < MOST_COMPONENTS - 1) told.push(next);
-    else rest = rest ? joined(rest, next) : next;
+    if (told.length === MOST_COMPONENTS - 1) return [...told, restFrom(next, source)];
+    told.push(next);
   }
-  return rest ? [...told, rest] : told;
+  return told;
 }
 
-function joined(first: Component, second: Component): Component {
-  return {
-    label: `${first.label.split(' and more')[0]} and more`,
-    lowHz: Math.min(first.lowHz, second.lowHz),
-    highHz: Math.max(first.highHz, second.highHz),
-    nominalHz: undefined,
-    harmonic: Math.min(first.harmonic, second.harmonic),
-    belowDb: Math.min(first.belowDb, second.belowDb),
+/** Everything from a component on, as high as the highest of it. Only a modulated source has so many. */
+function restFrom(first: Component, source: Source): Component {
+  const label = `${first.label} and more`;
+  const { harmonic } = first;
+  if (source.type !== 'modulated') return { ...first, label };
+  const carrier = source.carrier.value;
+  const reachHz = source.sidebands * source.modulation.value.highHz;
+  const range = {
+    lowHz: harmonic * carrier.lowHz - reachHz,
+    highHz: source.harmonics * carrier.highHz + reachHz,
   };
+  const eitherWayHz = source.tolerance * range.highHz;
+  return { ...sideband(label, harmonic, 0, range, eitherWayHz), nominalHz: undefined };
 }
