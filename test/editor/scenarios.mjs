@@ -101,7 +101,11 @@ async function completionOffersReachableRates({ page, shoot }) {
 async function outlineListsTheChannels({ page }) {
   await openFile(page, 'findings.rig.yaml');
   await page.locator('.pane-header', { hasText: 'Outline' }).click();
-  await page.locator('.outline-tree .monaco-list-row', { hasText: 'bearing-drive-end' }).waitFor();
+  const rows = page.locator('.outline-tree .monaco-list-row');
+  await rows.filter({ hasText: 'clocks' }).hover();
+  // The channels are at the end, and rows that are out of sight are not there at all.
+  await page.mouse.wheel(0, 5000);
+  await rows.filter({ hasText: 'bearing-drive-end' }).waitFor();
   await page.locator('.pane-header', { hasText: 'Outline' }).click();
 }
 

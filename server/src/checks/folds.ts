@@ -51,7 +51,7 @@ function addTo(folds: Fold[], arrival: Arrival): void {
 export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): Said {
   const { worst, stage } = fold;
   const { source, level } = worst;
-  const recordedHz = recordedAtHz(worst);
+  const recordedHz = recordedAtHz(worst, chain);
   const excess = level - chain.foldLimit;
   const name = `\`${source.name}\``;
   const [own, ...rest] = linesOf(fold);
