@@ -1,7 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { aliasMapCharacters } from '../../server/src/picture/alias-map-characters.ts';
+import type { MapSize } from '../../server/src/picture/alias-map-layout.ts';
 import { endsOf, layOut } from '../../server/src/picture/alias-map-layout.ts';
+import type { AliasMap } from '../../server/src/picture/alias-map-model.ts';
 import { aliasMapModel } from '../../server/src/picture/alias-map-model.ts';
 import { aliasMapSvg } from '../../server/src/picture/alias-map-svg.ts';
 import { frequencyTicks, placeOn, roundValues } from '../../server/src/picture/axis.ts';
@@ -12,6 +14,7 @@ import { foldHz } from '../../server/src/signal/folding.ts';
 import { runs } from '../tools/runs.ts';
 import { EXTRACT_FAN } from '../tools/samples.ts';
 import { MAPS, mapsOf } from './maps.ts';
+import { drawnTexts, faultsOfTexts, viewBoxOf } from './svg-text.ts';
 
 const THEMES: readonly PictureTheme[] = ['light', 'dark', 'high-contrast', 'high-contrast-light', 'neutral'];
 
@@ -78,6 +81,80 @@ describe('the picture of an alias map', () => {
   });
 });
 
+describe.each(['large', 'compact'] as const)('the %s picture of an alias map', (size) => {
+  it.each(MAPS.map(({ name, map }) => [name, map] as const))('%s has no text cut or on another', (_name, map) => {
+    expect(faultsOfTexts(aliasMapSvg(map, { theme: 'light', size }))).toEqual([]);
+  });
+
+  it.each(MAPS.map(({ name, map }) => [name, map] as const))('%s names every source that it draws', (_name, map) => {
+    const texts = drawnTexts(aliasMapSvg(map, { theme: 'light', size })).map(({ text }) => text);
+    const unnamed = sourcesDrawn(map, size).filter((name) => !texts.some((text) => text.startsWith(name)));
+    expect(unnamed).toEqual([]);
+  });
+
+  it('stays legible and within a hover with 1,000 sources', () => {
+    const { map } = mapsOf(withTones(1_000))[0]!;
+    expect(map.marks.length + map.leftOut).toBeGreaterThanOrEqual(1_000);
+    const svg = aliasMapSvg(map, { theme: 'high-contrast', size });
+    expect(faultsOfTexts(svg)).toEqual([]);
+    expect(svg).toContain('marks left out');
+    expect(drawnTexts(svg).some(({ text }) => text.startsWith('tone-0 15.6 kHz'))).toBe(true);
+    expect(`data:image/svg+xml;base64,${Buffer.from(svg).toString('base64')}`.length).toBeLessThan(48_000);
+  });
+
+  it('cuts no text and lays none on another, however many sources there are and wherever they stand', () => {
+    const tone = fc.record({
+      hz: fc.integer({ min: 1, max: 200_000 }),
+      millivolts: fc.integer({ min: 1, max: 9_000 }),
+    });
+    fc.assert(
+      fc.property(fc.array(tone, { minLength: 1, maxLength: 24 }), (tones) => {
+        const { map } = mapsOf(withSources(tones.map(({ hz, millivolts }) => [`${hz} Hz`, millivolts] as const)))[0]!;
+        expect(faultsOfTexts(aliasMapSvg(map, { theme: 'light', size }))).toEqual([]);
+      }),
+      { numRuns: runs(300), seed: 13 },
+    );
+  });
+});
+
+describe('the compact picture of an alias map', () => {
+  it('fits the 250 pixels at which editors cut a hover, its edges included', () => {
+    const { width, height } = viewBoxOf(aliasMapSvg(MAPS[0]!.map, { theme: 'light', size: 'compact' }));
+    expect(width).toBeLessThanOrEqual(520);
+    expect(height).toBeLessThanOrEqual(230);
+  });
+
+  it('has the marks of the large one', () => {
+    for (const { map } of MAPS) {
+      const shapes = (size: MapSize): readonly boolean[] =>
+        [/<circle/, /l4 4l-4 4l-4 -4z/, /l5\.5 9\.5h-11z/].map((shape) =>
+          shape.test(aliasMapSvg(map, { theme: 'light', size })),
+        );
+      expect(shapes('compact')).toEqual(shapes('large'));
+    }
+  });
+});
+
+/** The sources that have a place on the map or in the spectrum. */
+function sourcesDrawn(map: AliasMap, size: MapSize): readonly string[] {
+  const layout = layOut(map, size);
+  const drawn = map.marks.filter((mark) => mark.level >= map.levelLow || endsOf(mark, layout));
+  return [...new Set(drawn.map(({ sourceName }) => sourceName))];
+}
+
+/** The worked example with more sources, each a frequency and a level in millivolts. */
+function withSources(tones: readonly (readonly [frequency: string, millivolts: number])[]): string {
+  const entries = tones.map(
+    ([frequency, millivolts], index) => `  tone-${index}: { frequency: ${frequency}, level: ${millivolts} mV }\n`,
+  );
+  return EXTRACT_FAN.replace('sources:\n', `sources:\n${entries.join('')}`);
+}
+
+/** The worked example with tones that fold into its band. */
+function withTones(count: number): string {
+  return withSources(Array.from({ length: count }, (_, index) => [`${15_600 + index} Hz`, 400 - index / 10] as const));
+}
+
 describe('the model of an alias map', () => {
   it.each(MAPS.map((drawn) => [drawn.name, drawn] as const))(
     '%s has its marks where the arrivals say',
@@ -98,7 +175,7 @@ describe('the model of an alias map', () => {
   it.each(MAPS.map(({ name, map }) => [name, map] as const))(
     '%s shows every mark that spoils the band, within the picture',
     (_name, map) => {
-      const layout = layOut(map, 560, 430);
+      const layout = layOut(map, 'large');
       for (const mark of map.marks) {
         const ends = endsOf(mark, layout);
         if (!ends) continue;

@@ -16,7 +16,11 @@ import {
 
 const MOST_ROWS = 12;
 
-/** The alias map of a channel and what arrives, as Markdown; why there is none, where its chain can't be known. */
+/**
+ * The alias map of a channel and what arrives, as Markdown; why there is none, where its chain can't be known.
+ *
+ * A picture comes first, since editors show no more than the top of a long hover; a drawing stands under its headline.
+ */
 export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): string {
   const { chain, channel, findings } = judged.result;
   const name = codeMarkdown(channel.name);
@@ -25,17 +29,12 @@ export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): 
   const head = headline(chain, judged);
   const table = arrivalsTable(chain, arrivals);
   const room = MOST_HOVER_CHARACTERS - head.length - table.length - 100;
-  return [head, mapDrawing(chain, arrivals, abilities, room), table].join('\n\n');
-}
-
-/** The map as a picture where the client shows pictures and it fits, in characters otherwise. */
-function mapDrawing(chain: Chain, arrivals: readonly Arrival[], abilities: ClientAbilities, room: number): string {
   const model = aliasMapModel(chain, arrivals);
-  if (abilities.showsPictures) {
-    const picture = pictureMarkdown(aliasMapSvg(model, { theme: abilities.theme }), model.title);
-    if (picture.length <= room) return picture;
-  }
-  return drawingMarkdown(aliasMapCharacters(model, { ascii: false }));
+  const picture = abilities.showsPictures
+    ? pictureMarkdown(aliasMapSvg(model, { theme: abilities.theme, size: 'compact' }), model.description)
+    : '';
+  if (picture !== '' && picture.length <= room) return [picture, head, table].join('\n\n');
+  return [head, drawingMarkdown(aliasMapCharacters(model, { ascii: false })), table].join('\n\n');
 }
 
 function headline(chain: Chain, judged: JudgedChannel): string {

@@ -27,8 +27,9 @@ export function codeMarkdown(text: string): string {
   return `${fence}${pad}${clean}${pad}${fence}`;
 }
 
+/** Code, links and markup in a name would end the alternative before its time. */
 function escapedAlternative(text: string): string {
-  return text.replaceAll(/[[\]\\]/g, '\\$&').replaceAll(/\s+/g, ' ');
+  return text.replaceAll(/[[\]\\`*_<>&~!]/g, '\\$&').replaceAll(/\s+/g, ' ');
 }
 
 const ALPHABET = 'ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789+/';

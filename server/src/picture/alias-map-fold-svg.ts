@@ -2,7 +2,7 @@ import { formatHz } from '../quantity/write.ts';
 import type { PlacedMark } from './alias-map-labels.ts';
 import { markWishes } from './alias-map-labels.ts';
 import type { MapLayout } from './alias-map-layout.ts';
-import { endsOf, MARGIN } from './alias-map-layout.ts';
+import { endsOf } from './alias-map-layout.ts';
 import type { AliasMap, Mark } from './alias-map-model.ts';
 import { frequencyTicks, placeOn } from './axis.ts';
 import { foldLineSvg, foldSegments } from './fold-line-svg.ts';
@@ -21,8 +21,8 @@ export function foldMapSvg(map: AliasMap, layout: MapLayout, palette: Palette): 
   const shapes = apartFromTheirLike(marks, 'both');
   const taken = shapes.map(({ x, y }): Box => ({ left: x - 6, right: x + 6, top: y - 6, bottom: y + 6 }));
   const area = {
-    left: MARGIN.left + 2,
-    right: layout.width - MARGIN.right,
+    left: layout.margin.left + 2,
+    right: layout.width - layout.margin.right,
     top: recordedAxis.to - 6,
     bottom: recordedAxis.from - 1,
   };
@@ -114,15 +114,18 @@ function bandName(
 
 /** Ticks closer than this to the end of the axis, in pixels, make room for the Nyquist frequency. */
 const ROOM_AT_TOP = 14;
+/** The least distance of level lines. */
+const LINES_APART = 20;
 
 function grid(map: AliasMap, layout: MapLayout, palette: Palette): string {
-  const { trueAxes, recordedAxis } = layout;
+  const { trueAxes, recordedAxis, tickDrop } = layout;
   const bottom = recordedAxis.from;
   const lines: string[] = [];
   const labels: string[] = [];
   const rowLabel = (y: number, label: string, fill: string): string =>
-    text(MARGIN.left - 7, y + 4, label, { fill, 'text-anchor': 'end' });
-  for (const { value, label } of frequencyTicks(0, map.nyquistHz, 5)) {
+    text(layout.margin.left - 7, y + 4, label, { fill, 'text-anchor': 'end' });
+  const most = Math.min(5, Math.floor((bottom - recordedAxis.to) / LINES_APART));
+  for (const { value, label } of frequencyTicks(0, map.nyquistHz, most)) {
     const y = placeOn(recordedAxis, value);
     if (y - recordedAxis.to < ROOM_AT_TOP) continue;
     lines.push(...trueAxes.map(({ from, to }) => `M${short(from)} ${short(y)}H${short(to)}`));
@@ -131,8 +134,8 @@ function grid(map: AliasMap, layout: MapLayout, palette: Palette): string {
   labels.push(rowLabel(recordedAxis.to, formatHz(map.nyquistHz, 4), palette.ink));
   const taken: Box[] = [];
   for (const axis of trueAxes) {
-    const most = Math.max(1, Math.floor((axis.to - axis.from) / 80));
-    for (const { value, label } of frequencyTicks(axis.low, axis.high, most)) {
+    const mostOfAxis = Math.max(1, Math.floor((axis.to - axis.from) / 80));
+    for (const { value, label } of frequencyTicks(axis.low, axis.high, mostOfAxis)) {
       const x = placeOn(axis, value);
       const half = textWidth(label, SMALL) / 2;
       const middle = Math.min(x, layout.width - 4 - half);
@@ -140,7 +143,7 @@ function grid(map: AliasMap, layout: MapLayout, palette: Palette): string {
       lines.push(`M${short(x)} ${short(bottom)}v4`);
       if (taken.some((other) => overlap(box, other))) continue;
       taken.push(box);
-      labels.push(text(middle, bottom + 16, label, { fill: palette.quiet, 'text-anchor': 'middle' }));
+      labels.push(text(middle, bottom + tickDrop, label, { fill: palette.quiet, 'text-anchor': 'middle' }));
     }
   }
   const breaks = trueAxes.slice(1).map(({ from }) => `M${short(from - 12)} ${short(bottom + 4)}l4 -8m4 8l4 -8`);

@@ -1,7 +1,6 @@
 import type { PlacedMark } from './alias-map-labels.ts';
 import { markWishes } from './alias-map-labels.ts';
 import type { MapLayout } from './alias-map-layout.ts';
-import { MARGIN } from './alias-map-layout.ts';
 import type { AliasMap } from './alias-map-model.ts';
 import { frequencyTicks, levelTicks, placeOn } from './axis.ts';
 import type { Box, Segment } from './label-places.ts';
@@ -27,24 +26,34 @@ export function spectrumSvg(map: AliasMap, layout: MapLayout, palette: Palette):
   ].join('');
 }
 
-function heading(map: AliasMap, { spectrumAxis, levelAxis }: MapLayout, palette: Palette): string {
-  const baseline = levelAxis.to - 8;
-  const right = spectrumAxis.to;
+function heading(
+  map: AliasMap,
+  { spectrumAxis, levelAxis, headingRise, nameDrop }: MapLayout,
+  palette: Palette,
+): string {
+  const baseline = levelAxis.to - headingRise;
   const name = `fold limit ${levelText(map.foldLimit)}`;
-  const left = right - textWidth(name, SMALL);
+  const left = spectrumAxis.to - textWidth(name, SMALL);
+  // Where the axis above has a row for its name, that row counts what is left out.
+  const leftOut = nameDrop === undefined && map.leftOut > 0 ? `; ${map.leftOut} marks left out` : '';
   return (
-    text(spectrumAxis.from, baseline, `in the record, ${map.levelUnit}`, { fill: palette.quiet }) +
-    text(right, baseline, name, { fill: palette.quiet, 'text-anchor': 'end' }) +
+    text(spectrumAxis.from, baseline, `in the record, ${map.levelUnit}${leftOut}`, { fill: palette.quiet }) +
+    text(left, baseline, name, { fill: palette.quiet }) +
     limitLine(left - 30, left - 6, baseline - 4, palette)
   );
 }
 
-function grid(map: AliasMap, { spectrumAxis, levelAxis }: MapLayout, palette: Palette, limitY: number): string {
+/** The least distance of level lines, in pixels. */
+const LINES_APART = 16;
+
+function grid(map: AliasMap, layout: MapLayout, palette: Palette, limitY: number): string {
+  const { spectrumAxis, levelAxis, tickDrop } = layout;
   const left = spectrumAxis.from;
   const right = spectrumAxis.to;
   const strokes: string[] = [];
   const labels: string[] = [];
-  for (const { value } of levelTicks(map.levelLow, map.levelHigh, 4)) {
+  const most = Math.min(4, Math.floor((levelAxis.from - levelAxis.to) / LINES_APART));
+  for (const { value } of levelTicks(map.levelLow, map.levelHigh, most)) {
     const y = placeOn(levelAxis, value);
     strokes.push(`M${short(left)} ${short(y)}H${short(right)}`);
     if (Math.abs(y - limitY) < 13) continue;
@@ -55,8 +64,8 @@ function grid(map: AliasMap, { spectrumAxis, levelAxis }: MapLayout, palette: Pa
     const x = placeOn(spectrumAxis, value);
     strokes.push(`M${short(x)} ${short(levelAxis.from)}v4`);
     const half = textWidth(label, SMALL) / 2;
-    const middle = Math.min(x, right + MARGIN.right - 4 - half);
-    labels.push(text(middle, levelAxis.from + 16, label, { fill: palette.quiet, 'text-anchor': 'middle' }));
+    const middle = Math.min(x, layout.width - 4 - half);
+    labels.push(text(middle, levelAxis.from + tickDrop, label, { fill: palette.quiet, 'text-anchor': 'middle' }));
   }
   return (
     element('path', { d: strokes.join(''), stroke: palette.grid, 'stroke-width': 0.8, fill: 'none' }) + labels.join('')

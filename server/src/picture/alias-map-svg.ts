@@ -1,7 +1,7 @@
 import { formatHz } from '../quantity/write.ts';
 import { foldMapSvg } from './alias-map-fold-svg.ts';
-import type { MapLayout } from './alias-map-layout.ts';
-import { layOut, MARGIN } from './alias-map-layout.ts';
+import type { MapLayout, MapSize } from './alias-map-layout.ts';
+import { layOut } from './alias-map-layout.ts';
 import type { AliasMap, MarkKind } from './alias-map-model.ts';
 import { spectrumSvg } from './alias-map-spectrum-svg.ts';
 import { textWidth } from './label-places.ts';
@@ -13,19 +13,17 @@ import { FONT, SMALL, text } from './text-svg.ts';
 
 export interface AliasMapSvgOptions {
   readonly theme: PictureTheme;
-  readonly width?: number;
-  readonly height?: number;
+  /** `large` where it is left out. */
+  readonly size?: MapSize;
   /** Past this many bytes marks are left out, the lightest first. */
   readonly maxBytes?: number;
 }
 
-const WIDTH = 560;
-const HEIGHT = 430;
 const MAX_BYTES = 30_000;
 
 /** The alias map as SVG: the same text for the same map. */
 export function aliasMapSvg(map: AliasMap, options: AliasMapSvgOptions): string {
-  const layout = layOut(map, options.width ?? WIDTH, options.height ?? HEIGHT);
+  const layout = layOut(map, options.size ?? 'large');
   const palette = paletteFor(options.theme);
   for (let most = map.marks.length; ; most = Math.floor(most / 2)) {
     const leftOut = map.leftOut + map.marks.length - most;
@@ -39,8 +37,7 @@ function drawn(map: AliasMap, layout: MapLayout, palette: Palette): string {
   const content = [
     `<title>${escaped(map.title)}</title><desc>${escaped(map.description)}</desc>`,
     palette.background === 'none' ? '' : element('rect', { width, height, rx: 4, fill: palette.background }),
-    text(MARGIN.left, 16, 'recorded', { fill: palette.quiet }),
-    legend(map, layout, palette),
+    head(map, layout, palette),
     foldMapSvg(map, layout, palette),
     between(map, layout, palette),
     spectrumSvg(map, layout, palette),
@@ -60,34 +57,46 @@ function drawn(map: AliasMap, layout: MapLayout, palette: Palette): string {
   );
 }
 
-/** What the shapes mean; only of those that are there. */
-function legend(map: AliasMap, { width }: MapLayout, palette: Palette): string {
+/** The name of the upright axis and what the shapes mean, of those that are there. */
+function head(map: AliasMap, { width, margin, headBaseline, nameDrop }: MapLayout, palette: Palette): string {
   const kinds: readonly MarkKind[] = ['spoils', 'harmless', 'native'];
   const parts: string[] = [];
-  let x = width - MARGIN.right;
+  let x = width - margin.right;
   for (const kind of kinds.filter((one) => map.marks.some((mark) => mark.kind === one))) {
     const word = KIND_WORDS[kind];
-    parts.push(text(x, 16, word, { fill: palette.quiet, 'text-anchor': 'end' }));
+    parts.push(text(x, headBaseline, word, { fill: palette.quiet, 'text-anchor': 'end' }));
     x -= textWidth(word, SMALL) + 8;
-    parts.push(shape(kind, x, 12, palette));
+    parts.push(shape(kind, x, headBaseline - 4, palette));
     x -= 20;
   }
-  return parts.join('');
+  if (nameDrop !== undefined)
+    return text(margin.left, headBaseline, 'recorded', { fill: palette.quiet }) + parts.join('');
+  const names = [
+    'recorded frequency, over the true one at the sensor',
+    'recorded, over true frequency',
+    'recorded, over true',
+  ];
+  const name = names.find((one) => EDGE + textWidth(one, SMALL) <= x) ?? 'recorded';
+  return text(EDGE, headBaseline, name, { fill: palette.quiet }) + parts.join('');
 }
 
+/** The least distance of words from the picture's edge. */
+const EDGE = 6;
+
 /** Between map and spectrum: the name of the axis above, and how the record comes about. */
-function between(map: AliasMap, { width, recordedAxis }: MapLayout, palette: Palette): string {
-  const baseline = recordedAxis.from + 31;
-  const right = width - MARGIN.right;
+function between(map: AliasMap, { width, margin, recordedAxis, nameDrop }: MapLayout, palette: Palette): string {
+  if (nameDrop === undefined) return '';
+  const baseline = recordedAxis.from + nameDrop;
+  const right = width - margin.right;
   const name = 'true frequency at the sensor';
   const rates = map.ratesHz.map((rateHz) => formatHz(rateHz, 4));
   const left = [
     `sampled at ${rates.join(', then ')}`,
     ...(map.leftOut > 0 ? [`${map.leftOut} marks left out`] : []),
   ].join('; ');
-  const fits = MARGIN.left + textWidth(left, SMALL) + 12 < right - textWidth(name, SMALL);
+  const fits = margin.left + textWidth(left, SMALL) + 12 < right - textWidth(name, SMALL);
   return (
     text(right, baseline, name, { fill: palette.quiet, 'text-anchor': 'end' }) +
-    (fits ? text(MARGIN.left, baseline, left, { fill: palette.quiet }) : '')
+    (fits ? text(margin.left, baseline, left, { fill: palette.quiet }) : '')
   );
 }
