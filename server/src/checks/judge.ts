@@ -1,23 +1,18 @@
-import { arrivalsOf } from '../chain/arrivals.ts';
-import { bandResponseOf } from '../chain/band-response.ts';
-import { chainOf } from '../chain/chain.ts';
 import type { Chain } from '../chain/model.ts';
-import { undeclaredFolds } from '../chain/undeclared.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
 import type { ChannelResult, Guard } from './channel-result.ts';
-import type { ChannelSummary, ChannelView, RigView, SaidOfRig } from './check.ts';
+import type { ChannelSummary, ChannelView, Check, RigView, SaidOfRig } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
 import { sharedProblems } from './document/inherited.ts';
 import { saidOfProblem } from './document/problems.ts';
 import { unusedNames } from './document/unused-name.ts';
 import { type Finding, identityOf, SEVERITIES, type Severity } from './finding.ts';
-import { inputRangeOf } from './input-range.ts';
 import { CHANNEL_CHECKS, RIG_CHECKS } from './list.ts';
-import { shortfallOf } from './shortfall.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
+import { viewOf } from './view.ts';
 
 type Severities = Environment['severities'];
 
@@ -41,6 +36,48 @@ export function judgeModel(channel: Channel, severities: Severities, guard: Guar
   const findings: Finding[] = [];
   const chain = judgeInto(findings, channel, severities, guard);
   return { channel, chain, findings: findings.length === 0 ? NO_FINDINGS : inOrder(findings) };
+}
+
+/**
+ * As `judgeModel` as long as every finding may stand: `undefined` as soon as one may not. Most of what a search makes
+ * up fails, and at the check that the search is for.
+ *
+ * @param first the name of the check that is asked first
+ */
+export function judgeWhile(
+  channel: Channel,
+  severities: Severities,
+  guard: Guard,
+  first: string,
+  mayStand: (finding: Finding) => boolean,
+): ChannelResult | undefined {
+  const view = guard('chain', () => viewOf(channel), undefined);
+  if (!view) return undefined;
+  const findings: Finding[] = [];
+  for (const check of firstOf(first)) {
+    const before = findings.length;
+    runCheck(findings, check, view, severities, guard);
+    for (let index = before; index < findings.length; index++) if (!mayStand(findings[index]!)) return undefined;
+  }
+  const before = findings.length;
+  runDigitalEdges(findings, view, severities, guard);
+  for (let index = before; index < findings.length; index++) if (!mayStand(findings[index]!)) return undefined;
+  return { channel, chain: view.chain, findings: inOrder(findings) };
+}
+
+/** What one check by itself says of a made-up channel. */
+export function judgeBy(checkName: string, channel: Channel, severities: Severities, guard: Guard): readonly Finding[] {
+  const check = CHANNEL_CHECKS.find(({ name }) => name === checkName);
+  const view = check && guard('chain', () => viewOf(channel), undefined);
+  if (!check || !view) return NO_FINDINGS;
+  const findings: Finding[] = [];
+  runCheck(findings, check, view, severities, guard);
+  return findings;
+}
+
+/** All checks, the named one first. */
+function firstOf(checkName: string): readonly Check<'channel'>[] {
+  return [...CHANNEL_CHECKS].sort((one, other) => Number(other.name === checkName) - Number(one.name === checkName));
 }
 
 /**
@@ -78,25 +115,27 @@ export function judgeRig(
 function judgeInto(findings: Finding[], channel: Channel, severities: Severities, guard: Guard): Chain | undefined {
   const view = guard('chain', () => viewOf(channel), undefined);
   if (!view) return undefined;
-  for (const { name, severity, run } of CHANNEL_CHECKS) {
-    const said = guard(name, () => run(view), SAYS_NOTHING);
-    for (const one of said) addFinding(findings, name, severity, one, channel.name, severities);
-  }
-  for (const one of guard('out-of-range', () => digitalEdges(view), SAYS_NOTHING)) {
-    addFinding(findings, 'out-of-range', 'error', one, channel.name, severities);
-  }
+  for (const check of CHANNEL_CHECKS) runCheck(findings, check, view, severities, guard);
+  runDigitalEdges(findings, view, severities, guard);
   return view.chain;
 }
 
-function viewOf(channel: Channel): ChannelView | undefined {
-  const chain = chainOf(channel);
-  if (!chain) return undefined;
-  const arrivals = arrivalsOf(chain);
-  const undeclared = undeclaredFolds(chain);
-  const shortfall = shortfallOf({ channel, chain, arrivals, undeclared });
-  const bandResponse = bandResponseOf(chain);
-  const input = inputRangeOf({ channel, chain, bandResponse });
-  return { channel, chain, arrivals, undeclared, bandResponse, shortfall, input };
+function runCheck(
+  findings: Finding[],
+  { name, severity, run }: Check<'channel'>,
+  view: ChannelView,
+  severities: Severities,
+  guard: Guard,
+): void {
+  const said = guard(name, () => run(view), SAYS_NOTHING);
+  for (const one of said) addFinding(findings, name, severity, one, view.channel.name, severities);
+}
+
+/** What of a filter is out of range only at the rate that the channel gives it. */
+function runDigitalEdges(findings: Finding[], view: ChannelView, severities: Severities, guard: Guard): void {
+  for (const one of guard('out-of-range', () => digitalEdges(view), SAYS_NOTHING)) {
+    addFinding(findings, 'out-of-range', 'error', one, view.channel.name, severities);
+  }
 }
 
 function addFinding(

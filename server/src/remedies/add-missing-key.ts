@@ -2,19 +2,25 @@ import { reachableRates } from '../chain/reachable.ts';
 import type { Finding } from '../checks/finding.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { NamedSection } from '../rig/entry.ts';
+import type { Channel } from '../rig/model.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 import type { TreeNode } from '../rig/tree.ts';
 import type { ContextName } from '../rig/vocabulary.ts';
 import { keyRow } from '../rig/vocabulary.ts';
 import type { Proposal, RemedyDefinition } from './definition.ts';
 import { setKey } from './edit-text.ts';
+import { roundedHz } from './filter-model.ts';
 import { firstPair } from './new-thing.ts';
 import { rateText } from './rates.ts';
 import type { Search } from './search.ts';
+import { firstCured } from './search.ts';
 import { nodeAt } from './steps.ts';
 
 /** Common practice asks a rate of 2.56 times the band's top for spectrum work. */
 const USUAL_RATE_OVER_TOP = 2.56;
+
+/** Of the widest usual band. */
+const BAND_PARTS = [1, 1 / 2, 1 / 4, 1 / 8, 1 / 16, 1 / 32] as const;
 
 export const addMissingKey: RemedyDefinition = {
   name: 'add-missing-key',
@@ -79,19 +85,30 @@ function shiftBefore(edits: readonly TextEdit[], one: TextEdit): number {
 }
 
 /** A rate that suits the band; for any other key the example of the vocabulary. */
-function proposedValue({ channel, context }: Search, key: string): string | undefined {
+function proposedValue(search: Search, key: string): string | undefined {
+  const { channel, context } = search;
   const band = channel?.band?.value;
   if (channel && key === 'rate' && band && context.finding.place.entry === channel.place.entry) {
     const due = band.highHz * USUAL_RATE_OVER_TOP;
     const [rate] = reachableRates(channel.digitizer, due * (1 - 1e-9), due * 100, 1);
     if (rate !== undefined) return rateText(channel, rate);
   }
-  if (channel && key === 'band' && channel.rateHz) {
-    return `0 Hz .. ${formatHz(channel.rateHz.value / USUAL_RATE_OVER_TOP, 3)}`;
-  }
+  if (channel && key === 'band') return proposedBand(search, channel);
   if (key === 'rig') return 'Untitled rig';
   const found = keyRow(contextOf(context.finding), key);
   return found?.example;
+}
+
+/** The widest of a few bands in which nothing is found; the widest of all where none is clean. */
+function proposedBand(search: Search, channel: Channel): string | undefined {
+  const { rateHz, place } = channel;
+  if (!rateHz) return undefined;
+  const widest = rateHz.value / USUAL_RATE_OVER_TOP;
+  const found = firstCured(search, BAND_PARTS, (part) => {
+    const value = { lowHz: 0, highHz: roundedHz(widest * part) };
+    return { ...channel, complete: true, band: { value, place } };
+  });
+  return `0 Hz .. ${formatHz(roundedHz(widest * (found?.value ?? 1)))}`;
 }
 
 function contextOf({ about, place }: Finding): ContextName {

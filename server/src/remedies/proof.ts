@@ -12,27 +12,32 @@ const SLACK = 1e-9;
  * that stays has grown worse or more severe.
  */
 export function isProved(finding: Finding, { before, after }: Recheck): boolean {
+  return after.every(mayStandBeside(finding, before));
+}
+
+/** The same rule, for one finding after the other: true for one that may be there afterwards. */
+export function mayStandBeside(finding: Finding, before: readonly Finding[]): (after: Finding) => boolean {
   const identity = identityOf(finding);
-  return !after.some((one) => identityOf(one) === identity) && nothingWorse(before, after);
+  const isNoWorse = noWorseThan(before);
+  return (after) => identityOf(after) !== identity && isNoWorse(after);
 }
 
 /** The rule of proof for what a person has yet to fill in: its finding may stay, and nothing else may come. */
 export function isHarmless({ before, after }: Recheck): boolean {
-  return nothingWorse(before, after);
+  return after.every(noWorseThan(before));
 }
 
-function nothingWorse(before: readonly Finding[], after: readonly Finding[]): boolean {
-  if (after.length === 0) return true;
+function noWorseThan(before: readonly Finding[]): (after: Finding) => boolean {
   const known = new Map<string, Finding>();
   for (const finding of before) {
     const identity = identityOf(finding);
     const other = known.get(identity);
     if (!other || isWorse(finding, other)) known.set(identity, finding);
   }
-  return after.every((finding) => {
-    const old = known.get(identityOf(finding));
-    return old ? !isWorse(finding, old) : finding.severity === 'hint';
-  });
+  return (after) => {
+    const old = known.get(identityOf(after));
+    return old ? !isWorse(after, old) : after.severity === 'hint';
+  };
 }
 
 /** True where `finding` is more severe than `old`, or as severe and further past its limit. */

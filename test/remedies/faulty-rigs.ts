@@ -1,0 +1,72 @@
+import fc from 'fast-check';
+
+/** Rigs with faults that people make, in the styles that they write in. */
+export const faultyRig: fc.Arbitrary<string> = fc
+  .record({
+    rates: fc.array(fc.constantFrom('12.8 kHz', '25.6 kHz', '6400 Hz', '3.2 kHz', '5 kHz', "'10.24 kHz'", '8000'), {
+      minLength: 1,
+      maxLength: 4,
+    }),
+    carrier: fc.constantFrom('16 kHz', '9.7 kHz', '24.9 kHz', '5.1 kHz'),
+    level: fc.constantFrom(', level: 400 mV', ', level: 2 V', '', ', level: 0.5 g'),
+    order: fc.integer({ min: 1, max: 8 }),
+    response: fc.constantFrom('butterworth', 'bessel', 'chebyshev'),
+    cutoff: fc.constantFrom('2 kHz', '4 kHz', '8 kHz', '0.4 fs'),
+    band: fc.constantFrom('10 Hz .. 1 kHz', '5 Hz .. 2 kHz', '10 Hz .. 4.5 kHz'),
+    peak: fc.constantFrom('', 'peak: 40 g', 'peak: 120 g', 'peak: 4 g'),
+    step: fc.constantFrom('', 'then: [{ decimate: 2 }]', 'then: [{ decimate: 4, filter: tidy }]'),
+    slip: fc.constantFrom('', 'flatnes: 1 dB', 'filter: crad', 'headroom: 3', 'digitizer: fornt-end'),
+    style: fc.constantFrom('block', 'flow', 'defaults', 'alias'),
+    lineEnd: fc.constantFrom('\n', '\n', '\r\n'),
+  })
+  .map((draft) => {
+    const ripple = draft.response === 'chebyshev' ? ', ripple: 0.5 dB' : '';
+    const head = [
+      '# faulty on purpose',
+      'rig: Faulty',
+      'clocks:',
+      '  chassis: { frequency: 13.1072 MHz, divide: 1..512 }',
+      'digitizers:',
+      '  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V, ranges: [±10 V, ±1 V] }',
+      'filters:',
+      `  card: { response: ${draft.response}, order: ${draft.order}${ripple}, cutoff: ${draft.cutoff} }   # the card's own`,
+      '  tidy: { response: kaiser, pass: 0.1 fs, stop: 0.15 fs, stopband: 70 dB }',
+      'sensors:',
+      '  stud: { measures: acceleration, sensitivity: 100 mV/g, resonance: 30 kHz, range: 100 g }',
+      'sources:',
+      '  blade: { order: 9, speed: 600..3000 rpm, harmonics: 3, level: 1 g, falls: 6 dB/oct, wanted: true }',
+      `  inverter: { carrier: ${draft.carrier}, modulation: 50 Hz${draft.level} }`,
+    ];
+    const keys = (rate: string): string[] =>
+      [
+        'sensor: stud',
+        'digitizer: front-end',
+        `rate: ${rate}`,
+        'filter: card',
+        `band: ${draft.band}`,
+        draft.peak,
+        draft.step,
+      ].filter((key) => key !== '');
+    const channels = draft.rates.flatMap((rate, index): string[] => {
+      const slip = index === 0 && draft.slip !== '' ? draft.slip : undefined;
+      const all = keys(rate).filter((key) => slip === undefined || key.split(':')[0] !== slip.split(':')[0]);
+      if (slip !== undefined) all.push(slip);
+      switch (draft.style) {
+        case 'flow':
+          return [`  ch-${index}: { ${all.join(', ')} }`];
+        case 'alias':
+          return index === 0 ? [`  ch-0: &first`, ...all.map((key) => `    ${key}`)] : [`  ch-${index}: *first`];
+        case 'defaults':
+          return [
+            `  ch-${index}:   # position ${index}`,
+            ...all
+              .filter((key) => !key.startsWith('rate') && !key.startsWith('filter: card'))
+              .map((key) => `    ${key}`),
+          ];
+        default:
+          return [`  ch-${index}:`, ...all.map((key) => `    ${key}`), `    # end of ${index}`];
+      }
+    });
+    const defaults = draft.style === 'defaults' ? ['defaults:', `  rate: ${draft.rates[0]}`, '  filter: card'] : [];
+    return [...head, ...defaults, 'channels:', ...channels, ''].join(draft.lineEnd);
+  });
