@@ -1,5 +1,5 @@
 import { type Along, alongPiece, leastPointAlong } from '../signal/cascade.ts';
-import type { FoldedPiece } from '../signal/folding.ts';
+import type { FoldedPiece, StageInput } from '../signal/folding.ts';
 import type { SignalPath } from './model.ts';
 
 /** Where a piece comes through least attenuated. */
@@ -33,9 +33,13 @@ export function strongestOf(
     const sensorDb = seesSensor ? path.sensor.leastDb(trueLowHz, trueLowHz) : 0;
     return { attenuationDb: filtersDb + sensorDb, filtersDb, atHz: trueLowHz };
   }
-  const filters = alongPiece(piece, path.known).map((member) => partOf(member, from, to));
+  const members: Along[] = [];
+  for (const { response, lowHz, highHz, reversed } of alongPiece(piece, path.known)) {
+    const part = partOf({ lowHz, highHz, reversed }, from, to);
+    members.push({ response, lowHz: part.lowHz, highHz: part.highHz, reversed });
+  }
   const truth = partOf({ lowHz: trueLowHz, highHz: trueHighHz, reversed: false }, from, to);
-  const members = seesSensor ? [...filters, { ...truth, response: path.sensor }] : filters;
+  if (seesSensor) members.push({ response: path.sensor, lowHz: truth.lowHz, highHz: truth.highHz, reversed: false });
   if (members.length === 0) return { attenuationDb: 0, filtersDb: 0, atHz: truth.lowHz };
   const { attenuationDb, t } = leastPointAlong(members);
   const atHz = Math.min(truth.lowHz + t * (truth.highHz - truth.lowHz), truth.highHz);
@@ -77,11 +81,11 @@ function attenuationAtPoint(path: SignalPath, piece: FoldedPiece): number {
 }
 
 /** The part of a range that a member sees from `from` to `to` along the piece. */
-export function partOf<Range extends Omit<Along, 'response'>>(range: Range, from: number, to: number): Range {
+export function partOf(range: StageInput, from: number, to: number): StageInput {
   if (from <= 0 && to >= 1) return range;
   const { lowHz, highHz, reversed } = range;
   const width = highHz - lowHz;
   const start = reversed ? highHz - to * width : lowHz + from * width;
   const end = reversed ? highHz - from * width : lowHz + to * width;
-  return { ...range, lowHz: Math.max(start, lowHz), highHz: Math.min(Math.max(start, end), highHz) };
+  return { lowHz: Math.max(start, lowHz), highHz: Math.min(Math.max(start, end), highHz), reversed };
 }

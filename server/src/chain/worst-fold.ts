@@ -139,8 +139,9 @@ function leastOf(
   const to = width > 0 ? (highHz - whole.lowHz) / width : 1;
   const isMirrored = zone % 2 === 1;
   const members: Along[] = ahead.map((response) => ({ response, lowHz, highHz, reversed: false }));
-  for (const member of laterMembers(image.piece, path)) {
-    members.push(partOf(isMirrored ? { ...member, reversed: !member.reversed } : member, from, to));
+  for (const { response, lowHz: low, highHz: high, reversed } of laterMembers(image.piece, path)) {
+    const seen = { lowHz: low, highHz: high, reversed: reversed !== isMirrored };
+    members.push({ response, ...partOf(seen, from, to) });
   }
   if (members.length === 0) return { attenuationDb: 0, atHz: lowHz };
   const { attenuationDb, t } = leastPointAlong(members);

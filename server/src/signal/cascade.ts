@@ -100,13 +100,17 @@ export function greatestPointAlong(members: readonly Along[]): PointAlong {
  *   follow the last sampling
  */
 export function alongPiece(piece: FoldedPiece, stages: readonly (readonly Response[])[]): readonly Along[] {
-  return stages.flatMap((responses, stage) => {
-    const input = piece.inputs[stage] ?? recordedRange(piece);
-    return responses.flatMap(membersOf).map((response) => ({
-      ...input,
-      response: piece.collapsed ? heldAt(response, input.lowHz, input.highHz) : response,
-    }));
+  const along: Along[] = [];
+  stages.forEach((responses, stage) => {
+    const { lowHz, highHz, reversed } = piece.inputs[stage] ?? recordedRange(piece);
+    for (const given of responses) {
+      for (const member of membersOf(given)) {
+        const response = piece.collapsed ? heldAt(member, lowHz, highHz) : member;
+        along.push({ response, lowHz, highHz, reversed });
+      }
+    }
   });
+  return along;
 }
 
 function recordedRange({ recordedLowHz, recordedHighHz, mirrored }: FoldedPiece): StageInput {
