@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import type { Guard } from '../../server/src/checks/channel-result.ts';
 import { identityOf } from '../../server/src/checks/finding.ts';
-import { judgeChannel, judgeModel, judgeRig } from '../../server/src/checks/judge.ts';
+import { judgeChannel, judgeModel, judgingRig } from '../../server/src/checks/judge.ts';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { type Environment, readEnvironment } from '../../server/src/rig/environment.ts';
 import { editSnapshot, readSnapshot } from '../../server/src/rig/snapshot.ts';
-import { findingsOf, found, NO_GUARD, names, only, underlined } from './judged.ts';
+import { findingsOf, finished, found, NO_GUARD, names, only, underlined } from './judged.ts';
 
 const RIG = `rig: Test
 digitizers: { d: { full-scale: ±1 V } }
@@ -111,7 +111,7 @@ describe('counting what is named', () => {
   /** As the workbench does it: what an edit has left alone is the same object as before. */
   function judged(environment: Environment, before: ReturnType<typeof readAll> | undefined) {
     const channels = readAll(environment, before);
-    return { channels, findings: judgeRig(environment, channels, NO_GUARD) };
+    return { channels, findings: finished(judgingRig(environment, channels, NO_GUARD)) };
   }
   function readAll(
     environment: Environment,

@@ -1,6 +1,6 @@
 import type { Guard } from '../../server/src/checks/channel-result.ts';
 import type { Finding } from '../../server/src/checks/finding.ts';
-import { judgeChannel, judgeRig } from '../../server/src/checks/judge.ts';
+import { judgeChannel, judgingRig } from '../../server/src/checks/judge.ts';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';
@@ -16,7 +16,18 @@ export function findingsOf(text: string): readonly Finding[] {
     const reading = readChannel(entry, environment);
     return { reading, result: judgeChannel(reading, environment.severities, NO_GUARD) };
   });
-  return [...judgeRig(environment, channels, NO_GUARD), ...channels.flatMap(({ result }) => result.findings)];
+  return [
+    ...finished(judgingRig(environment, channels, NO_GUARD)),
+    ...channels.flatMap(({ result }) => result.findings),
+  ];
+}
+
+/** What a computation in steps comes to. */
+export function finished<T>(steps: Generator<void, T>): T {
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
 }
 
 /** The findings of one check. */

@@ -1,6 +1,6 @@
 import type { ChannelResult, Guard } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
-import { judgeChannel, judgeRig } from '../checks/judge.ts';
+import { judgeChannel, judgingRig } from '../checks/judge.ts';
 import { CHECK_NAMES } from '../checks/list.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import { readChannel, stillHolds } from '../rig/channel-reading.ts';
@@ -43,6 +43,7 @@ export function* evaluating(
   near?: Entry,
 ): Generator<void, Evaluation> {
   const environment = readEnvironment(snapshot, CHECK_NAMES, previous?.environment);
+  yield;
   const channels = reuse(environment, previous);
   yield;
   for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
@@ -50,7 +51,8 @@ export function* evaluating(
     yield;
   }
   const complete = channels as readonly JudgedChannel[];
-  return { snapshot, environment, channels: complete, rigFindings: judgeRig(environment, complete, guard) };
+  const rigFindings = yield* judgingRig(environment, complete, guard);
+  return { snapshot, environment, channels: complete, rigFindings };
 }
 
 /** Evaluates at one go. */
