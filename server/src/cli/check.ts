@@ -7,7 +7,7 @@ import { locatedFindings } from '../workbench/findings.ts';
 import type { Workbench } from '../workbench/workbench.ts';
 import type { Command } from './command.ts';
 import { deliver } from './command.ts';
-import { findFiles } from './find-files.ts';
+import { findFiles, NO_FILES } from './find-files.ts';
 import type { CommandIo, ExitCode } from './io.ts';
 import { graver, UsageError } from './io.ts';
 import { newWorkbench, type OpenedRig, openRig } from './open-rig.ts';
@@ -52,6 +52,7 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
   const format = choice(options, 'format', ['text', 'json'] as const, 'text');
   const from = failOn(options);
   const only = checkNames(listOf(options.text('only')));
+  const paint = paintFor(options, io);
   const paths = options.words.length === 0 ? ['.'] : options.words;
   const found = findFiles(
     paths.filter((path) => path !== '-'),
@@ -61,8 +62,7 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
   let exit: ExitCode = found.faults.length > 0 ? 2 : 0;
 
   const files = [...(paths.includes('-') ? ['-'] : []), ...found.files];
-  if (files.length === 0 && exit === 0)
-    io.stderr('ratewright: no rig files here (*.rig.yaml, *.rig.yml, *.rig.json)\n');
+  if (files.length === 0 && exit === 0) io.stderr(`ratewright: ${NO_FILES}\n`);
   const progress = progressOver(files.length, options.flag('quiet'), io);
   const reports: FileReport[] = [];
   for (const [index, path] of files.entries()) {
@@ -81,7 +81,6 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
 
   if (reports.some(({ findings }) => findings.some(({ finding }) => fails(finding.severity, from))))
     exit = graver(exit, 1);
-  const paint = paintFor(options, io);
   if (format === 'json') return graver(exit, deliver(findingsJson(reports), options, io));
   const text = reports.map((report) => findingsText(report, paint)).join('');
   const summary = options.flag('quiet') ? '' : summaryText(reports.length, summaryOf(reports), paint);
@@ -107,13 +106,13 @@ function reportOf(
     );
   return {
     path: rig.path,
-    text: rig.text,
     channels: rig.evaluation.channels.length,
     findings,
   };
 }
 
 function checkNames(names: readonly string[] | undefined): ReadonlySet<string> | undefined {
+  if (names?.length === 0) throw new UsageError('--only takes the names of checks, with commas between them');
   for (const name of names ?? []) {
     if (CHECK_NAMES.includes(name)) continue;
     const near = nearest(name, CHECK_NAMES);

@@ -1,4 +1,4 @@
-import { writeFileSync } from 'node:fs';
+import { statSync, writeFileSync } from 'node:fs';
 import { resolve } from 'node:path';
 import type { CommandIo, ExitCode } from './io.ts';
 import type { ParsedOptions } from './options.ts';
@@ -25,12 +25,17 @@ export function deliver(result: string, options: ParsedOptions, io: CommandIo): 
   }
   const path = resolve(io.cwd, output);
   try {
-    // What is no regular file (a pipe, /dev/null) can't be replaced, only written to.
-    if (path.startsWith('/dev/')) writeFileSync(path, result);
-    else replaceFile(path, result);
+    if (canBeReplaced(path)) replaceFile(path, result);
+    else writeFileSync(path, result);
     return 0;
   } catch (fault) {
-    io.stderr(`ratewright: ${output} ${reasonOf(fault).replace("can't be read", "can't be written")}\n`);
+    io.stderr(`ratewright: ${output} ${reasonOf(fault, 'written')}\n`);
     return 2;
   }
+}
+
+/** What is no regular file (a pipe, `/dev/null`, `/dev/stdout`) can't be replaced, only written to. */
+function canBeReplaced(path: string): boolean {
+  const status = statSync(path, { throwIfNoEntry: false });
+  return !path.startsWith('/dev/') && (status === undefined || status.isFile());
 }

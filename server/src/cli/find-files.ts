@@ -1,5 +1,5 @@
-import { type Dirent, readdirSync, readFileSync, realpathSync, statSync } from 'node:fs';
-import { join, relative, sep } from 'node:path';
+import { type Dirent, existsSync, readdirSync, readFileSync, realpathSync, statSync } from 'node:fs';
+import { dirname, join, relative, resolve, sep } from 'node:path';
 import ignore from 'ignore';
 import { reasonOf } from './read-file.ts';
 
@@ -8,6 +8,12 @@ const RIG_FILE = /\.rig\.(?:yaml|yml|json)$/;
 
 /** Folders that never hold rigs of one's own. */
 const PASSED_OVER = new Set(['.git', 'node_modules']);
+
+/** As Git has it: names that differ in case alone are one where the file system takes them for one. */
+const IGNORES_CASE = process.platform === 'win32' || process.platform === 'darwin';
+
+/** What is said where nothing is found. */
+export const NO_FILES = 'no rig files here (*.rig.yaml, *.rig.yml, *.rig.json)';
 
 export interface FoundFiles {
   /** As they are to be named in reports: relative where the path given was. */
@@ -25,22 +31,27 @@ interface Ignoring {
 
 /**
  * The rig files behind some paths: a file is taken whatever its name, a folder is searched for rig files, honouring
- * `.gitignore` in it and below. Sorted within each path given, each file once.
+ * every `.gitignore` in it, below it, and above it as far as its repository reaches. A folder that is ignored itself
+ * but given by name is searched all the same. Sorted within each path given, each file once.
  */
 export function findFiles(paths: readonly string[], cwd: string): FoundFiles {
-  const files = new Set<string>();
+  const files = new Map<string, string>();
+  const add = (name: string): void => {
+    const full = resolve(cwd, name);
+    if (!files.has(full)) files.set(full, name);
+  };
   const faults: { path: string; reason: string }[] = [];
   for (const path of paths) {
-    const full = join(cwd, relative(cwd, path.startsWith(sep) ? path : join(cwd, path)));
+    const full = resolve(cwd, path);
     try {
       if (statSync(full).isDirectory()) {
-        for (const file of searched(full, [], new Set(), faults)) files.add(named(file, path, full));
-      } else files.add(path);
+        for (const file of searched(full, rulesAbove(full), new Set(), faults)) add(named(file, path, full));
+      } else add(path);
     } catch (fault) {
       faults.push({ path, reason: reasonOf(fault) });
     }
   }
-  return { files: [...files], faults };
+  return { files: [...files.values()], faults };
 }
 
 function named(file: string, given: string, folder: string): string {
@@ -81,18 +92,32 @@ function rulesOf(folder: string): Ignoring {
   try {
     return {
       folder,
-      rules: ignore().add(readFileSync(join(folder, '.gitignore'), 'utf8')),
+      rules: ignore({ ignoreCase: IGNORES_CASE }).add(readFileSync(join(folder, '.gitignore'), 'utf8')),
     };
   } catch {
     return { folder, rules: ignore() };
   }
 }
 
+/** The rules of the folders above one, outermost first; none outside a repository. */
+function rulesAbove(folder: string): readonly Ignoring[] {
+  const above: string[] = [];
+  for (let at = folder; !existsSync(join(at, '.git')); at = dirname(at)) {
+    if (at === dirname(at)) return [];
+    above.unshift(dirname(at));
+  }
+  const ignoring = above.map(rulesOf);
+  return isIgnored(folder, true, ignoring) ? [] : ignoring;
+}
+
+/** The innermost rules that say something of a path decide. */
 function isIgnored(path: string, isFolder: boolean, ignoring: readonly Ignoring[]): boolean {
-  return ignoring.some(({ folder, rules }) => {
+  for (const { folder, rules } of [...ignoring].reverse()) {
     const inside = relative(folder, path).split(sep).join('/');
-    return rules.ignores(isFolder ? `${inside}/` : inside);
-  });
+    const { ignored, unignored } = rules.test(isFolder ? `${inside}/` : inside);
+    if (ignored || unignored) return ignored;
+  }
+  return false;
 }
 
 function leadsToFolder(path: string): boolean {

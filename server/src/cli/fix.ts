@@ -1,18 +1,20 @@
 import { resolve } from 'node:path';
-import { createTwoFilesPatch } from 'diff';
+import type { FixAllResult } from '../remedies/fix-all.ts';
 import { REMEDY_NAMES } from '../remedies/list.ts';
 import type { RemedyKind } from '../remedies/remedy.ts';
+import { printable } from '../report/printable.ts';
 import { applyTextEdits } from '../rig/text-edit.ts';
 import { allFindings } from '../workbench/findings.ts';
 import type { Command } from './command.ts';
 import { deliver } from './command.ts';
-import { findFiles } from './find-files.ts';
+import { findFiles, NO_FILES } from './find-files.ts';
 import type { CommandIo, ExitCode } from './io.ts';
 import { graver, UsageError } from './io.ts';
 import { newWorkbench, openRig } from './open-rig.ts';
-import type { FailOn, ParsedOptions } from './options.ts';
+import type { FailOn } from './options.ts';
 import { failOn, fails, listOf, parseOptions } from './options.ts';
 import { reasonOf } from './read-file.ts';
+import { unifiedDiff } from './unified-diff.ts';
 import { replaceFile } from './write-file.ts';
 
 const OPTIONS = {
@@ -41,6 +43,8 @@ the acquisition are applied unless more is allowed.
   --fail-on error|warning|hint|none
                             the least severity left over that exits with 1 (error)
   --stdin-filename NAME     what to call standard input (stdin.rig.yaml)
+  -o, --output FILE         write to FILE what would go to standard output: the diff,
+                            or the text that came from standard input
   -q, --quiet               say nothing of what was applied
 
 With - the text comes from standard input and goes to standard output. Files are
@@ -49,11 +53,21 @@ replaced as a whole or not at all.
   run: runFix,
 };
 
+const NOTHING: FixAllResult = { edits: [], applied: [] };
+
 interface FixSettings {
   readonly kinds: ReadonlySet<RemedyKind>;
   readonly remedy: string | undefined;
   readonly dryRun: boolean;
   readonly from: FailOn;
+  readonly isQuiet: boolean;
+  readonly stdinName: string;
+}
+
+interface Fixed {
+  readonly exit: ExitCode;
+  /** What goes to standard output, if anything. */
+  readonly result?: string;
 }
 
 async function runFix(argv: readonly string[], io: CommandIo): Promise<ExitCode> {
@@ -63,43 +77,51 @@ async function runFix(argv: readonly string[], io: CommandIo): Promise<ExitCode>
     remedy: remedyName(options.text('remedy')),
     dryRun: options.flag('dry-run'),
     from: failOn(options),
+    isQuiet: options.flag('quiet'),
+    stdinName: options.text('stdin-filename') ?? 'stdin.rig.yaml',
   };
   const paths = options.words.length === 0 ? ['.'] : options.words;
+  if (options.text('output') !== undefined && !settings.dryRun && !paths.includes('-'))
+    throw new UsageError('--output goes with --dry-run or -; without them each file is replaced where it is');
   const found = findFiles(
     paths.filter((path) => path !== '-'),
     io.cwd,
   );
   for (const { path, reason } of found.faults) io.stderr(`ratewright: ${path} ${reason}\n`);
   let exit: ExitCode = found.faults.length > 0 ? 2 : 0;
-  for (const path of [...(paths.includes('-') ? ['-'] : []), ...found.files]) {
-    exit = graver(exit, await fixFile(path, settings, options, io));
+  const files = [...(paths.includes('-') ? ['-'] : []), ...found.files];
+  if (files.length === 0 && exit === 0) io.stderr(`ratewright: ${NO_FILES}\n`);
+  const results: string[] = [];
+  for (const path of files) {
+    const fixed = await fixFile(path, settings, io);
+    exit = graver(exit, fixed.exit);
+    if (fixed.result !== undefined) results.push(fixed.result);
   }
-  return exit;
+  if (results.length === 0 && !settings.dryRun) return exit;
+  return graver(exit, deliver(results.join(''), options, io));
 }
 
-async function fixFile(path: string, settings: FixSettings, options: ParsedOptions, io: CommandIo): Promise<ExitCode> {
+async function fixFile(path: string, settings: FixSettings, io: CommandIo): Promise<Fixed> {
   const workbench = newWorkbench(io);
-  const rig = await openRig(workbench, path, io, options.text('stdin-filename') ?? 'stdin.rig.yaml');
+  const rig = await openRig(workbench, path, io, settings.stdinName);
   if ('fault' in rig) {
     io.stderr(`ratewright: ${rig.path} ${rig.fault}\n`);
-    return 2;
+    return { exit: 2 };
   }
-  const result = workbench.fixAll(rig.uri, settings.kinds, () => false, settings.remedy);
-  const fixed = result ? applyTextEdits(rig.text, result.edits) : rig.text;
-  const applied = result?.applied ?? [];
-  if (!options.flag('quiet') && !settings.dryRun) {
-    for (const remedy of applied) io.stderr(`${rig.path}: ${remedy.title}\n`);
-  }
+  const { edits, applied } = workbench.fixAll(rig.uri, settings.kinds, () => false, settings.remedy) ?? NOTHING;
+  const fixed = applyTextEdits(rig.text, edits);
+  const isChanged = fixed !== rig.text;
   if (settings.dryRun) {
-    if (fixed === rig.text) return leftOver(workbench, rig.uri, settings.from);
-    return graver(
-      deliver(createTwoFilesPatch(rig.path, rig.path, rig.text, fixed, 'as it is', 'fixed'), options, io),
-      1,
-    );
+    if (!isChanged) return { exit: leftOver(workbench, rig.uri, settings.from) };
+    return { exit: 1, result: unifiedDiff(rig.path, rig.text, edits) };
   }
-  const written = path === '-' ? deliver(fixed, options, io) : fixed === rig.text ? 0 : writeFixed(path, fixed, io);
+  const written = path !== '-' && isChanged ? writeFixed(path, fixed, io) : 0;
+  if (written === 0 && !settings.isQuiet) {
+    for (const remedy of applied) io.stderr(`${rig.path}: ${printable(remedy.title)}\n`);
+  }
   workbench.setFile(rig.uri, { text: fixed });
-  return graver(written, leftOver(workbench, rig.uri, settings.from));
+  const exit = graver(written, leftOver(workbench, rig.uri, settings.from));
+  return path === '-' ? { exit, result: fixed } : { exit };
 }
 
 function writeFixed(path: string, text: string, io: CommandIo): ExitCode {
@@ -107,7 +129,7 @@ function writeFixed(path: string, text: string, io: CommandIo): ExitCode {
     replaceFile(resolve(io.cwd, path), text);
     return 0;
   } catch (fault) {
-    io.stderr(`ratewright: ${path} could not be written: ${reasonOf(fault)}\n`);
+    io.stderr(`ratewright: ${path} ${reasonOf(fault, 'written')}\n`);
     return 2;
   }
 }

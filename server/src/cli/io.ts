@@ -4,7 +4,7 @@ export interface CommandIo {
   readonly environment: Readonly<Record<string, string | undefined>>;
   readonly stdoutIsTerminal: boolean;
   readonly stderrIsTerminal: boolean;
-  /** Everything on standard input, as bytes. */
+  /** Everything on standard input, as bytes; of what is larger than any rig file, so much that it shows. */
   readStdin(): Promise<Uint8Array>;
   stdout(text: string): void;
   stderr(text: string): void;
@@ -20,3 +20,6 @@ export function graver(a: ExitCode, b: ExitCode): ExitCode {
 
 /** The words on the command line do not make sense; the message says which. */
 export class UsageError extends Error {}
+
+/** The words ask for the command's help and not for the command. */
+export class HelpWanted extends Error {}

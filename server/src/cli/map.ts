@@ -3,6 +3,7 @@ import { aliasMapModel } from '../picture/alias-map-model.ts';
 import { aliasMapSvg } from '../picture/alias-map-svg.ts';
 import { mapJson } from '../report/map-json.ts';
 import { mapText } from '../report/map-text.ts';
+import { printable } from '../report/printable.ts';
 import type { JudgedChannel } from '../workbench/evaluation.ts';
 import { worstChannel } from '../workbench/worst-channel.ts';
 import type { Command } from './command.ts';
@@ -32,6 +33,8 @@ draws the one with the gravest findings. FILE may be - for standard input.
   --theme neutral|light|dark|high-contrast|high-contrast-light
                             colours of the SVG (neutral)
   --ascii                   draw the text map in ASCII alone
+  --stdin-filename NAME     what to call standard input (stdin.rig.yaml)
+  --color auto|always|never
   -o, --output FILE         write the map to FILE
 `,
   run: runMap,
@@ -46,6 +49,7 @@ async function runMap(argv: readonly string[], io: CommandIo): Promise<ExitCode>
     ['neutral', 'light', 'dark', 'high-contrast', 'high-contrast-light'] as const,
     'neutral',
   );
+  const paint = paintFor(options, io);
   const [path, name, ...rest] = options.words;
   if (path === undefined || rest.length > 0)
     throw new UsageError('map takes a FILE and, if it is not to choose, a CHANNEL');
@@ -61,7 +65,7 @@ async function runMap(argv: readonly string[], io: CommandIo): Promise<ExitCode>
   }
   const { chain } = judged.result;
   if (!chain) {
-    io.stderr(`ratewright: ${judged.result.channel.name} can't be drawn: ${whyNot(judged)}\n`);
+    io.stderr(`ratewright: ${printable(`${judged.result.channel.name} can't be drawn: ${whyNot(judged)}`)}\n`);
     return 2;
   }
   const arrivals = arrivalsOf(chain);
@@ -74,7 +78,7 @@ async function runMap(argv: readonly string[], io: CommandIo): Promise<ExitCode>
       return deliver(
         mapText(chain, arrivals, {
           ascii: options.flag('ascii'),
-          paint: paintFor(options, io),
+          paint,
         }),
         options,
         io,

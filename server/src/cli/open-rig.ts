@@ -4,7 +4,7 @@ import type { Evaluation } from '../workbench/evaluation.ts';
 import { Workbench } from '../workbench/workbench.ts';
 import type { CommandIo } from './io.ts';
 import type { ReadText } from './read-file.ts';
-import { decode, readText } from './read-file.ts';
+import { decode, readText, reasonOf } from './read-file.ts';
 
 /** A rig file as read and evaluated, or why it was not. */
 export type OpenedRig =
@@ -29,10 +29,18 @@ export async function openRig(
   stdinName: string,
 ): Promise<OpenedRig> {
   const shown = path === '-' ? stdinName : path;
-  const read: ReadText = path === '-' ? decode(await io.readStdin()) : readText(resolve(io.cwd, path));
+  const read: ReadText = path === '-' ? await readStdin(io) : readText(resolve(io.cwd, path));
   if ('fault' in read) return { path: shown, fault: read.fault };
   const uri = pathToFileURL(resolve(io.cwd, shown)).href;
   workbench.setFile(uri, read);
   const evaluation = workbench.evaluation(uri);
   return evaluation ? { path: shown, uri, text: read.text, evaluation } : { path: shown, fault: "can't be read" };
+}
+
+async function readStdin(io: CommandIo): Promise<ReadText> {
+  try {
+    return decode(await io.readStdin());
+  } catch (fault) {
+    return { fault: reasonOf(fault) };
+  }
 }

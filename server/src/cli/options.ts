@@ -4,7 +4,7 @@ import { SEVERITIES } from '../checks/finding.ts';
 import type { Paint } from '../report/paint.ts';
 import { COLOURED, PLAIN } from '../report/paint.ts';
 import type { CommandIo } from './io.ts';
-import { UsageError } from './io.ts';
+import { HelpWanted, UsageError } from './io.ts';
 
 type OptionTable = NonNullable<ParseArgsConfig['options']>;
 
@@ -26,26 +26,33 @@ export interface ParsedOptions {
  * Reads a command's words by its table of options.
  *
  * @throws UsageError for an option that the table does not have, or one without its value
+ * @throws HelpWanted where help is asked for
  */
 export function parseOptions(argv: readonly string[], own: OptionTable): ParsedOptions {
+  const { values, positionals } = parsed(argv, own);
+  const given: Readonly<Record<string, unknown>> = values;
+  if (given.help === true) throw new HelpWanted();
+  return {
+    words: positionals,
+    flag: (name) => given[name] === true,
+    text: (name) => {
+      const value = given[name];
+      return typeof value === 'string' ? value : undefined;
+    },
+  };
+}
+
+function parsed(argv: readonly string[], own: OptionTable): ReturnType<typeof parseArgs> {
   try {
-    const { values, positionals } = parseArgs({
+    return parseArgs({
       args: [...argv],
       options: { ...COMMON_OPTIONS, ...own },
       allowPositionals: true,
       strict: true,
     });
-    const given: Readonly<Record<string, unknown>> = values;
-    return {
-      words: positionals,
-      flag: (name) => given[name] === true,
-      text: (name) => {
-        const value = given[name];
-        return typeof value === 'string' ? value : undefined;
-      },
-    };
   } catch (fault) {
-    throw new UsageError(fault instanceof Error ? fault.message.split('. ')[0]! : String(fault));
+    // What Node says after its first sentence is advice to programmers.
+    throw new UsageError(fault instanceof Error ? fault.message.split(/\.\s/)[0]! : String(fault));
   }
 }
 

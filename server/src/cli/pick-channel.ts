@@ -1,4 +1,5 @@
 import { nearest } from '../quantity/spelling.ts';
+import { printable } from '../report/printable.ts';
 import type { Evaluation, JudgedChannel } from '../workbench/evaluation.ts';
 import { channelNamed } from '../workbench/workbench.ts';
 import type { CommandIo } from './io.ts';
@@ -16,6 +17,7 @@ export function channelOf(
     name,
     evaluation.channels.map(({ result }) => result.channel.name),
   );
-  io.stderr(`ratewright: ${path} has no channel '${name}'${near === undefined ? '' : `; the nearest is '${near}'`}\n`);
+  const meant = near === undefined ? '' : `; the nearest is '${printable(near)}'`;
+  io.stderr(`ratewright: ${path} has no channel '${name}'${meant}\n`);
   return undefined;
 }

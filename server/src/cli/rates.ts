@@ -16,6 +16,7 @@ export const rates: Command = {
 Lists the rates around the channel's band that its digitizer can make, each with its
 margin and with what the channel would then be found to have. FILE may be -.
 
+  --stdin-filename NAME     what to call standard input (stdin.rig.yaml)
   -o, --output FILE         write the list to FILE
   --color auto|always|never
 `,

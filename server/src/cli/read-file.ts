@@ -1,24 +1,26 @@
-import { closeSync, fstatSync, openSync, readFileSync } from 'node:fs';
+import { closeSync, constants, fstatSync, openSync, readFileSync } from 'node:fs';
 import { MOST_CHARACTERS } from '../rig/limits.ts';
 
 /** A file's text, or why it can't be had. */
 export type ReadText = { readonly text: string } | { readonly fault: string };
 
 /** UTF-8 takes at most three bytes for one UTF-16 unit: a file of more bytes than this is over the limit for sure. */
-const MOST_BYTES = MOST_CHARACTERS * 3;
+export const MOST_BYTES = MOST_CHARACTERS * 3;
+
+const TOO_LARGE = `is larger than the ${MOST_CHARACTERS.toLocaleString('en')} characters that are read`;
+
+/** Where pipes can stand among files, opening one waits for its other end unless told not to. */
+const READ_WITHOUT_WAITING = constants.O_RDONLY | (constants.O_NONBLOCK ?? 0);
 
 /** Reads a file as UTF-8. Never throws: a folder, a device, wrong bytes and the like come back as a fault. */
 export function readText(path: string): ReadText {
   let descriptor: number | undefined;
   try {
-    descriptor = openSync(path, 'r');
+    descriptor = openSync(path, READ_WITHOUT_WAITING);
     const status = fstatSync(descriptor);
     if (status.isDirectory()) return { fault: 'is a folder' };
     if (!status.isFile()) return { fault: 'is not a regular file' };
-    if (status.size > MOST_BYTES)
-      return {
-        fault: `is larger than the ${MOST_CHARACTERS} characters that are read`,
-      };
+    if (status.size > MOST_BYTES) return { fault: TOO_LARGE };
     return decode(readFileSync(descriptor));
   } catch (fault) {
     return { fault: reasonOf(fault) };
@@ -27,54 +29,53 @@ export function readText(path: string): ReadText {
   }
 }
 
-/** Bytes as UTF-8 text; wrong bytes are a fault that says where they are. */
+/** Bytes as UTF-8 text; too many are a fault, and so are wrong ones: it says where they begin, from 0. */
 export function decode(bytes: Uint8Array): ReadText {
+  if (bytes.length > MOST_BYTES) return { fault: TOO_LARGE };
   try {
-    return {
-      text: new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(bytes),
-    };
+    return { text: new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(bytes) };
   } catch {
-    return {
-      fault: `is not UTF-8 text: the bytes from ${firstWrongByte(bytes)} on are no character`,
-    };
+    return { fault: `is not UTF-8 text: the bytes from ${firstWrongByte(bytes)} on are no character` };
   }
 }
 
+/** Where the first byte stands that is no character and does not begin one. */
 function firstWrongByte(bytes: Uint8Array): number {
-  let good = 0;
-  let bad = bytes.length;
-  const decoder = (end: number): boolean => {
+  const holds = (end: number, mayBreakOff: boolean): boolean => {
     try {
-      new TextDecoder('utf-8', { fatal: true }).decode(bytes.subarray(0, end), {
-        stream: true,
-      });
+      new TextDecoder('utf-8', { fatal: true }).decode(bytes.subarray(0, end), { stream: mayBreakOff });
       return true;
     } catch {
       return false;
     }
   };
+  let good = 0;
+  let bad = bytes.length;
   while (bad - good > 1) {
     const middle = Math.floor((good + bad) / 2);
-    if (decoder(middle)) good = middle;
+    if (holds(middle, true)) good = middle;
     else bad = middle;
   }
+  // What could still have become a character began at most three bytes before.
+  while (!holds(good, false)) good--;
   return good;
 }
 
-/** What the operating system said, in words. */
-export function reasonOf(fault: unknown): string {
+/** What the operating system said, in words, of what could not be read or written. */
+export function reasonOf(fault: unknown, done: 'read' | 'written' = 'read'): string {
   const code = fault instanceof Error && 'code' in fault ? String(fault.code) : '';
   switch (code) {
     case 'ENOENT':
-      return 'does not exist';
+    case 'ENOTDIR':
+      return done === 'read' ? 'does not exist' : "can't be written: its folder does not exist";
     case 'EACCES':
     case 'EPERM':
-      return 'may not be read';
+      return `may not be ${done}`;
     case 'ELOOP':
       return 'is a link that leads to itself';
     case 'EISDIR':
       return 'is a folder';
     default:
-      return fault instanceof Error ? `can't be read: ${fault.message}` : "can't be read";
+      return fault instanceof Error ? `can't be ${done}: ${fault.message}` : `can't be ${done}`;
   }
 }

@@ -4,7 +4,7 @@ import type { Command } from './command.ts';
 import { explain } from './explain.ts';
 import { fix } from './fix.ts';
 import type { CommandIo, ExitCode } from './io.ts';
-import { UsageError } from './io.ts';
+import { HelpWanted, UsageError } from './io.ts';
 import { map } from './map.ts';
 import { rates } from './rates.ts';
 import { serve } from './serve.ts';
@@ -51,14 +51,13 @@ export async function run(argv: readonly string[], io: CommandIo, version: strin
     io.stderr(`ratewright: there is no command '${first}'${near === undefined ? '' : `; the nearest is '${near}'`}\n`);
     return 2;
   }
-  const words = rest.slice(0, rest.includes('--') ? rest.indexOf('--') : undefined);
-  if (words.includes('-h') || words.includes('--help')) {
-    io.stdout(command.help);
-    return 0;
-  }
   try {
     return await command.run(rest, io);
   } catch (fault) {
+    if (fault instanceof HelpWanted) {
+      io.stdout(command.help);
+      return 0;
+    }
     if (!(fault instanceof UsageError)) throw fault;
     io.stderr(`ratewright ${command.name}: ${fault.message}\nTry 'ratewright ${command.name} --help'.\n`);
     return 2;

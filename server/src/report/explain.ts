@@ -25,7 +25,7 @@ export function explanationOf(name: string): string | undefined {
   if (places.length === 0) return undefined;
   const sections = places.map(({ context, row }) => {
     const facts = [
-      `example: ${row.key}: ${row.example}`,
+      `example: ${row.key}: ${row.example}`.trim(),
       ...(row.required ? ['required'] : []),
       ...(row.default === undefined ? [] : [`left out: ${row.default}`]),
       ...(row.computed ? [] : ['known, but not computed by this version']),

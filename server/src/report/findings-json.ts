@@ -6,7 +6,6 @@ import { reported } from './number.ts';
 /** A file's findings, ready to be reported. */
 export interface FileReport {
   readonly path: string;
-  readonly text: string;
   readonly channels: number;
   readonly findings: readonly ReportedFinding[];
 }

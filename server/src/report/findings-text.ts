@@ -1,22 +1,23 @@
 import type { FileReport, ReportedFinding, Summary } from './findings-json.ts';
 import type { Paint } from './paint.ts';
+import { printable } from './printable.ts';
 
 /**
  * The findings of one file as text: place, severity and check on a line, then what will happen to the data, then the
- * places that matter besides. Lines and characters count from 1 here, as editors show them.
+ * remedies where they were asked for, the preferred one with a star. Lines and characters count from 1 here, as editors show them.
  */
 export function findingsText(file: FileReport, paint: Paint): string {
   return file.findings.map((reported) => findingText(file.path, reported, paint)).join('');
 }
 
 function findingText(path: string, { finding, range, remedies }: ReportedFinding, paint: Paint): string {
-  const place = `${path}:${range.start.line + 1}:${range.start.character + 1}`;
+  const place = `${printable(path)}:${range.start.line + 1}:${range.start.character + 1}`;
   const subject = finding.channel ?? finding.thing;
   const head = [
     paint(place, 'strong'),
     paint(finding.severity, finding.severity),
     finding.check,
-    ...(subject === undefined || subject === '' ? [] : [paint(`(${subject})`, 'quiet')]),
+    ...(subject === undefined || subject === '' ? [] : [paint(`(${printable(subject)})`, 'quiet')]),
   ].join('  ');
   const lines = [head, ...wrapped(finding.message, 96).map((line) => `    ${line}`)];
   for (const remedy of remedies ?? []) {
@@ -44,7 +45,7 @@ function counted(count: number, one: string): string {
 /** Breaks a text at spaces into lines of at most `width` characters; a longer word has a line of its own. */
 function wrapped(text: string, width: number): string[] {
   const lines: string[] = [];
-  for (const word of text.split(/\s+/)) {
+  for (const word of text.split(/\s+/).map(printable)) {
     const last = lines.at(-1);
     if (last !== undefined && last.length + 1 + word.length <= width) lines[lines.length - 1] = `${last} ${word}`;
     else lines.push(word);

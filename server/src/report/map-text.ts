@@ -3,6 +3,7 @@ import { aliasMapCharacters } from '../picture/alias-map-characters.ts';
 import { aliasMapModel } from '../picture/alias-map-model.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { Paint } from './paint.ts';
+import { printable, printableLines } from './printable.ts';
 
 export interface MapTextOptions {
   readonly ascii: boolean;
@@ -14,7 +15,7 @@ const MOST_ROWS = 40;
 /** The alias map drawn in characters, and the table of what arrives: the loudest in the band first. */
 export function mapText(chain: Chain, arrivals: readonly Arrival[], { ascii, paint }: MapTextOptions): string {
   const drawing = aliasMapCharacters(aliasMapModel(chain, arrivals), { ascii });
-  return `${drawing}\n\n${arrivalsTable(chain, arrivals, paint)}`;
+  return `${printableLines(drawing)}\n\n${arrivalsTable(chain, arrivals, paint)}`;
 }
 
 function arrivalsTable(chain: Chain, arrivals: readonly Arrival[], paint: Paint): string {
@@ -24,11 +25,11 @@ function arrivalsTable(chain: Chain, arrivals: readonly Arrival[], paint: Paint)
   const rows = ordered.slice(0, MOST_ROWS).map((arrival) => ({
     arrival,
     cells: [
-      arrival.source.name,
+      printable(arrival.source.name),
       arrival.component,
       spanText(arrival.trueLowHz, arrival.trueHighHz),
       spanText(arrival.recordedLowHz, arrival.recordedHighHz),
-      `${arrival.level.toFixed(1)}${arrival.levelKnown ? '' : '?'}`,
+      `${levelText(arrival.level)}${arrival.levelKnown ? '' : '?'}`,
       verdictOf(arrival),
     ],
   }));
@@ -42,7 +43,7 @@ function arrivalsTable(chain: Chain, arrivals: readonly Arrival[], paint: Paint)
   const body = rows.map(({ arrival, cells }) =>
     arrival.overLimit ? paint(line(cells), 'error') : arrival.inBand ? line(cells) : paint(line(cells), 'quiet'),
   );
-  const more = ordered.length > MOST_ROWS ? `\n${ordered.length - MOST_ROWS} more, all quieter.` : '';
+  const more = ordered.length > MOST_ROWS ? `\n${ordered.length - MOST_ROWS} more; --format json lists every one.` : '';
   const assumed = arrivals.some(({ levelKnown }) => !levelKnown)
     ? '\n? no level is declared: full scale is assumed.'
     : '';
@@ -57,6 +58,11 @@ function byWeight(a: Arrival, b: Arrival): number {
     b.level - a.level ||
     a.trueLowHz - b.trueLowHz
   );
+}
+
+/** A tenth of a decibel; what rounds to nothing has no sign. */
+function levelText(level: number): string {
+  return level.toFixed(1).replace(/^-(?=0\.0$)/, '');
 }
 
 function spanText(lowHz: number, highHz: number): string {

@@ -3,6 +3,7 @@ import type { JudgedChannel } from '../workbench/evaluation.ts';
 import { verdictText } from '../workbench/rate-words.ts';
 import type { RateVerdict } from '../workbench/rates.ts';
 import type { Paint } from './paint.ts';
+import { printable } from './printable.ts';
 
 /** A table of rates with margin and verdict; today's rate is marked. */
 export function ratesText(judged: JudgedChannel, rates: readonly RateVerdict[], paint: Paint): string {
@@ -20,5 +21,5 @@ export function ratesText(judged: JudgedChannel, rates: readonly RateVerdict[], 
     const ink = rated.errors > 0 ? 'error' : rated.warnings > 0 ? 'warning' : 'strong';
     return `${mark} ${rate.padStart(rateWidth)}  ${margin.padStart(marginWidth)}  ${paint(verdict, ink)}`;
   });
-  return `${judged.result.channel.name}\n\n${paint(head, 'quiet')}\n${lines.join('\n')}\n`;
+  return `${printable(judged.result.channel.name)}\n\n${paint(head, 'quiet')}\n${lines.join('\n')}\n`;
 }

@@ -16,7 +16,7 @@ export function keysPage(
 
 function facts(row: KeyRow): string {
   return [
-    `- example: \`${row.key}: ${row.example}\``,
+    `- example: \`${`${row.key}: ${row.example}`.trim()}\``,
     ...(row.required ? ['- required'] : []),
     ...(row.default === undefined ? [] : [`- left out: ${row.default}`]),
   ].join('\n');
