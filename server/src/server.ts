@@ -180,6 +180,7 @@ export function serve(connection: Connection): void {
         version: documents.get(uri)?.version ?? null,
         range,
         diagnostics: context.diagnostics,
+        edits: abilities.edits,
         isCancelled: () => token.isCancellationRequested,
       };
       const wants = (kind: string): boolean =>

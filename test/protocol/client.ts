@@ -55,6 +55,7 @@ export async function startClient(options: ClientOptions): Promise<TestClient> {
     rootUri: null,
     initializationOptions: options.initializationOptions,
     capabilities: {
+      workspace: { workspaceEdit: { documentChanges: true, changeAnnotationSupport: {} } },
       textDocument: {
         hover: { contentFormat: ['markdown', 'plaintext'] },
         ...(options.pull ? { diagnostic: { dynamicRegistration: false } } : {}),

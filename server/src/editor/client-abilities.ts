@@ -14,8 +14,17 @@ export interface ClientAbilities {
   readonly showsMarkdown: boolean;
   /** Whether a hover may hold a picture; otherwise the map is drawn in characters. */
   readonly showsPictures: boolean;
+  readonly edits: EditAbilities;
   readonly theme: ThemeKind;
   readonly links: ReferenceLinks;
+}
+
+/** How much of an edit of a file the client understands. */
+export interface EditAbilities {
+  /** Edits may name the version that they are of (`documentChanges`). */
+  readonly versions: boolean;
+  /** Edits may carry labels and ask to be confirmed (`changeAnnotations`); only those that name their version. */
+  readonly annotations: boolean;
 }
 
 /**
@@ -26,11 +35,14 @@ export function abilitiesOf(params: InitializeParams | undefined): ClientAbiliti
   const options: unknown = params?.initializationOptions;
   const folder = stringOption(options, 'referenceFolder');
   const formats = params?.capabilities.textDocument?.hover?.contentFormat ?? [];
+  const edit = params?.capabilities.workspace?.workspaceEdit;
+  const versions = edit?.documentChanges === true;
   return {
     pullsFindings: params?.capabilities.textDocument?.diagnostic !== undefined,
     announcesSettings: params?.capabilities.workspace?.didChangeConfiguration?.dynamicRegistration === true,
     showsMarkdown: formats.includes(MarkupKind.Markdown),
     showsPictures: option(options, 'pictures') === true,
+    edits: { versions, annotations: versions && edit?.changeAnnotationSupport !== undefined },
     theme: themeOf(option(options, 'theme')),
     links: folder === undefined ? NO_LINKS : linksIn(folder.replace(/\/$/, '')),
   };

@@ -1,11 +1,14 @@
-import type { CodeAction, Diagnostic, Range as ProtocolRange, WorkspaceEdit } from 'vscode-languageserver-types';
+import type { CodeAction, Diagnostic, Range as ProtocolRange } from 'vscode-languageserver-types';
 import { CodeActionKind } from 'vscode-languageserver-types';
-import type { Finding } from '../checks/finding.ts';
 import type { Remedy } from '../remedies/remedy.ts';
-import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
-import { allFindings } from '../workbench/findings.ts';
+import type { Position } from '../rig/place.ts';
+import type { Snapshot } from '../rig/snapshot.ts';
+import type { Evaluation } from '../workbench/evaluation.ts';
+import type { LocatedFinding } from '../workbench/findings.ts';
+import { allFindings, gravestFindings } from '../workbench/findings.ts';
 import type { Workbench } from '../workbench/workbench.ts';
-import { protocolEdit } from './convert.ts';
+import type { EditAbilities } from './client-abilities.ts';
+import { annotatedEdit, plainEdit } from './workspace-edit.ts';
 
 /** The kind of the action that applies every preferred remedy of a file. */
 export const FIX_ALL_KIND = 'source.fixAll.ratewright';
@@ -16,21 +19,28 @@ export interface ActionRequest {
   readonly range: ProtocolRange;
   /** The client's own diagnostics there, given back with the actions that answer them. */
   readonly diagnostics: readonly Diagnostic[];
+  readonly edits: EditAbilities;
   readonly isCancelled: () => boolean;
 }
 
-/** The proved remedies of every finding that the range touches. */
+/** Findings whose remedies are proved for one request: somebody who selects a whole file waits for no more than these. */
+const MOST_FINDINGS_ANSWERED = 24;
+
+/** The proved remedies of the findings that the range touches, the gravest where they are many. */
 export function remedyActions(workbench: Workbench, request: ActionRequest): CodeAction[] {
-  const snapshot = workbench.snapshot(request.uri);
-  if (!snapshot) return [];
-  const actions: CodeAction[] = [];
-  for (const finding of findingsIn(workbench, request)) {
-    if (request.isCancelled()) return [];
-    for (const remedy of workbench.remedies(request.uri, finding, request.isCancelled)) {
-      actions.push(actionOf(remedy, finding, snapshot, request));
+  const evaluation = workbench.evaluation(request.uri);
+  if (!evaluation) return [];
+  // Two findings at one place may have the same remedy; it is offered once, for both.
+  const actions = new Map<string, CodeAction>();
+  for (const located of findingsIn(evaluation, request)) {
+    for (const remedy of workbench.remedies(request.uri, located.finding, request.isCancelled)) {
+      if (request.isCancelled()) return [];
+      const key = JSON.stringify([remedy.name, remedy.edits]);
+      const action = actionOf(remedy, located, evaluation.snapshot, request);
+      actions.set(key, withTwin(action, actions.get(key)));
     }
   }
-  return withoutTwins(actions);
+  return [...actions.values()];
 }
 
 /** The action that applies every preferred remedy of the file, where there is any. */
@@ -42,69 +52,42 @@ export function fixAllActions(workbench: Workbench, request: ActionRequest): Cod
     {
       title: `Fix every channel (${result.applied.length === 1 ? '1 remedy' : `${result.applied.length} remedies`})`,
       kind: FIX_ALL_KIND,
-      edit: workspaceEdit(snapshot, request, result.edits),
+      edit: plainEdit(snapshot, request, result.edits),
     },
   ];
 }
 
-function findingsIn(workbench: Workbench, { uri, range }: ActionRequest): Finding[] {
-  const evaluation = workbench.evaluation(uri);
-  if (!evaluation) return [];
+function findingsIn(evaluation: Evaluation, { range }: ActionRequest): readonly LocatedFinding[] {
   const { snapshot } = evaluation;
   const start = snapshot.offsetAt(range.start);
   const end = snapshot.offsetAt(range.end);
-  const found: Finding[] = [];
-  for (const finding of allFindings(evaluation)) {
-    const offset = snapshot.startOf(finding.place.entry);
-    if (offset === undefined) continue;
-    if (offset + finding.place.start <= end && offset + finding.place.end >= start) found.push(finding);
-  }
-  return found;
+  const touched = allFindings(evaluation).filter(({ place }) => {
+    const offset = snapshot.startOf(place.entry);
+    return offset !== undefined && offset + place.start <= end && offset + place.end >= start;
+  });
+  return gravestFindings(evaluation, touched, MOST_FINDINGS_ANSWERED);
 }
 
-function actionOf(remedy: Remedy, finding: Finding, snapshot: Snapshot, request: ActionRequest): CodeAction {
+function actionOf(remedy: Remedy, located: LocatedFinding, snapshot: Snapshot, request: ActionRequest): CodeAction {
   return {
     title: remedy.title,
     kind: CodeActionKind.QuickFix,
     isPreferred: remedy.preferred,
-    diagnostics: request.diagnostics.filter((diagnostic) => diagnostic.code === finding.check),
-    edit: workspaceEdit(snapshot, request, remedy.edits, remedy),
+    diagnostics: request.diagnostics.filter((diagnostic) => isOf(diagnostic, located)),
+    edit: annotatedEdit(snapshot, request, remedy),
   };
 }
 
-/**
- * The edit as the protocol wants it. What changes more than a setting of the acquisition (hardware, a requirement, a
- * claim) asks to be looked at before it is applied, where the client can show that.
- */
-function workspaceEdit(
-  snapshot: Snapshot,
-  { uri, version }: ActionRequest,
-  edits: readonly TextEdit[],
-  remedy?: Remedy,
-): WorkspaceEdit {
-  const changes = edits.map((edit) => protocolEdit(snapshot, edit));
-  if (!remedy) return { documentChanges: [{ textDocument: { uri, version }, edits: changes }] };
-  const label = remedy.title;
-  const needsConfirmation = remedy.kind !== 'text' && remedy.kind !== 'setting';
-  return {
-    documentChanges: [
-      { textDocument: { uri, version }, edits: changes.map((change) => ({ ...change, annotationId: remedy.name })) },
-    ],
-    changeAnnotations: { [remedy.name]: { label, needsConfirmation } },
-  };
+function isOf({ code, range }: Diagnostic, { finding, range: found }: LocatedFinding): boolean {
+  return code === finding.check && isSame(range.start, found.start) && isSame(range.end, found.end);
 }
 
-/** Two findings at one place may have the same remedy; it is offered once, for both. */
-function withoutTwins(actions: readonly CodeAction[]): CodeAction[] {
-  const seen = new Map<string, CodeAction>();
-  for (const action of actions) {
-    const key = JSON.stringify(action.edit?.documentChanges);
-    const twin = seen.get(key);
-    if (!twin) seen.set(key, action);
-    else {
-      twin.diagnostics = [...(twin.diagnostics ?? []), ...(action.diagnostics ?? [])];
-      if (action.isPreferred) twin.isPreferred = true;
-    }
-  }
-  return [...seen.values()];
+function isSame(a: Position, b: Position): boolean {
+  return a.line === b.line && a.character === b.character;
+}
+
+function withTwin(action: CodeAction, twin: CodeAction | undefined): CodeAction {
+  if (!twin) return action;
+  const diagnostics = [...new Set([...(twin.diagnostics ?? []), ...(action.diagnostics ?? [])])];
+  return { ...twin, diagnostics, isPreferred: twin.isPreferred === true || action.isPreferred === true };
 }

@@ -1,6 +1,6 @@
 import { keyRow } from '../rig/vocabulary.ts';
 import type { ContextName, ThingKind, ValueKind } from '../rig/vocabulary-kinds.ts';
-import type { PathStep } from './cursor.ts';
+import type { PathStep } from './cursor-model.ts';
 
 /** What may stand at a place of a rig file. */
 export interface Expectation {

@@ -70,7 +70,7 @@ function entryMarkdown(
   return source && sourceMarkdown(source, evaluation);
 }
 
-/** The alias map belongs to a rate, a decimation and a source in `hears`, whether key or value. */
+/** The alias map belongs to the value of a rate and of a decimation, and to all that stands behind `hears`. */
 function mapIsMeant({ path, on }: Pointed, key: string | undefined): boolean {
   const insideHears = path.some((step) => step.kind === 'key' && step.key === 'hears');
   if (insideHears) return true;
@@ -81,9 +81,7 @@ function mapIsMeant({ path, on }: Pointed, key: string | undefined): boolean {
 function keyMarkdown({ path }: Pointed, key: string): string | undefined {
   const expected = expectedAt(path);
   const row = expected.contexts.map((context) => keyRow(context, key)).find((found) => found !== undefined);
-  if (!row) {
-    return expected.namesAsKeys.includes('check') ? checkMarkdown(key) : undefined;
-  }
+  if (!row) return undefined;
   const facts = [
     `Example: \`${row.key}: ${row.example}\``,
     ...(row.required ? ['Required.'] : []),
@@ -103,11 +101,12 @@ function nameMarkdown(
 ): string | undefined {
   const inside = key === undefined ? pointed.path : [...pointed.path, { kind: 'key' as const, key }];
   for (const kind of expectedAt(inside).values) {
-    if (kind.kind === 'name' && kind.of === 'filter') {
+    const names = kind.kind === 'name' ? kind.of : kind.kind === 'map-of' ? kind.keys : undefined;
+    if (names === 'filter') {
       const filter = evaluation.environment.filters.get(text);
       if (filter) return filterMarkdown(filter, evaluation, channel, abilities);
     }
-    if (kind.kind === 'name' && kind.of === 'source') {
+    if (names === 'source') {
       const source = evaluation.environment.sources.get(text);
       if (source) return sourceMarkdown(source, evaluation);
     }
@@ -115,7 +114,7 @@ function nameMarkdown(
       const value = kind.values.find(({ name }) => name === text);
       if (value) return `**${codeMarkdown(value.name)}**\n\n${value.doc}`;
     }
-    if (kind.kind === 'check-name') return checkMarkdown(text);
+    if (kind.kind === 'check-name' || names === 'check') return checkMarkdown(text);
   }
   return undefined;
 }

@@ -1,7 +1,7 @@
 import type { Entry } from '../rig/entry.ts';
 import { NAMED_SECTIONS } from '../rig/entry.ts';
 import type { TreeNode, TreePair } from '../rig/tree.ts';
-import type { PathStep } from './cursor.ts';
+import type { PathStep } from './cursor-model.ts';
 
 /** The word under a cursor in text that has been read. */
 export interface Pointed {
