@@ -90,7 +90,8 @@ function editOfAll(text: string): { readonly total: number; readonly slice: numb
   const at = text.indexOf('9.5 kHz');
   const totals: number[] = [];
   const slices: number[] = [];
-  for (let round = 0; round < 9; round++) {
+  const warm = warmUpsFor(text);
+  for (let round = 0; round < warm + 9; round++) {
     const start = performance.now();
     workbench.editFile(URI, [replaceAt(text, at, at + 3, round % 2 ? '9.5' : '9.6')]);
     const steps = workbench.evaluating(URI, at);
@@ -98,11 +99,11 @@ function editOfAll(text: string): { readonly total: number; readonly slice: numb
       const sliceStart = performance.now();
       do done = steps.next().done === true;
       while (!done && performance.now() - sliceStart < SLICE_MS);
-      slices.push(performance.now() - sliceStart);
+      if (round >= warm) slices.push(performance.now() - sliceStart);
     }
-    totals.push(performance.now() - start);
+    if (round >= warm) totals.push(performance.now() - start);
   }
-  return { total: median(totals), slice: Math.max(...slices.slice(Math.floor(slices.length / 3))) };
+  return { total: median(totals), slice: Math.max(...slices) };
 }
 
 function editInFlow(size: number, style: 'flow' | 'json'): number {
@@ -121,8 +122,11 @@ function editInFlow(size: number, style: 'flow' | 'json'): number {
 }
 
 function remediesAtOne(text: string): number {
-  // A carrier a hundred times as loud, and a filter that begins too late: the first channel then has a fold in its band.
-  const faulty = text.replace('level: 40 mV', 'level: 4 V').replaceAll('cutoff: 9.5 kHz', 'cutoff: 12 kHz');
+  // A loud carrier just under the first rate, and a filter that begins too late: a fold in the band of many channels.
+  const faulty = text
+    .replace('carrier: 16 kHz', 'carrier: 24 kHz')
+    .replace('level: 40 mV', 'level: 4 V')
+    .replaceAll('cutoff: 9.5 kHz', 'cutoff: 12 kHz');
   const workbench = opened(faulty);
   const finding = [...allFindings(workbench.evaluation(URI)!)].find((one) => one.check === 'fold-in-band');
   if (!finding) throw new Error('The generated rig has no fold to remedy.');
