@@ -23,7 +23,7 @@ export function findingsOf(text: string): readonly Finding[] {
 }
 
 /** What a computation in steps comes to. */
-export function finished<T>(steps: Generator<void, T>): T {
+export function finished<T>(steps: Generator<unknown, T>): T {
   for (;;) {
     const step = steps.next();
     if (step.done) return step.value;

@@ -89,7 +89,7 @@ export function* judgingRig(
   environment: Environment,
   channels: readonly ChannelSummary[],
   guard: Guard,
-): Generator<void, readonly Finding[]> {
+): Generator<undefined, readonly Finding[]> {
   const { severities } = environment;
   const rig: RigView = { environment, channels };
   const findings: Finding[] = [];
@@ -97,13 +97,13 @@ export function* judgingRig(
     for (const one of said) addFinding(findings, check, severity, one, one.channel, severities);
   };
   for (const said of guard('document', () => sharedProblems(rig), SAYS_NOTHING)) add(said.check, 'error', [said]);
-  yield;
+  yield undefined;
   for (const said of guard('unused-name', () => unusedNames(rig), SAYS_NOTHING)) add(said.check, 'hint', [said]);
-  yield;
+  yield undefined;
   for (const { name, severity, run } of RIG_CHECKS) {
     const said = guard(name, () => run(rig), SAYS_NOTHING);
     add(name, severity, said);
-    yield;
+    yield undefined;
   }
   const unheard = guard(UNHEARD_IS, () => unheardSources(rig), SAYS_NOTHING);
   add(UNHEARD_IS, 'hint', unheard);

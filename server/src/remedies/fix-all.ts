@@ -56,9 +56,7 @@ export function fixAll<Document extends Fixable>(
   let history = unedited(document.snapshot.length);
   let current = document;
   for (let round = 0; round < MOST_ROUNDS && !isCancelled(); round++) {
-    const wanted = chooseAll(current, kinds, only, refused, isCancelled, (edits) =>
-      recheck(current, after(current, edits)),
-    );
+    const wanted = chooseAll(current, kinds, only, refused, isCancelled);
     const accepted = acceptable(current, wanted, after, isCancelled);
     for (const { finding, candidate } of wanted) {
       if (!accepted.some((one) => one.candidate === candidate)) refused.add(refusal(finding, candidate));
@@ -82,7 +80,6 @@ function chooseAll(
   only: string | undefined,
   refused: ReadonlySet<string>,
   isCancelled: () => boolean,
-  recheckWith: RemedyContext['recheck'],
 ): readonly Chosen[] {
   const results = document.channels.map(({ result }) => result);
   const chosen: Chosen[] = [];
@@ -95,7 +92,6 @@ function chooseAll(
       environment,
       result,
       results,
-      recheck: recheckWith,
       isCancelled,
     };
     let tried = 0;

@@ -1,3 +1,4 @@
+import type { Finding } from '../checks/finding.ts';
 import { addFilter } from './add-filter.ts';
 import { addMissingKey } from './add-missing-key.ts';
 import { chooseRange } from './choose-range.ts';
@@ -6,8 +7,8 @@ import { decimateLess } from './decimate-less.ts';
 import type { Proposal, RemedyDefinition, RemedyPage } from './definition.ts';
 import { filterTheStep } from './filter-the-step.ts';
 import { narrowBand } from './narrow-band.ts';
-import { isHarmless, isProved } from './proof.ts';
-import type { Candidate, Remedy, RemedyContext, RemedyKind } from './remedy.ts';
+import { mayStandWithout, noWorseThan } from './proof.ts';
+import type { Candidate, Remedy, RemedyContext, RemedyKind, Trial } from './remedy.ts';
 import { sampleElsewhere } from './sample-elsewhere.ts';
 import { sampleFaster } from './sample-faster.ts';
 import { startSearch } from './search.ts';
@@ -51,8 +52,14 @@ const TITLE_BEGINS: Readonly<Record<RemedyKind, string>> = {
   claim: 'If it is known: ',
 };
 
-/** Every proved remedy of a finding, best first. */
-export function remediesFor(context: RemedyContext): readonly Remedy[] {
+/**
+ * Every proved remedy of a finding, best first.
+ *
+ * @param before every finding of the document
+ */
+export function remediesFor(context: RemedyContext, before: readonly Finding[], tries: Trial): readonly Remedy[] {
+  const isNoWorse = noWorseThan(before);
+  const isProved = mayStandWithout(context.finding, isNoWorse);
   const proved: OfferedCandidate[] = [];
   const seen = new Set<string>();
   let proofs = 0;
@@ -62,7 +69,7 @@ export function remediesFor(context: RemedyContext): readonly Remedy[] {
     if (seen.has(twin)) continue;
     seen.add(twin);
     proofs++;
-    if (proves(context, candidate)) proved.push(candidate);
+    if (tries(candidate.edits, candidate.kind === 'claim' ? isNoWorse : isProved)) proved.push(candidate);
   }
   const preferred = proved.find(mayBePreferred);
   return proved.map((candidate) => {
@@ -77,11 +84,6 @@ export function remediesFor(context: RemedyContext): readonly Remedy[] {
  */
 export function mayBePreferred({ kind, reachesOthers, fillIn }: OfferedCandidate): boolean {
   return (kind === 'text' || kind === 'setting') && !reachesOthers && fillIn === undefined;
-}
-
-function proves({ finding, recheck }: RemedyContext, { kind, edits }: Candidate): boolean {
-  const checked = recheck(edits);
-  return kind === 'claim' ? isHarmless(checked) : isProved(finding, checked);
 }
 
 /** What the search chooses, in the order in which it is offered and not yet proved; searched for as it is asked for. */

@@ -17,17 +17,20 @@ export function isProved(finding: Finding, { before, after }: Recheck): boolean 
 
 /** The same rule, for one finding after the other: true for one that may be there afterwards. */
 export function mayStandBeside(finding: Finding, before: readonly Finding[]): (after: Finding) => boolean {
+  return mayStandWithout(finding, noWorseThan(before));
+}
+
+/** The same, where it is known already what is no worse. */
+export function mayStandWithout(finding: Finding, isNoWorse: (after: Finding) => boolean): (after: Finding) => boolean {
   const identity = identityOf(finding);
-  const isNoWorse = noWorseThan(before);
   return (after) => identityOf(after) !== identity && isNoWorse(after);
 }
 
-/** The rule of proof for what a person has yet to fill in: its finding may stay, and nothing else may come. */
-export function isHarmless({ before, after }: Recheck): boolean {
-  return after.every(noWorseThan(before));
-}
-
-function noWorseThan(before: readonly Finding[]): (after: Finding) => boolean {
+/**
+ * The rule of proof for what a person has yet to fill in, which is all of it but the finding that it is for: one that
+ * stays is no worse, and what comes is no more than a hint.
+ */
+export function noWorseThan(before: readonly Finding[]): (after: Finding) => boolean {
   const known = new Map<string, Finding>();
   for (const finding of before) {
     const identity = identityOf(finding);

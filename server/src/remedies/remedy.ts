@@ -26,13 +26,19 @@ export interface Remedy {
 /** A candidate before its proof. */
 export type Candidate = Omit<Remedy, 'preferred'>;
 
-/** The findings that an edit changes: those of every channel (and of the rig) that is not as it was before. */
+/** The findings of what an edit changes (every channel that is not as it was, and the rig), before it and after. */
 export interface Recheck {
   readonly before: readonly Finding[];
   readonly after: readonly Finding[];
 }
 
-/** Everything a remedy may look at; the search judges channels alone, the proof rechecks the document. */
+/**
+ * Applies edits in memory, checks the document again, and tells whether every finding that it then has may stand; given
+ * up at the first that may not. Findings of channels that the edits do not reach are not asked for.
+ */
+export type Trial = (edits: readonly TextEdit[], mayStand: (finding: Finding) => boolean) => boolean;
+
+/** Everything a search may look at: it judges the channel alone. */
 export interface RemedyContext {
   readonly finding: Finding;
   readonly snapshot: Snapshot;
@@ -41,7 +47,5 @@ export interface RemedyContext {
   readonly result: ChannelResult | undefined;
   /** Every channel of the file, for remedies that edit what many share. */
   readonly results: readonly ChannelResult[];
-  /** Applies edits in memory and checks the document again. */
-  readonly recheck: (edits: readonly TextEdit[]) => Recheck;
   readonly isCancelled: () => boolean;
 }

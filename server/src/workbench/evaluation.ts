@@ -32,7 +32,7 @@ export interface Evaluation {
 
 /**
  * Evaluates a snapshot step by step: it yields after each small piece of work, so that the caller may stop between
- * two of them, and returns the evaluation.
+ * two of them, and returns the evaluation. What it yields is the channel that it has just judged, if it has.
  *
  * @param near the entry whose neighbourhood is done first, the one somebody is typing in
  */
@@ -41,14 +41,15 @@ export function* evaluating(
   guard: Guard,
   previous?: Evaluation,
   near?: Entry,
-): Generator<void, Evaluation> {
+): Generator<JudgedChannel | undefined, Evaluation> {
   const environment = readEnvironment(snapshot, CHECK_NAMES, previous?.environment);
-  yield;
+  yield undefined;
   const channels = reuse(environment, previous);
-  yield;
+  yield undefined;
   for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
-    channels[index] = judged(environment.channelEntries[index]!, environment, guard);
-    yield;
+    const channel = judged(environment.channelEntries[index]!, environment, guard);
+    channels[index] = channel;
+    yield channel;
   }
   const complete = channels as readonly JudgedChannel[];
   const rigFindings = yield* judgingRig(environment, complete, guard);

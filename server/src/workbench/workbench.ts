@@ -3,13 +3,13 @@ import type { Finding } from '../checks/finding.ts';
 import type { FixAllResult } from '../remedies/fix-all.ts';
 import { fixAll } from '../remedies/fix-all.ts';
 import { remediesFor } from '../remedies/list.ts';
-import type { Remedy, RemedyKind } from '../remedies/remedy.ts';
+import type { Remedy, RemedyContext, RemedyKind, Trial } from '../remedies/remedy.ts';
 import type { PositionRange } from '../rig/place.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 import { editSnapshot, readSnapshot } from '../rig/snapshot.ts';
-import { differences } from './differences.ts';
 import type { Evaluation, JudgedChannel } from './evaluation.ts';
 import { evaluate, evaluating } from './evaluation.ts';
+import { allFindings } from './findings.ts';
 
 /** A change as an editor tells it: without a range it replaces the whole text. */
 export interface TextChange {
@@ -83,7 +83,7 @@ export class Workbench {
    * Evaluates a file step by step, what stands near `nearOffset` first; see {@link evaluating}. An edit or another
    * evaluation meanwhile makes the rest worthless but harmless: its result is then not kept.
    */
-  *evaluating(uri: string, nearOffset?: number): Generator<void, Evaluation | undefined> {
+  *evaluating(uri: string, nearOffset?: number): Generator<unknown, Evaluation | undefined> {
     const file = this.#files.get(uri);
     if (!file) return undefined;
     if (file.evaluation?.snapshot === file.snapshot) return file.evaluation;
@@ -107,20 +107,16 @@ export class Workbench {
     const evaluation = this.evaluation(uri);
     if (!evaluation) return [];
     const judged = finding.channel === undefined ? undefined : channelNamed(evaluation, finding.channel);
-    return this.#guard(
-      'remedies',
-      () =>
-        remediesFor({
-          finding,
-          snapshot: evaluation.snapshot,
-          environment: evaluation.environment,
-          result: judged?.result,
-          results: evaluation.channels.map((channel) => channel.result),
-          recheck: (edits) => differences(evaluation, this.#after(evaluation, edits)),
-          isCancelled,
-        }),
-      [],
-    );
+    const context: RemedyContext = {
+      finding,
+      snapshot: evaluation.snapshot,
+      environment: evaluation.environment,
+      result: judged?.result,
+      results: evaluation.channels.map((channel) => channel.result),
+      isCancelled,
+    };
+    const tries: Trial = (edits, mayStand) => this.#mayStand(evaluation, edits, mayStand);
+    return this.#guard('remedies', () => remediesFor(context, allFindings(evaluation), tries), []);
   }
 
   /**
@@ -136,6 +132,18 @@ export class Workbench {
   ): FixAllResult | undefined {
     const evaluation = this.evaluation(uri);
     return evaluation && fixAll(evaluation, kinds, (from, edits) => this.#after(from, edits), isCancelled, only);
+  }
+
+  /** Whether all that is found in what edits would change may stand; the channels near the edits are judged first. */
+  #mayStand(evaluation: Evaluation, edits: readonly TextEdit[], mayStand: (finding: Finding) => boolean): boolean {
+    const snapshot = editSnapshot(evaluation.snapshot, edits);
+    const near = edits[0] && snapshot.entryAt(edits[0].start);
+    const steps = evaluating(snapshot, this.#guard, evaluation, near);
+    for (;;) {
+      const { value, done } = steps.next();
+      if (done) return value.rigFindings.every(mayStand);
+      if (value && !value.result.findings.every(mayStand)) return false;
+    }
   }
 
   #after(evaluation: Evaluation, edits: readonly TextEdit[]): Evaluation {
