@@ -32,5 +32,8 @@ export const HINTS = CLEAN.replace(
   '  spare: { response: butterworth, order: 2, cutoff: 1 kHz }\nsources:\n',
 );
 
-/** A misspelled key, which a correction of the text sets right, besides what `FOLDS` has. */
-export const MISSPELLED = FOLDS.replace('fold-limit:', 'fold-limt:');
+/** What `FOLDS` has, and a misspelled key, which a correction of the text sets right. */
+export const MISSPELLED = `${FOLDS}    flatnes: 1 dB\n`;
+
+/** The same with the key spelled right. */
+export const SPELLED = `${FOLDS}    flatness: 1 dB\n`;

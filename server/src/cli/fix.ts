@@ -113,15 +113,15 @@ async function fixFile(path: string, settings: FixSettings, io: CommandIo): Prom
   const isChanged = fixed !== rig.text;
   if (settings.dryRun) {
     if (!isChanged) return { exit: leftOver(workbench, rig.uri, settings.from) };
-    return { exit: 1, result: unifiedDiff(rig.path, rig.text, edits) };
+    return { exit: 1, result: unifiedDiff(rig.path, rig.text, edits, rig.byteOrderMark) };
   }
-  const written = path !== '-' && isChanged ? writeFixed(path, fixed, io) : 0;
+  const written = path !== '-' && isChanged ? writeFixed(path, rig.byteOrderMark + fixed, io) : 0;
   if (written === 0 && !settings.isQuiet) {
     for (const remedy of applied) io.stderr(`${rig.path}: ${printable(remedy.title)}\n`);
   }
   workbench.setFile(rig.uri, { text: fixed });
   const exit = graver(written, leftOver(workbench, rig.uri, settings.from));
-  return path === '-' ? { exit, result: fixed } : { exit };
+  return path === '-' ? { exit, result: rig.byteOrderMark + fixed } : { exit };
 }
 
 function writeFixed(path: string, text: string, io: CommandIo): ExitCode {

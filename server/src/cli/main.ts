@@ -4,13 +4,14 @@ import { run } from './run.ts';
 /** The package's version, put in when the program is bundled. */
 declare const RATEWRIGHT_VERSION: string;
 
-// A reader that has seen enough (`ratewright check | head`) closes the pipe: that is no error of ours.
-for (const stream of [process.stdout, process.stderr]) {
-  stream.on('error', (fault: NodeJS.ErrnoException) => {
-    if (fault.code === 'EPIPE') process.exit(0);
-    throw fault;
-  });
-}
+process.stdout.on('error', (fault: NodeJS.ErrnoException) => {
+  // A reader that has seen enough (`ratewright check | head`) closes the pipe: that is no error of ours.
+  if (fault.code !== 'EPIPE') process.stderr.write(`ratewright: standard output can't be written: ${fault.message}\n`);
+  process.exit(fault.code === 'EPIPE' ? 0 : 2);
+});
+
+// Messages that nobody reads are no reason to leave the work undone.
+process.stderr.on('error', () => {});
 
 void run(
   process.argv.slice(2),

@@ -11,7 +11,9 @@ export type OpenedRig =
   | {
       readonly path: string;
       readonly uri: string;
+      /** Without the byte order mark, which is to be written back before it. */
       readonly text: string;
+      readonly byteOrderMark: string;
       readonly evaluation: Evaluation;
     }
   | { readonly path: string; readonly fault: string };
@@ -32,9 +34,10 @@ export async function openRig(
   const read: ReadText = path === '-' ? await readStdin(io) : readText(resolve(io.cwd, path));
   if ('fault' in read) return { path: shown, fault: read.fault };
   const uri = pathToFileURL(resolve(io.cwd, shown)).href;
-  workbench.setFile(uri, read);
+  const { text, byteOrderMark } = read;
+  workbench.setFile(uri, { text });
   const evaluation = workbench.evaluation(uri);
-  return evaluation ? { path: shown, uri, text: read.text, evaluation } : { path: shown, fault: "can't be read" };
+  return evaluation ? { path: shown, uri, text, byteOrderMark, evaluation } : { path: shown, fault: "can't be read" };
 }
 
 async function readStdin(io: CommandIo): Promise<ReadText> {

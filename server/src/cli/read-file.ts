@@ -1,8 +1,13 @@
 import { closeSync, constants, fstatSync, openSync, readFileSync } from 'node:fs';
 import { MOST_CHARACTERS } from '../rig/limits.ts';
 
-/** A file's text, or why it can't be had. */
-export type ReadText = { readonly text: string } | { readonly fault: string };
+/** A file's text without the byte order mark that it may begin with (and the mark, or nothing), or why it can't be had. */
+export type ReadText =
+  | { readonly text: string; readonly byteOrderMark: '' | typeof BYTE_ORDER_MARK }
+  | { readonly fault: string };
+
+/** Where bytes have an order it tells which; in UTF-8 it tells nothing, and editors neither show nor count it. */
+const BYTE_ORDER_MARK = '\ufeff';
 
 /** UTF-8 takes at most three bytes for one UTF-16 unit: a file of more bytes than this is over the limit for sure. */
 export const MOST_BYTES = MOST_CHARACTERS * 3;
@@ -33,7 +38,10 @@ export function readText(path: string): ReadText {
 export function decode(bytes: Uint8Array): ReadText {
   if (bytes.length > MOST_BYTES) return { fault: TOO_LARGE };
   try {
-    return { text: new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(bytes) };
+    const text = new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(bytes);
+    return text.startsWith(BYTE_ORDER_MARK)
+      ? { text: text.slice(1), byteOrderMark: BYTE_ORDER_MARK }
+      : { text, byteOrderMark: '' };
   } catch {
     return { fault: `is not UTF-8 text: the bytes from ${firstWrongByte(bytes)} on are no character` };
   }

@@ -15,8 +15,15 @@ interface Change {
 /**
  * What edits make of a text, as a unified diff (the format of POSIX `diff -u`, which `patch` and `git apply` read). It
  * is made from the edits and not by comparing, so that its cost is in proportion to the text however much changes.
+ *
+ * @param before what the file holds ahead of the text: a byte order mark, or nothing
  */
-export function unifiedDiff(path: string, text: string, edits: readonly TextEdit[]): string {
+export function unifiedDiff(path: string, text: string, edits: readonly TextEdit[], before: string): string {
+  const shifted = edits.map((edit) => ({ ...edit, start: edit.start + before.length, end: edit.end + before.length }));
+  return diffOf(path, before + text, shifted);
+}
+
+function diffOf(path: string, text: string, edits: readonly TextEdit[]): string {
   const lines = linesOf(text);
   let shift = 0;
   const hunks = grouped(changesOf(text, lines, edits)).map((group) => {
