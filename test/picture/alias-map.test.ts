@@ -15,23 +15,9 @@ import { runs } from '../tools/runs.ts';
 import { EXTRACT_FAN } from '../tools/samples.ts';
 import { MAPS, mapsOf } from './maps.ts';
 import { drawnTexts, faultsOfTexts, viewBoxOf } from './svg-text.ts';
+import { malformed } from './well-formed.ts';
 
 const THEMES: readonly PictureTheme[] = ['light', 'dark', 'high-contrast', 'high-contrast-light', 'neutral'];
-
-/** Names of elements that are not closed in their turn, or `undefined`: what a reader of XML would stumble on first. */
-function malformed(xml: string): string | undefined {
-  const open: string[] = [];
-  const rest = xml.replaceAll(
-    /<(\/?)([a-zA-Z]+)((?:\s[\w:-]+="[^"<&]*(?:&(?:amp|lt|gt|quot);[^"<&]*)*")*)\s*(\/?)>/g,
-    (_tag, close: string, name: string, _attributes: string, self: string) => {
-      if (close && open.pop() !== name) open.push(`!${name}`);
-      else if (!close && !self) open.push(name);
-      return '';
-    },
-  );
-  if (/[<>]|&(?!(?:amp|lt|gt|quot);)/.test(rest)) return rest.slice(0, 80);
-  return open.length > 0 ? open.join(' ') : undefined;
-}
 
 describe('the picture of an alias map', () => {
   it.each(MAPS.map(({ name, map }) => [name, map] as const))(

@@ -1,57 +1,66 @@
-import type { Chain, StageFilter } from '../chain/model.ts';
+import { arrivalsOf } from '../chain/arrivals.ts';
+import { filterCurveCharacters } from '../picture/filter-curve-characters.ts';
+import { decibelsOff, filterCurveModel } from '../picture/filter-curve-model.ts';
+import { filterCurveSvg } from '../picture/filter-curve-svg.ts';
+import type { FilterPlace } from '../picture/filter-place.ts';
+import { inputRateOf } from '../picture/filter-place.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { Filter } from '../rig/model.ts';
 import type { Evaluation, JudgedChannel } from '../workbench/evaluation.ts';
 import type { ClientAbilities } from './client-abilities.ts';
-import { codeMarkdown, tableMarkdown } from './picture-markdown.ts';
+import {
+  codeMarkdown,
+  drawingMarkdown,
+  MOST_HOVER_CHARACTERS,
+  pictureMarkdown,
+  tableMarkdown,
+} from './picture-markdown.ts';
 import { filterWords } from './things.ts';
-
-/** A filter as it stands in one channel's chain. */
-interface PlacedFilter {
-  readonly chain: Chain;
-  readonly filter: StageFilter;
-  /** Half the rate of what the filter is given; `undefined` ahead of the converter. */
-  readonly inputNyquistHz: number | undefined;
-  /** The rate behind the filter, and so where its band folds from. */
-  readonly rateHz: number;
-}
 
 /**
  * A filter's curve and what it takes off at the frequencies that matter, as seen from the channel under the pointer,
  * or from the first channel that uses it.
+ *
+ * A picture comes first, since editors show no more than the top of a long hover; a drawing stands under its headline.
  */
 export function filterMarkdown(
   filter: Filter,
   evaluation: Evaluation,
   channel: JudgedChannel | undefined,
-  _abilities: ClientAbilities,
+  abilities: ClientAbilities,
 ): string {
-  const head = `**${codeMarkdown(filter.name)}** · ${filterWords(filter)}`;
-  const placed = firstPlaced(filter, channel ? [channel] : evaluation.channels);
-  if (!placed) return `${head}\n\nNo channel uses it.`;
-  const table = tableMarkdown(['at', 'what', 'takes off'], rowsOf(placed));
-  return `${head} · in ${codeMarkdown(placed.chain.channel.name)}\n\n${table}`;
+  const words = `**${codeMarkdown(filter.name)}** · ${filterWords(filter)}`;
+  const place = firstPlace(filter, channel ? [channel] : evaluation.channels);
+  if (!place) return `${words}\n\nNo channel uses it.`;
+  const head = `${words} · in ${codeMarkdown(place.chain.channel.name)}`;
+  const table = tableMarkdown(['at', 'what', 'takes off'], rowsOf(place));
+  const curve = filterCurveModel(place, arrivalsOf(place.chain));
+  const picture = abilities.showsPictures
+    ? pictureMarkdown(filterCurveSvg(curve, abilities.theme), `${curve.title}. ${curve.description}`)
+    : '';
+  const fits = picture.length <= MOST_HOVER_CHARACTERS - head.length - table.length - 100;
+  if (picture !== '' && fits) return [picture, head, table].join('\n\n');
+  return [head, drawingMarkdown(filterCurveCharacters(curve, { ascii: false })), table].join('\n\n');
 }
 
-function firstPlaced(filter: Filter, channels: readonly JudgedChannel[]): PlacedFilter | undefined {
+function firstPlace(filter: Filter, channels: readonly JudgedChannel[]): FilterPlace | undefined {
   for (const { result } of channels) {
     const { chain } = result;
     if (!chain) continue;
-    for (const stage of chain.stages) {
-      const found = stage.filters.find(({ use }) => use?.filter === filter);
-      if (!found) continue;
-      const inputNyquistHz = stage.inputRateHz === undefined ? undefined : stage.inputRateHz / 2;
-      return { chain, filter: found, inputNyquistHz, rateHz: stage.rateHz };
+    for (const [stage, filters] of [...chain.stages.map((one) => one.filters), chain.after].entries()) {
+      const found = filters.find(({ use }) => use?.filter === filter);
+      if (found) return { chain, filter: found, stage };
     }
-    const after = chain.after.find(({ use }) => use?.filter === filter);
-    const rateHz = chain.stages.at(-1)!.rateHz;
-    if (after) return { chain, filter: after, inputNyquistHz: rateHz / 2, rateHz };
   }
   return undefined;
 }
 
 /** The frequencies that matter: the band's ends, the Nyquist frequency behind the filter, and the first fold into the band. */
-function rowsOf({ chain, filter, inputNyquistHz, rateHz }: PlacedFilter): readonly (readonly string[])[] {
+function rowsOf(place: FilterPlace): readonly (readonly string[])[] {
+  const { chain, filter, stage } = place;
+  const inputRateHz = inputRateOf(place);
+  // Behind the last stage there is no sampling: the rate stays.
+  const rateHz = chain.ratesHz[stage] ?? chain.ratesHz.at(-1)!;
   const points: readonly (readonly [hz: number, what: string])[] = [
     [chain.bandLowHz, "the band's bottom"],
     [chain.bandHighHz, "the band's top"],
@@ -60,10 +69,6 @@ function rowsOf({ chain, filter, inputNyquistHz, rateHz }: PlacedFilter): readon
     [rateHz, 'the rate behind it'],
   ];
   return points
-    .filter(([hz]) => hz >= 0 && (inputNyquistHz === undefined || hz <= inputNyquistHz))
-    .map(([hz, what]) => [formatHz(hz), what, decibels(filter.response.attenuationDb(hz))]);
-}
-
-function decibels(attenuationDb: number): string {
-  return Number.isFinite(attenuationDb) ? `${attenuationDb.toFixed(1)} dB` : 'everything';
+    .filter(([hz]) => hz >= 0 && (inputRateHz === undefined || hz <= inputRateHz / 2))
+    .map(([hz, what]) => [formatHz(hz), what, decibelsOff(filter.response.attenuationDb(hz))]);
 }

@@ -1,6 +1,9 @@
 import { formatHz } from '../quantity/write.ts';
-import type { AliasMap, Mark, MarkKind } from './alias-map-model.ts';
+import type { AliasMap, Mark } from './alias-map-model.ts';
+import type { MarkKind } from './arrival-words.ts';
 import { placeOn } from './axis.ts';
+import type { CharacterGrid } from './character-grid.ts';
+import { axisName, blankGrid, COLUMNS, labelledRows, MARGIN, put, tickLine } from './character-grid.ts';
 
 export interface CharacterOptions {
   /** Draws in ASCII alone, for terminals and files that know nothing else. */
@@ -17,6 +20,7 @@ interface Signs {
   readonly bandEdge: string;
   readonly axis: string;
   readonly side: string;
+  readonly corner: string;
 }
 
 const UNICODE: Signs = {
@@ -28,6 +32,7 @@ const UNICODE: Signs = {
   bandEdge: '─',
   axis: '─',
   side: '│',
+  corner: '└',
 };
 
 const ASCII: Signs = {
@@ -39,15 +44,11 @@ const ASCII: Signs = {
   bandEdge: '-',
   axis: '-',
   side: '|',
+  corner: '+',
 };
 
-const COLUMNS = 64;
 const MAP_ROWS = 15;
 const SPECTRUM_ROWS = 8;
-const MARGIN = 11;
-
-/** A grid of characters, addressed from the top left. */
-type Grid = string[][];
 
 /** The alias map drawn in characters, at most 78 columns wide: the same content as the picture. */
 export function aliasMapCharacters(map: AliasMap, { ascii }: CharacterOptions): string {
@@ -66,7 +67,7 @@ export function aliasMapCharacters(map: AliasMap, { ascii }: CharacterOptions): 
 }
 
 function drawMap(map: AliasMap, signs: Signs): string[] {
-  const grid = blank(MAP_ROWS);
+  const grid = blankGrid(MAP_ROWS);
   const row = (hz: number): number =>
     Math.round(placeOn({ low: 0, high: map.nyquistHz, from: MAP_ROWS - 1, to: 0 }, hz));
   const bandRow = row(map.bandHighHz);
@@ -84,22 +85,21 @@ function drawMap(map: AliasMap, signs: Signs): string[] {
     from = to + 2;
   }
   for (const mark of [...map.marks].reverse()) drawMark(grid, mark, signs, columns, row);
-  const body = grid.map((cells, index) => {
-    const label =
-      index === 0 ? formatHz(map.nyquistHz, 3) : index === MAP_ROWS - 1 ? '0 Hz' : index === bandRow ? 'band top' : '';
-    return `${label.padStart(MARGIN - 2)} ${signs.side}${cells.join('')}`;
-  });
+  const body = labelledRows(grid, signs.side, (index) =>
+    index === 0 ? formatHz(map.nyquistHz, 3) : index === MAP_ROWS - 1 ? '0 Hz' : index === bandRow ? 'band top' : '',
+  );
   return [
     '   recorded',
     ...body,
-    `${' '.repeat(MARGIN - 1)}${'└'.replace('└', signs === ASCII ? '+' : '└')}${signs.axis.repeat(COLUMNS)}`,
-    ...tickLine(ticks, 'true frequency'),
+    `${' '.repeat(MARGIN - 1)}${signs.corner}${signs.axis.repeat(COLUMNS)}`,
+    tickLine(ticks),
+    axisName('true frequency'),
   ];
 }
 
 /** The line is drawn column by column, so that it has no gaps however steep it is. */
 function drawLine(
-  grid: Grid,
+  grid: CharacterGrid,
   points: readonly { readonly trueHz: number; readonly recordedHz: number; readonly attenuationDb: number }[],
   fadedAtDb: number,
   signs: Signs,
@@ -132,7 +132,7 @@ function drawLine(
 }
 
 function drawMark(
-  grid: Grid,
+  grid: CharacterGrid,
   { kind, from, to }: Mark,
   signs: Signs,
   columns: readonly ((hz: number) => number | undefined)[],
@@ -157,7 +157,7 @@ function drawMark(
 }
 
 function drawSpectrum(map: AliasMap, signs: Signs): string[] {
-  const grid = blank(SPECTRUM_ROWS);
+  const grid = blankGrid(SPECTRUM_ROWS);
   const column = (hz: number): number =>
     Math.round(placeOn({ low: 0, high: map.nyquistHz, from: 0, to: COLUMNS - 1 }, hz));
   const row = (level: number): number =>
@@ -173,16 +173,9 @@ function drawSpectrum(map: AliasMap, signs: Signs): string[] {
     for (let down = top + 1; down < SPECTRUM_ROWS; down++) put(grid, down, middle, signs.stem);
     put(grid, top, middle, signs.marks[mark.kind]);
   }
-  const body = grid.map((cells, index) => {
-    const label =
-      index === limitRow
-        ? `limit ${map.foldLimit.toFixed(0)}`
-        : index === 0
-          ? String(map.levelHigh)
-          : index === SPECTRUM_ROWS - 1
-            ? String(map.levelLow)
-            : '';
-    return `${label.padStart(MARGIN - 2)} ${signs.side}${cells.join('')}`;
+  const body = labelledRows(grid, signs.side, (index) => {
+    if (index === limitRow) return `limit ${map.foldLimit.toFixed(0)}`;
+    return index === 0 ? String(map.levelHigh) : index === SPECTRUM_ROWS - 1 ? String(map.levelLow) : '';
   });
   const ticks = [
     { at: 0, label: '0 Hz' },
@@ -192,8 +185,9 @@ function drawSpectrum(map: AliasMap, signs: Signs): string[] {
   return [
     `   ${map.levelUnit}`,
     ...body,
-    `${' '.repeat(MARGIN - 1)}${signs === ASCII ? '+' : '└'}${signs.axis.repeat(COLUMNS)}`,
-    ...tickLine(ticks, 'recorded frequency'),
+    `${' '.repeat(MARGIN - 1)}${signs.corner}${signs.axis.repeat(COLUMNS)}`,
+    tickLine(ticks),
+    axisName('recorded frequency'),
   ];
 }
 
@@ -215,27 +209,4 @@ function stretchWidths({ stretches }: AliasMap): readonly number[] {
   const parts = stretches.map((_, index) => (index === 0 && stretches.length > 1 ? 1.4 : 1));
   const total = parts.reduce((sum, part) => sum + part, 0);
   return parts.map((part) => Math.floor((room * part) / total));
-}
-
-/** Labels under an axis; one that would run into the one before it is left out. */
-function tickLine(ticks: readonly { readonly at: number; readonly label: string }[], name: string): string[] {
-  let line = '';
-  for (const { at, label } of [...ticks].sort((a, b) => a.at - b.at)) {
-    const start = Math.min(
-      MARGIN + COLUMNS - label.length,
-      Math.max(MARGIN, MARGIN + at - Math.floor(label.length / 2)),
-    );
-    if (line.length > 0 && line.length + 1 > start) continue;
-    line = line.padEnd(start) + label;
-  }
-  return [line, `${' '.repeat(MARGIN)}${name}`];
-}
-
-function blank(rows: number): Grid {
-  return Array.from({ length: rows }, () => Array.from({ length: COLUMNS }, () => ' '));
-}
-
-function put(grid: Grid, row: number, column: number, sign: string): void {
-  const cells = grid[row];
-  if (cells && column >= 0 && column < COLUMNS) cells[column] = sign;
 }

@@ -1,4 +1,5 @@
-import type { Mark, MarkKind } from './alias-map-model.ts';
+import type { Mark } from './alias-map-model.ts';
+import type { MarkKind } from './arrival-words.ts';
 import type { LabelWish } from './label-places.ts';
 
 /** A mark that stands somewhere in the picture. */

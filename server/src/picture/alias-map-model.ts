@@ -1,12 +1,11 @@
 import type { Arrival, Chain } from '../chain/model.ts';
 import { formatHz } from '../quantity/write.ts';
+import type { MarkKind } from './arrival-words.ts';
+import { clippedName, kindOf, labelOf } from './arrival-words.ts';
 import type { FoldLine, FoldPoint } from './fold-line.ts';
 import { foldLineOf, pointAt } from './fold-line.ts';
 import type { Stretch } from './stretches.ts';
 import { stretchesOf } from './stretches.ts';
-
-/** What an arrival is to the record; a picture tells it by shape, and repeats it by colour. */
-export type MarkKind = 'native' | 'harmless' | 'spoils';
 
 /** An arrival as a mark on the fold line and a line of the record's spectrum. */
 export interface Mark {
@@ -56,7 +55,6 @@ export interface AliasMap {
 /** More marks than this make a picture that nobody reads; the lightest are left out and counted. */
 const MOST_MARKS = 160;
 const LEAST_FADE_DB = 40;
-const LONGEST_NAME = 28;
 
 /** What the picture of a channel's alias map shows. */
 export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
@@ -93,13 +91,13 @@ export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): Alias
 }
 
 function markOf(arrival: Arrival, chain: Chain): Mark {
-  const kind: MarkKind = arrival.overLimit ? 'spoils' : arrival.folded ? 'harmless' : 'native';
+  const kind = kindOf(arrival);
   const rank = kind === 'spoils' ? 3_000 : arrival.inBand ? (kind === 'native' ? 2_000 : 1_000) : 0;
   const from = pointAt(chain, arrival.trueLowHz);
   const to = pointAt(chain, arrival.trueHighHz);
   return {
     kind,
-    sourceName: clipped(arrival.source.name),
+    sourceName: clippedName(arrival.source.name),
     label: labelOf(arrival),
     ...placesOf(arrival, chain),
     from,
@@ -133,24 +131,6 @@ function spanText(lowHz: number, highHz: number): string {
 function isStraight(from: FoldPoint, to: FoldPoint): boolean {
   const trueSpan = Math.abs(to.trueHz - from.trueHz);
   return Math.abs(Math.abs(to.recordedHz - from.recordedHz) - trueSpan) <= 1e-6 * Math.max(trueSpan, to.trueHz * 1e-6);
-}
-
-function labelOf({ source, component }: Arrival): string {
-  const name = clipped(source.name);
-  return component === 'fundamental' || component === 'carrier' ? name : `${name} ${shortComponent(component)}`;
-}
-
-function clipped(name: string): string {
-  const characters = [...name];
-  return characters.length <= LONGEST_NAME ? name : `${characters.slice(0, LONGEST_NAME - 1).join('')}…`;
-}
-
-function shortComponent(component: string): string {
-  return component
-    .replace('harmonic ', '×')
-    .replace('carrier x', '×')
-    .replace('carrier ', '')
-    .replace('sideband ', 'sb ');
 }
 
 /** How a chain's levels are called. */

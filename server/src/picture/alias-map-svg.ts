@@ -2,10 +2,10 @@ import { formatHz } from '../quantity/write.ts';
 import { foldMapSvg } from './alias-map-fold-svg.ts';
 import type { MapLayout, MapSize } from './alias-map-layout.ts';
 import { layOut } from './alias-map-layout.ts';
-import type { AliasMap, MarkKind } from './alias-map-model.ts';
+import type { AliasMap } from './alias-map-model.ts';
 import { spectrumSvg } from './alias-map-spectrum-svg.ts';
 import { textWidth } from './label-places.ts';
-import { KIND_WORDS, shape } from './marks-svg.ts';
+import { legend } from './marks-svg.ts';
 import type { Palette, PictureTheme } from './palette.ts';
 import { paletteFor } from './palette.ts';
 import { element, escaped } from './svg.ts';
@@ -57,28 +57,21 @@ function drawn(map: AliasMap, layout: MapLayout, palette: Palette): string {
   );
 }
 
-/** The name of the upright axis and what the shapes mean, of those that are there. */
+/** The name of the upright axis and what the shapes mean. */
 function head(map: AliasMap, { width, margin, headBaseline, nameDrop }: MapLayout, palette: Palette): string {
-  const kinds: readonly MarkKind[] = ['spoils', 'harmless', 'native'];
-  const parts: string[] = [];
-  let x = width - margin.right;
-  for (const kind of kinds.filter((one) => map.marks.some((mark) => mark.kind === one))) {
-    const word = KIND_WORDS[kind];
-    parts.push(text(x, headBaseline, word, { fill: palette.quiet, 'text-anchor': 'end' }));
-    x -= textWidth(word, SMALL) + 8;
-    parts.push(shape(kind, x, headBaseline - 4, palette));
-    x -= 20;
-  }
-  if (nameDrop !== undefined)
-    return text(margin.left, headBaseline, 'recorded', { fill: palette.quiet }) + parts.join('');
-  const names = [
-    'recorded frequency, over the true one at the sensor',
-    'recorded, over true frequency',
-    'recorded, over true',
-  ];
-  const name = names.find((one) => EDGE + textWidth(one, SMALL) <= x) ?? 'recorded';
-  return text(EDGE, headBaseline, name, { fill: palette.quiet }) + parts.join('');
+  const kinds = new Set(map.marks.map(({ kind }) => kind));
+  const { drawn, left } = legend(kinds, width - margin.right, headBaseline, palette);
+  const [x, names] = nameDrop === undefined ? [EDGE, NAMES_OF_BOTH] : [margin.left, []];
+  const name = names.find((one) => x + textWidth(one, SMALL) <= left) ?? 'recorded';
+  return text(x, headBaseline, name, { fill: palette.quiet }) + drawn;
 }
+
+/** The names of both axes, where only the head has room for them: the longest that fits. */
+const NAMES_OF_BOTH: readonly string[] = [
+  'recorded frequency, over the true one at the sensor',
+  'recorded, over true frequency',
+  'recorded, over true',
+];
 
 /** The least distance of words from the picture's edge. */
 const EDGE = 6;

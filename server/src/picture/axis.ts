@@ -28,6 +28,28 @@ export function frequencyTicks(low: number, high: number, most: number): readonl
   }));
 }
 
+/**
+ * Frequencies that are 1, 2 or 5 times a power of ten, or powers of ten alone where those are more than `most`, or
+ * every second of them and so on; for a logarithmic axis from `low`, above 0, to `high`.
+ */
+export function logarithmicTicks(low: number, high: number, most: number): readonly Tick[] {
+  const first = Math.floor(Math.log10(low) + 1e-9);
+  const last = Math.floor(Math.log10(high) + 1e-9);
+  const inside = (value: number): boolean => value >= low * (1 - 1e-9) && value <= high * (1 + 1e-9);
+  const powers = Array.from({ length: Math.max(0, last - first + 1) }, (_, index) => first + index);
+  const fine = powers.flatMap((power) => [1, 2, 5].map((times) => Number(`${times}e${power}`))).filter(inside);
+  if (fine.length < 2) return frequencyTicks(low, high, most);
+  const step = Math.max(1, Math.ceil((last - first + 1) / Math.max(1, most)));
+  const coarse = powers
+    .filter((power) => power % step === 0)
+    .map((power) => Number(`1e${power}`))
+    .filter(inside);
+  return (fine.length <= most ? fine : coarse).map((value) => {
+    const { factor, unit } = frequencyUnit(value);
+    return { value, label: `${shortNumber(value / factor)} ${unit}` };
+  });
+}
+
 /** Round values of a scale in decibels. */
 export function levelTicks(low: number, high: number, most: number): readonly Tick[] {
   return roundValues(low, high, most).map((value) => ({ value, label: shortNumber(value) }));

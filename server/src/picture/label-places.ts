@@ -38,6 +38,8 @@ export interface LabelRoom {
   readonly area: Box;
   readonly taken: readonly Box[];
   readonly lines: readonly Segment[];
+  /** How much farther down the list of places a label would rather go than cross a line; left out, 5. */
+  readonly crossingCost?: number;
 }
 
 /** Advance widths of a plain sans-serif face in units of its size, by kinds of character: an estimate on the wide side. */
@@ -54,7 +56,6 @@ function characterWidth(character: string): number {
   return /[A-Z]/.test(character) ? 0.72 : 0.6;
 }
 
-/** How much farther down the list of places a label would rather go than cross a line. */
 const CROSSING = 5;
 /** A shorter text is worth less than a place without crossings. */
 const SHORTENING = 9;
@@ -65,7 +66,7 @@ const SHORTENING = 9;
  */
 export function placeLabels<Wish extends LabelWish>(
   wishes: readonly Wish[],
-  { size, area, taken, lines }: LabelRoom,
+  { size, area, taken, lines, crossingCost = CROSSING }: LabelRoom,
 ): readonly PlacedLabel<Wish>[] {
   const boxes: Box[] = [...taken];
   const placed: PlacedLabel<Wish>[] = [];
@@ -79,7 +80,7 @@ export function placeLabels<Wish extends LabelWish>(
         if (best && cost >= best.cost) break;
         if (!isInside(label.box, area) || boxes.some((other) => overlap(label.box, other))) continue;
         const crossings = lines.filter((line) => crosses(line, label.box)).length;
-        const whole = cost + CROSSING * Math.min(2, crossings);
+        const whole = cost + crossingCost * Math.min(2, crossings);
         if (!best || whole < best.cost) best = { label, cost: whole };
       }
     }

@@ -1,13 +1,9 @@
-import type { MarkKind } from './alias-map-model.ts';
+import type { MarkKind } from './arrival-words.ts';
+import { KIND_WORDS } from './arrival-words.ts';
+import { textWidth } from './label-places.ts';
 import type { Palette } from './palette.ts';
 import { element, short } from './svg.ts';
-
-/** What the shapes mean. */
-export const KIND_WORDS: Readonly<Record<MarkKind, string>> = {
-  native: 'not folded',
-  harmless: 'folded, harmless',
-  spoils: 'folded, spoils the band',
-};
+import { SMALL, text } from './text-svg.ts';
 
 /** Native: an open circle. Folded, harmless: a small open diamond. Folded, spoils: a filled triangle. */
 export function shape(kind: MarkKind, x: number, y: number, palette: Palette): string {
@@ -38,6 +34,27 @@ export function colourOf(kind: MarkKind, palette: Palette): string {
       return palette.spoils;
   }
 }
+
+/** What the shapes mean, of kinds that are there, in a row that ends at `right`; and where the row begins. */
+export function legend(
+  kinds: ReadonlySet<MarkKind>,
+  right: number,
+  baseline: number,
+  palette: Palette,
+): { readonly drawn: string; readonly left: number } {
+  let drawn = '';
+  let x = right;
+  for (const kind of LEGEND.filter((one) => kinds.has(one))) {
+    const word = KIND_WORDS[kind];
+    drawn += text(x, baseline, word, { fill: palette.quiet, 'text-anchor': 'end' });
+    x -= textWidth(word, SMALL) + 8;
+    drawn += shape(kind, x, baseline - 4, palette);
+    x -= 20;
+  }
+  return { drawn, left: x };
+}
+
+const LEGEND: readonly MarkKind[] = ['spoils', 'harmless', 'native'];
 
 /** Closer than this, shapes of one kind and source are one. */
 const APART = 9;

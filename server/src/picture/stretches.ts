@@ -20,7 +20,7 @@ export function stretchesOf(chain: Chain, arrivals: readonly Arrival[]): readonl
   const nyquistHz = chain.stages.at(-1)!.nyquistHz;
   const first: Stretch = { lowHz: 0, highHz: 2 * nyquistHz };
   const matter = arrivals.filter((arrival) => mattersAt(arrival, chain));
-  const farthest = Math.max(0, ...matter.map(({ trueHighHz }) => trueHighHz));
+  const farthest = matter.reduce((high, { trueHighHz }) => Math.max(high, trueHighHz), 0);
   if (farthest * ROOM <= MOST_ZONES * nyquistHz) {
     return [{ lowHz: 0, highHz: Math.max(first.highHz, farthest * ROOM) }];
   }
