@@ -9,11 +9,13 @@ import { type TracedMany, type TracedPart, type TracedPiece, tracedParts } from 
 import { type BandImages, bandImages, worstFolds } from './worst-fold.ts';
 
 /**
- * A range that is sure to lose this much, and to end this far under the fold limit, is given the level that it is sure
- * to stay under instead of its true maximum: where two deep stop bands ripple, that would take long to find.
+ * A range that is sure to lose this much, and to end this far under full scale and under the fold limit, is given the
+ * level that it is sure to stay under instead of its true maximum: where two deep stop bands ripple, that would take
+ * long to find.
  */
 const PLAINLY_LOW_DB = 60;
-const PLAINLY_UNDER_DB = 10;
+const PLAINLY_UNDER_FULL_SCALE_DB = 120;
+const PLAINLY_UNDER_LIMIT_DB = 10;
 
 /** Levels are compared with limits to this, so that one that is exactly at its limit is not over it. */
 export const LEVEL_ROUNDING_DB = 1e-9;
@@ -28,6 +30,8 @@ interface NotedArrivals {
   readonly question: Pick<Chain, 'bandLowHz' | 'bandHighHz' | 'scale'>;
   readonly heard: readonly HeardSource[];
   readonly arrivals: readonly Arrival[];
+  /** The highest that folds into the band; `-Infinity` where nothing does. */
+  readonly highestFoldDb: number;
 }
 
 const TRACED: NoteKind<TracedSource> = { name: 'traced sources', most: 64 };
@@ -49,24 +53,39 @@ export function arrivalsOf(chain: Chain): readonly Arrival[] {
     return images;
   };
   for (const one of heard) addArrivals(arrivals, one, chain, imagesOnce);
-  note(chain.path, ARRIVALS, { question: { bandLowHz, bandHighHz, scale }, heard, arrivals });
+  const highestFoldDb = highestFoldOf(arrivals);
+  note(chain.path, ARRIVALS, { question: { bandLowHz, bandHighHz, scale }, heard, arrivals, highestFoldDb });
   return arrivals;
 }
 
+function highestFoldOf(arrivals: readonly Arrival[]): number {
+  let highest = -Infinity;
+  for (const { folded, inBand, level } of arrivals) if (folded && inBand && level > highest) highest = level;
+  return highest;
+}
+
 /** Whether all that the arrivals depend on, besides the path, is the same. */
-function isSameQuestion({ question: before, heard }: NotedArrivals, chain: Chain): boolean {
+function isSameQuestion({ question: before, heard, highestFoldDb }: NotedArrivals, chain: Chain): boolean {
   return (
     before.bandHighHz === chain.bandHighHz &&
     before.bandLowHz === chain.bandLowHz &&
     isSameScale(before.scale, chain.scale) &&
+    isSameLimit(before.scale, chain.scale, highestFoldDb) &&
     isSameHearing(heard, chain.channel.heard)
   );
 }
 
+/** Whether two limits tell the arrivals apart in the same way. */
+function isSameLimit(first: LevelScale, second: LevelScale, highestFoldDb: number): boolean {
+  if (first.foldLimit === second.foldLimit) return true;
+  const lower = Math.min(first.foldLimit, second.foldLimit);
+  return highestFoldDb <= lower && lower - PLAINLY_UNDER_LIMIT_DB >= first.fullScaleDb - PLAINLY_UNDER_FULL_SCALE_DB;
+}
+
 function isSameScale(first: LevelScale, second: LevelScale): boolean {
   return (
-    first.foldLimit === second.foldLimit &&
     first.unit === second.unit &&
+    first.fullScaleDb === second.fullScaleDb &&
     first.fullScaleV === second.fullScaleV &&
     first.sensitivity === second.sensitivity &&
     first.sensor?.measures?.value === second.sensor?.measures?.value &&
@@ -123,13 +142,16 @@ function landedPiece(traced: TracedPiece, entersAtSensor: boolean, componentDb: 
   const sure = isPart
     ? surelyTakenOff(path, piece, entersAtSensor, landing.from, landing.to)
     : surelyOf(traced, entersAtSensor, path);
-  const isPlainlyLow =
-    sure.attenuationDb > PLAINLY_LOW_DB && componentDb - sure.attenuationDb < chain.foldLimit - PLAINLY_UNDER_DB;
-  if (isPlainlyLow) return { inBand, slackHz, strongest: sure };
+  if (isPlainlyLow(sure, componentDb, chain)) return { inBand, slackHz, strongest: sure };
   const strongest = isPart
     ? strongestOf(path, piece, entersAtSensor, landing.from, landing.to)
     : wholeOf(traced, entersAtSensor, path);
   return { inBand, slackHz, strongest };
+}
+
+function isPlainlyLow({ attenuationDb }: Strongest, componentDb: number, { foldLimit, scale }: Chain): boolean {
+  const under = Math.min(foldLimit - PLAINLY_UNDER_LIMIT_DB, scale.fullScaleDb - PLAINLY_UNDER_FULL_SCALE_DB);
+  return attenuationDb > PLAINLY_LOW_DB && componentDb - attenuationDb < under;
 }
 
 function surelyOf(traced: TracedPiece, entersAtSensor: boolean, path: SignalPath): Strongest {

@@ -55,7 +55,15 @@ export function tracedParts(component: Component, path: SignalPath): readonly Tr
 }
 
 function piecesOf(base: TracedBase, pieces: readonly FoldedPiece[]): readonly TracedPart[] {
-  return pieces.map((piece) => ({ ...base, kind: 'piece', piece, whole: undefined, surely: undefined }));
+  const { component, onNyquistAtStage } = base;
+  return pieces.map((piece) => ({
+    kind: 'piece',
+    component,
+    onNyquistAtStage,
+    piece,
+    whole: undefined,
+    surely: undefined,
+  }));
 }
 
 /** The pieces of a range, where they are few enough to be told apart. */
