@@ -16,13 +16,17 @@ export interface Slot {
   readonly colonFollows: boolean;
 }
 
-/** The slot at a cursor: the word that has been begun, and of a value what stands behind the cursor too. */
-export function slotAt(snapshot: Snapshot, position: Position, cursor: Cursor): Slot {
+/**
+ * The slot at a cursor: the word that has been begun, and of a value what stands behind the cursor too. None where that
+ * is more than a word: a map, a list, an alias.
+ */
+export function slotAt(snapshot: Snapshot, position: Position, cursor: Cursor): Slot | undefined {
   const offset = snapshot.offsetAt(position);
   const first = snapshot.sliceText(cursor.start, Math.min(offset, cursor.start + 1));
   const quote = first === '"' || first === "'" ? first : '';
   const lineEnd = snapshot.offsetAt({ line: position.line, character: Number.MAX_SAFE_INTEGER });
   const behind = snapshot.sliceText(offset, lineEnd);
+  if (cursor.writes === 'value' && quote === '' && /^[{[&*!|>]/.test(behind)) return undefined;
   const length = lengthBehind(behind, cursor, quote);
   const isJson = snapshot.style === 'flow' && /"\s*:/.test(snapshot.sliceText(0, 2_000));
   return {
@@ -43,8 +47,6 @@ function lengthBehind(behind: string, { writes, inFlow, prefix }: Cursor, quote:
   if (quote !== '') return /^[^"',{}[\]]*["']/.exec(behind)?.[0].length ?? 0;
   // A key in front of which another is begun stays.
   if (writes === 'key') return prefix === '' ? 0 : /^[\w.-]*/.exec(behind)![0].length;
-  // What is more than a scalar stays too.
-  if (/^[{[&*!|>]/.test(behind)) return 0;
   const value = inFlow ? /^[^,{}[\]]*/.exec(behind)![0] : behind;
   return value.replace(/(?:^|\s)#.*$/, '').trimEnd().length;
 }

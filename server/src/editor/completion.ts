@@ -9,13 +9,14 @@ import { slotAt, wordIn } from './completion-slot.ts';
 import { cursorAt } from './cursor.ts';
 import { channelAt } from './map-view.ts';
 
-/** What may be written at a position; nothing in a comment. */
+/** What may be written at a position; nothing in a comment, nor where more than a word stands. */
 export function completionsAt(evaluation: Evaluation, position: Position): CompletionList | null {
   const { snapshot } = evaluation;
   const cursor = cursorAt(snapshot, snapshot.offsetAt(position));
   if (cursor.inComment) return null;
-  const drafts = draftsAt(evaluation, cursor, channelAt(evaluation, position));
   const slot = slotAt(snapshot, position, cursor);
+  if (!slot) return null;
+  const drafts = draftsAt(evaluation, cursor, channelAt(evaluation, position));
   return {
     // Units follow the number that has been typed: with another digit they are others.
     isIncomplete: drafts.some(({ kind }) => kind === CompletionItemKind.Unit),

@@ -38,7 +38,8 @@ function diagnosticOf(
   const href = links.check(finding.check);
   return {
     range,
-    severity: unused ? DiagnosticSeverity.Hint : protocolSeverity(finding.severity),
+    // Greyed out where it stands; somebody who made it graver wants it in the list.
+    severity: unused && finding.severity === 'hint' ? DiagnosticSeverity.Hint : protocolSeverity(finding.severity),
     source: 'ratewright',
     code: finding.check,
     ...(href === undefined ? {} : { codeDescription: { href } }),

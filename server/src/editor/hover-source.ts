@@ -44,7 +44,7 @@ export function sourceMarkdown(source: Source, evaluation: Evaluation): string {
       worst.component,
       spanText(worst.trueLowHz, worst.trueHighHz),
       spanText(worst.recordedLowHz, worst.recordedHighHz),
-      `${worst.level.toFixed(1)} ${unit}`,
+      `${levelText(worst.level)} ${unit}${worst.levelKnown ? '' : ' (assumed)'}`,
       worst.overLimit
         ? `**${excess.toFixed(1)} dB over**`
         : worst.inBand
@@ -56,6 +56,11 @@ export function sourceMarkdown(source: Source, evaluation: Evaluation): string {
   const table = tableMarkdown(['channel', 'component', 'true', 'recorded', 'level', ''], rows);
   const more = hearing.length - Math.min(hearing.length, MOST_CHANNELS);
   return `${head}\n\n${table}${more > 0 ? `\n\n${more} more channels hear it.` : ''}`;
+}
+
+/** A level that rounds to nothing has no sign. */
+function levelText(level: number): string {
+  return level.toFixed(1).replace(/^-(?=0\.0$)/, '');
 }
 
 /** Over the limit before under it, folded into the band before anything else, then the louder. */

@@ -12,7 +12,7 @@ import { filterMarkdown } from './hover-filter.ts';
 import { mapMarkdown } from './hover-map.ts';
 import { sourceMarkdown } from './hover-source.ts';
 import { channelAt } from './map-view.ts';
-import { codeMarkdown } from './picture-markdown.ts';
+import { codeMarkdown, MOST_HOVER_CHARACTERS } from './picture-markdown.ts';
 import { plainTextOf } from './plain-text.ts';
 import { type Pointed, pointedAt } from './tree-path.ts';
 
@@ -25,8 +25,10 @@ export function hoverAt(evaluation: Evaluation, position: Position, abilities: C
   if (!entry || start === undefined) return null;
   const pointed = pointedAt(entry, offset - start);
   if (!pointed?.node) return null;
-  const markdown = markdownFor(evaluation, entry, pointed, channelAt(evaluation, position), abilities);
-  if (markdown === undefined) return null;
+  const whole = markdownFor(evaluation, entry, pointed, channelAt(evaluation, position), abilities);
+  if (whole === undefined) return null;
+  // Names may be of any length; what holds them is cut before an editor does it.
+  const markdown = whole.length < MOST_HOVER_CHARACTERS ? whole : `${whole.slice(0, MOST_HOVER_CHARACTERS - 2)}…`;
   return {
     contents: abilities.showsMarkdown
       ? { kind: MarkupKind.Markdown, value: markdown }
@@ -114,12 +116,15 @@ function nameMarkdown(
       const value = kind.values.find(({ name }) => name === text);
       if (value) return `**${codeMarkdown(value.name)}**\n\n${value.doc}`;
     }
-    if (kind.kind === 'check-name' || names === 'check') return checkMarkdown(text);
+    if (kind.kind === 'check-name' || names === 'check') return checkMarkdown(text, abilities);
   }
   return undefined;
 }
 
-function checkMarkdown(name: string): string | undefined {
+function checkMarkdown(name: string, { links }: ClientAbilities): string | undefined {
   const check = ALL_CHECKS.find((one) => one.name === name);
-  return check && `**${check.name}** · ${check.severity}\n\n${check.finds}\n\n${check.why}`;
+  if (!check) return undefined;
+  const href = links.check(name);
+  const title = href === undefined ? check.name : `[${check.name}](${href})`;
+  return `**${title}** · ${check.severity}\n\n${check.finds}\n\n${check.why}`;
 }
