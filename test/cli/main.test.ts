@@ -83,6 +83,11 @@ describe('the program', () => {
     ]);
   });
 
+  it('writes into a pipe that --output names, and does not put a file in its place', () => {
+    const { stdout } = shell('mkfifo p; cat p & $R explain -o p; wait; test -p p && echo still a pipe');
+    expect(stdout).toMatch(/^Checks\n[\s\S]*\nstill a pipe\n$/);
+  });
+
   it('is not held up by a large result', () => {
     const { stdout } = shell('for n in $(seq 300); do cp a.rig.yaml c$n.rig.yaml; done; $R check --format json | cat');
     expect((JSON.parse(stdout) as { files: unknown[] }).files).toHaveLength(302);

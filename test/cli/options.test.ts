@@ -84,7 +84,7 @@ describe('values of options', () => {
     expect(stderr).toBe(`ratewright ${said}\nTry 'ratewright ${argv[0]} --help'.\n`);
   });
 
-  it('a pipe or a device is written to, and not replaced', async () => {
+  it('a device is written to, and not replaced', async () => {
     const { code, stdout, stderr } = await ran(['explain', '-o', '/dev/null']);
     expect([code, stdout, stderr]).toEqual([0, '', '']);
   });

@@ -18,8 +18,6 @@ export interface Ran {
 
 export interface Surroundings {
   readonly stdin?: string | Uint8Array | Error;
-  /** Happens when standard input is asked for. */
-  readonly onRead?: () => void;
   readonly environment?: Readonly<Record<string, string>>;
   /** Both standard output and standard error are a terminal. */
   readonly isTerminal?: boolean;
@@ -51,14 +49,13 @@ export function folderOf(files: Files): string {
 export async function ranIn(folder: string, argv: readonly string[], around: Surroundings = {}): Promise<Ran> {
   let stdout = '';
   let stderr = '';
-  const { stdin = '', onRead, environment = {}, isTerminal = false, inside = '.' } = around;
+  const { stdin = '', environment = {}, isTerminal = false, inside = '.' } = around;
   const io: CommandIo = {
     cwd: join(folder, inside),
     environment,
     stdoutIsTerminal: isTerminal,
     stderrIsTerminal: isTerminal,
     readStdin: async () => {
-      onRead?.();
       if (stdin instanceof Error) throw stdin;
       return typeof stdin === 'string' ? Buffer.from(stdin) : stdin;
     },

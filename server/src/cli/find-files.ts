@@ -45,7 +45,9 @@ export function findFiles(paths: readonly string[], cwd: string): FoundFiles {
     const full = resolve(cwd, path);
     try {
       if (statSync(full).isDirectory()) {
-        for (const file of searched(full, rulesAbove(full), new Set(), faults)) add(named(file, path, full));
+        const unread: { path: string; reason: string }[] = [];
+        for (const file of searched(full, rulesAbove(full), new Set(), unread)) add(named(file, path, full));
+        for (const { path: inside, reason } of unread) faults.push({ path: named(inside, path, full), reason });
       } else add(path);
     } catch (fault) {
       faults.push({ path, reason: reasonOf(fault) });
@@ -55,8 +57,7 @@ export function findFiles(paths: readonly string[], cwd: string): FoundFiles {
 }
 
 function named(file: string, given: string, folder: string): string {
-  const inside = relative(folder, file);
-  return given === '.' ? inside : join(given, inside);
+  return join(given, relative(folder, file));
 }
 
 function searched(
