@@ -149,6 +149,7 @@ describe('keys', () => {
     const checks = offers('checks:\n  fold-in-band: off\n  ▮')!;
     expect(checks.labels).toEqual(CHECK_NAMES.filter((name) => name !== 'fold-in-band'));
     expect(labels('checks:\n  band-droop: ▮')).toEqual(['off', 'hint', 'warning', 'error']);
+    expect(labels('accept:\n  - finding: ▮')).toEqual(CHECK_NAMES);
   });
 
   it('are those of a map in braces over a whole section', () => {
@@ -352,7 +353,7 @@ describe('places of completions', () => {
           expect(end.character).toBeGreaterThanOrEqual(position.character);
         }
       }),
-      { numRuns: runs(1_000), seed: 11 },
+      { numRuns: runs(500), seed: 11 },
     );
   });
 });

@@ -11,12 +11,13 @@ export function foldingOf(snapshot: Snapshot): FoldingRange[] {
     const endLine = snapshot.positionAt(end).line;
     if (endLine > startLine) ranges.push({ startLine, endLine });
   };
-  let section: { readonly start: number; end: number; readonly name: string } | undefined;
+  let section: { readonly start: number; end: number } | undefined;
   for (const entry of snapshot.entries) {
     const offset = snapshot.startOf(entry) ?? 0;
-    if (entry.section === undefined || section?.name !== entry.section) {
+    // A section's own line stands ahead of its entries.
+    if (entry.section === undefined || !section) {
       if (section) add(section.start, section.end);
-      section = { name: entry.section ?? entry.name, start: offset + (entry.key?.start ?? 0), end: offset };
+      section = { start: offset + (entry.key?.start ?? 0), end: offset };
     }
     section.end = Math.max(section.end, offset + entry.value.end);
     if (!entry.key) continue;

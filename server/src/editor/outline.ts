@@ -15,22 +15,16 @@ export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
     if (rate) rates.set(result.channel.place.entry, formatHz(rate.value));
   }
   const top: DocumentSymbol[] = [];
-  let section: { readonly name: string; readonly symbol: DocumentSymbol } | undefined;
   for (const entry of snapshot.entries) {
     if (!entry.key) continue;
     const symbol = symbolOf(entry, snapshot, rates.get(entry));
-    if (entry.section === undefined) {
-      top.push(symbol);
-      section = { name: entry.name, symbol };
-    } else {
-      if (section?.name !== entry.section) {
-        section = { name: entry.section, symbol: { ...symbol, name: entry.section, kind: SymbolKind.Namespace } };
-        top.push(section.symbol);
-      }
-      section.symbol.children ??= [];
-      section.symbol.children.push(symbol);
-      section.symbol.range = { start: section.symbol.range.start, end: symbol.range.end };
-    }
+    // A section's own line stands ahead of its entries.
+    const section = entry.section === undefined ? undefined : top.at(-1);
+    if (section) {
+      section.children ??= [];
+      section.children.push(symbol);
+      section.range = { start: section.range.start, end: symbol.range.end };
+    } else top.push(symbol);
   }
   return top;
 }
