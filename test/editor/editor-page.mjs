@@ -81,7 +81,7 @@ export async function waitForSquiggles(page, severity, count) {
 
 /** The text that stands above a squiggly line: the characters whose middle lies within it. */
 export async function textOver(squiggle) {
-  const box = await squiggle.boundingBox();
+  const box = await boxOf(squiggle);
   return squiggle.page().evaluate(({ x, y, width, height }) => {
     let text = '';
     for (const line of document.querySelectorAll('.editor-group-container.active .view-line')) {
@@ -102,9 +102,19 @@ export async function textOver(squiggle) {
   }, box);
 }
 
+/** Where something is shown: once more where it is drawn anew just when it is looked for. */
+async function boxOf(target) {
+  for (let attempt = 0; attempt < 50; attempt++) {
+    await target.waitFor({ state: 'attached' });
+    const box = await target.boundingBox();
+    if (box) return box;
+  }
+  throw new Error('What is looked for is not shown.');
+}
+
 /** Points at a place on the screen and returns the hover that is shown. */
 export async function hoverOver(page, target) {
-  const box = await target.boundingBox();
+  const box = await boxOf(target);
   await page.mouse.move(box.x - 60, box.y + 60);
   await page.mouse.move(box.x + box.width / 2, box.y + box.height / 2, { steps: 5 });
   const hover = page.locator('.monaco-hover:visible', { has: page.locator('.hover-contents, .hover-row') });
@@ -120,7 +130,7 @@ export async function pointAtNothing(page) {
 
 /** Moves the mouse to the middle of what is shown and clicks: menus ignore a click that no movement came before. */
 export async function clickByMouse(target) {
-  const { x, y, width, height } = await target.boundingBox();
+  const { x, y, width, height } = await boxOf(target);
   const { mouse } = target.page();
   await mouse.move(x + width / 2, y + height / 2, { steps: 5 });
   await mouse.click(x + width / 2, y + height / 2);

@@ -60,7 +60,15 @@ async function hoverShowsThePicture({ page, shoot }) {
   const hover = await hoverOver(page, squiggles(page, 'error').first());
   await hover.locator(PICTURE).waitFor();
   await hover.locator('table').first().waitFor();
+  await shoot('hover-rate');
+  await page.keyboard.press('Escape');
+  // On the channel's name no finding stands above the picture.
+  await (await hoverOver(page, channelName(page))).locator(PICTURE).waitFor();
   await shoot('hover-light');
+}
+
+function channelName(page) {
+  return page.locator('.editor-group-container.active .view-line span', { hasText: /^bearing-drive-end$/ }).last();
 }
 
 async function findingsNameOpensItsPage({ page, shoot }) {
@@ -98,15 +106,16 @@ async function completionOffersReachableRates({ page, shoot }) {
   await page.locator('.view-line', { hasText: /rate:\s51\.2\skHz/ }).waitFor();
 }
 
-async function outlineListsTheChannels({ page }) {
+async function outlineListsTheChannels({ page, shoot }) {
   await openFile(page, 'findings.rig.yaml');
-  await page.locator('.pane-header', { hasText: 'Outline' }).click();
-  const rows = page.locator('.outline-tree .monaco-list-row');
-  await rows.filter({ hasText: 'clocks' }).hover();
-  // The channels are at the end, and rows that are out of sight are not there at all.
-  await page.mouse.wheel(0, 5000);
-  await rows.filter({ hasText: 'bearing-drive-end' }).waitFor();
-  await page.locator('.pane-header', { hasText: 'Outline' }).click();
+  // Rows that are out of sight are not there at all, so the outline is given the room of the files.
+  const header = (name) => page.locator('.pane-header', { hasText: name });
+  await header('Outline').click();
+  await header('workspace').click();
+  await page.locator('.outline-tree .monaco-list-row', { hasText: 'bearing-drive-end' }).waitFor();
+  await shoot('outline');
+  await header('workspace').click();
+  await header('Outline').click();
 }
 
 async function showAliasMap({ page, shoot }) {
@@ -176,7 +185,7 @@ async function picturesFollowTheTheme({ page, shoot }) {
     await runCommand(page, 'Preferences: Color Theme');
     await chooseByKeys(page, theme);
     await page.locator(`.monaco-workbench${root}`).waitFor();
-    const hover = await hoverOver(page, squiggles(page, 'error').first());
+    const hover = await hoverOver(page, channelName(page));
     const picture = hover.locator(PICTURE);
     await picture.waitFor();
     seen.add(await picture.getAttribute('src'));
