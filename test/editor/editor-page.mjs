@@ -112,6 +112,15 @@ async function boxOf(target) {
   throw new Error('What is looked for is not shown.');
 }
 
+/** Waits until nothing fades in or out any longer. */
+export async function settled(page) {
+  const isEnding = () =>
+    document
+      .getAnimations()
+      .some(({ playState, effect }) => playState === 'running' && effect.getTiming().iterations !== Infinity);
+  await page.waitForFunction(`!(${isEnding})()`);
+}
+
 /** Points at a place on the screen and returns the hover that is shown. */
 export async function hoverOver(page, target) {
   const box = await boxOf(target);

@@ -4,7 +4,7 @@ import { execFileSync } from 'node:child_process';
 import { mkdirSync, readFileSync, rmSync } from 'node:fs';
 import { dirname, join, resolve } from 'node:path';
 import { fileURLToPath } from 'node:url';
-import { openBrowser } from './editor-page.mjs';
+import { openBrowser, settled } from './editor-page.mjs';
 import { startEditor } from './editor-server.mjs';
 import { install } from './install.mjs';
 import { files, scenarios } from './scenarios.mjs';
@@ -20,7 +20,10 @@ function pack() {
 
 async function runScenarios(editor, page) {
   let failed = 0;
-  const shoot = (name) => page.screenshot({ path: join(screenshots, `${name}.png`) });
+  const shoot = async (name) => {
+    await settled(page);
+    await page.screenshot({ path: join(screenshots, `${name}.png`) });
+  };
   for (const [title, scenario] of scenarios) {
     const start = Date.now();
     try {
