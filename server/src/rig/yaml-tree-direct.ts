@@ -31,8 +31,11 @@ import {
  * `undefined`.
  */
 
+const BYTE_ORDER_MARK = 0xfeff;
+
 /** The tree of a text with nothing wrong and nothing unusual in it; `undefined` for any other. */
 export function readDirectly(text: string): TreeNode | undefined {
+  if (text.charCodeAt(0) === BYTE_ORDER_MARK) return undefined;
   const at = nextLine(text, 0, true);
   if (at < 0 || at === text.length) return undefined;
   const code = text.charCodeAt(at);

@@ -1,5 +1,6 @@
 import type { Finding, Severity } from '../checks/finding.ts';
 import { SEVERITIES } from '../checks/finding.ts';
+import { MOST_SYNTAX_FINDINGS } from '../rig/limits.ts';
 import type { PositionRange } from '../rig/place.ts';
 import type { Evaluation } from './evaluation.ts';
 
@@ -18,7 +19,24 @@ export function allFindings(evaluation: Evaluation): readonly Finding[] {
   for (const { result } of evaluation.channels) {
     if (result.findings.length > 0) all.push(...result.findings);
   }
-  return all;
+  return all.length > MOST_SYNTAX_FINDINGS ? withFewSyntaxFindings(all) : all;
+}
+
+/** A text that is no rig file at all could fill pages with what is wrong in it: past a limit, that is all that is said. */
+function withFewSyntaxFindings(all: readonly Finding[]): readonly Finding[] {
+  const syntax = all.filter(({ check }) => check === 'syntax');
+  const left = syntax.slice(MOST_SYNTAX_FINDINGS);
+  const first = left[0];
+  if (!first) return all;
+  const out = new Set(left);
+  const summary: Finding = {
+    ...first,
+    check: 'too-much',
+    about: 'syntax',
+    message: `${syntax.length} places of this file can't be read as YAML; the first ${MOST_SYNTAX_FINDINGS} are told.`,
+    figures: { found: syntax.length, told: MOST_SYNTAX_FINDINGS },
+  };
+  return [...all.filter((finding) => !out.has(finding)), summary];
 }
 
 /** How many findings of each severity there are. */
