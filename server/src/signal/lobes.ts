@@ -15,7 +15,7 @@ export function lobedCurve(length: number, count: number): Curve {
   return {
     at,
     least(low, high) {
-      if (low >= MOST_LOBES) return at(low);
+      if (low >= MOST_LOBES || low === high) return at(low);
       let least = Math.min(at(low), at(high));
       const lobe = Math.floor(low);
       // Only the first two can hold the highest peak: the first may have its peak behind it.
