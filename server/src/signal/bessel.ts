@@ -13,8 +13,8 @@ const LARGE = 16;
  * Source: Krall and Frink, A new class of orthogonal polynomials, 1949; Thomson 1949.
  */
 export function besselPrototype(order: number): Curve {
-  const coefficients = squaredMagnitude(order);
-  const cutoff = Math.sqrt(whereExcessIsOne(coefficients));
+  const coefficients = besselSquaredMagnitude(order);
+  const cutoff = besselCutoff(coefficients);
   const lnLeading = Math.log(coefficients[order]!);
   return risingCurve((x) => {
     const w = x * cutoff;
@@ -26,7 +26,7 @@ export function besselPrototype(order: number): Curve {
 }
 
 /** Coefficients of |theta(jw) / theta(0)|^2 in powers of w^2, the first being 1. */
-function squaredMagnitude(order: number): Float64Array {
+export function besselSquaredMagnitude(order: number): Float64Array {
   const coefficients = new Float64Array(order + 1);
   coefficients[0] = 1;
   for (let k = 0; k < order; k++) {
@@ -49,6 +49,11 @@ function descending(coefficients: Float64Array, inverse: number): number {
   let sum = 0;
   for (let k = 0; k < coefficients.length; k++) sum = sum * inverse + coefficients[k]! / leading;
   return sum;
+}
+
+/** The angular frequency w that is 3.0103 dB down, of a squared magnitude as above: that of a delay of 1 at 0 Hz. */
+export function besselCutoff(coefficients: Float64Array): number {
+  return Math.sqrt(whereExcessIsOne(coefficients));
 }
 
 /** Newton's method from above, where the convex, rising excess brings it down to the root without overshoot. */

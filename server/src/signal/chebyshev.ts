@@ -2,7 +2,7 @@ import type { Curve } from './curve.ts';
 import { attenuationOfLnPower, lnPowerOfAttenuation } from './decibel.ts';
 
 /** A ripple or stop band of 0 dB would leave no filter to speak of; the reader refuses it. */
-const LEAST_DB = 1e-9;
+export const LEAST_DB = 1e-9;
 
 /**
  * Chebyshev, x = 1 at the pass edge: A = 10 log10(1 + e^2 T(x)^2), e^2 = 10^(ripple / 10) - 1.

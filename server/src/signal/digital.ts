@@ -2,9 +2,9 @@ import { averageCurve, curveOf, isCurveFilter } from './analogue.ts';
 import { type Curve, responseOf } from './curve.ts';
 import type { DigitalFilter, PoleFilter, StepFilter } from './filter-spec.ts';
 import { firCurve } from './fir.ts';
-import { halfBandTaps, kaiserTaps } from './kaiser.ts';
 import { digitalPoleCurve } from './poles.ts';
 import type { Response } from './response.ts';
+import { tapsOf } from './taps.ts';
 
 /**
  * The response of a digital filter at `inputRateHz`, over 0 .. inputRateHz / 2: a frequency must have been folded
@@ -18,11 +18,9 @@ export function digitalResponse(filter: DigitalFilter, inputRateHz: number): Res
 function computedCurve(filter: PoleFilter | StepFilter, rateHz: number): Curve {
   switch (filter.response) {
     case 'fir':
-      return firCurve(filter.taps, rateHz);
     case 'kaiser':
-      return firCurve(kaiserTaps(filter.stopbandDb, filter.passHz, filter.stopHz, rateHz), rateHz);
     case 'half-band':
-      return firCurve('taps' in filter ? filter.taps : halfBandTaps(filter.stopbandDb, filter.passHz, rateHz), rateHz);
+      return firCurve(tapsOf(filter, rateHz), rateHz);
     case 'moving-average':
       return averageCurve(filter.length, 1, filter.length / rateHz);
     case 'cic': {

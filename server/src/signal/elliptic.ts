@@ -37,23 +37,38 @@ export interface EllipticPrototype {
  * Source: Cauer 1931; Antoniou, Digital Filters, the chapter on elliptic approximations.
  */
 export function ellipticPrototype(order: number, rippleDb: number, stopbandDb: number): EllipticPrototype {
-  const ripple = Math.max(rippleDb, LEAST_RIPPLE_DB);
-  const stopband = Math.min(Math.max(stopbandDb, ripple * (1 + 1e-6)), GREATEST_STOPBAND_DB);
+  const { ripple, stopband } = heldLevels(rippleDb, stopbandDb);
   const cauer = cauerFunction(order, ripple, stopband);
   const curve = turningCurve((x) => attenuationAt(cauer, x), turnsOf(order, ripple, stopband, cauer.modulus));
   const stopEdge = 1 / cauer.modulus.k;
   return { curve, cutoff: cutoffOf(curve, ripple, stopEdge), stopEdge };
 }
 
-function cauerFunction(order: number, ripple: number, stopband: number): CauerFunction {
+interface EllipticModuli {
+  /** ln e^2. */
+  readonly lnPower: number;
+  /** Of R along its values, k1. */
+  readonly selectivity: Modulus;
+  /** Of R along the frequency, k: its reciprocal is the stop edge. */
+  readonly modulus: Modulus;
+}
+
+/** The moduli that the degree equation ties together. */
+export function ellipticModuli(order: number, rippleDb: number, stopbandDb: number): EllipticModuli {
+  const { ripple, stopband } = heldLevels(rippleDb, stopbandDb);
   const lnPower = lnPowerOfAttenuation(ripple);
   const lnSelectivity = lnPower - lnPowerOfAttenuation(stopband);
-  const modulus = modulusOfPeriodRatio(
-    periodRatio({
-      k: Math.exp(lnSelectivity / 2),
-      complement: Math.sqrt(-Math.expm1(lnSelectivity)),
-    }) / order,
-  );
+  const selectivity = { k: Math.exp(lnSelectivity / 2), complement: Math.sqrt(-Math.expm1(lnSelectivity)) };
+  return { lnPower, selectivity, modulus: modulusOfPeriodRatio(periodRatio(selectivity) / order) };
+}
+
+function heldLevels(rippleDb: number, stopbandDb: number): { readonly ripple: number; readonly stopband: number } {
+  const ripple = Math.max(rippleDb, LEAST_RIPPLE_DB);
+  return { ripple, stopband: Math.min(Math.max(stopbandDb, ripple * (1 + 1e-6)), GREATEST_STOPBAND_DB) };
+}
+
+function cauerFunction(order: number, ripple: number, stopband: number): CauerFunction {
+  const { lnPower, modulus } = ellipticModuli(order, ripple, stopband);
   const pairs = Math.floor(order / 2);
   const zeroGaps = new Float64Array(pairs);
   const poleGaps = new Float64Array(pairs);

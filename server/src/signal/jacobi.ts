@@ -72,6 +72,24 @@ export function jacobiAt(part: number, modulus: Modulus): JacobiValues {
   return { sn: cn / dn, cn: (complement * sn) / dn, dn: complement / dn };
 }
 
+/**
+ * The part of the quarter period at which sn / cn has a value, not negative: F(atan(tangent), k) / K(k).
+ * Source: Abramowitz and Stegun 17.6.
+ */
+export function partAtTangent(tangent: number, modulus: Modulus): number {
+  let a = 1;
+  let b = modulus.complement;
+  let phi = Math.atan(tangent);
+  let doublings = 0;
+  for (; doublings < 60 && Math.abs(a - b) > 1e-16 * a; doublings++) {
+    phi += Math.atan((b / a) * Math.tan(phi)) + Math.PI * Math.floor(phi / Math.PI + 0.5);
+    const mean = (a + b) / 2;
+    b = Math.sqrt(a * b);
+    a = mean;
+  }
+  return Math.min(phi / (Math.PI / 2) / 2 ** doublings, 1);
+}
+
 function lowerHalf(part: number, modulus: Modulus): JacobiValues {
   const u = part * quarterPeriod(modulus);
   if (modulus.complement < HYPERBOLIC) {

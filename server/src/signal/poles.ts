@@ -3,7 +3,7 @@ import { butterworthPrototype, singlePolesCutoff, singlePolesPrototype } from '.
 import { chebyshevCutoff, chebyshevPrototype, inverseChebyshevCutoff, inverseChebyshevPrototype } from './chebyshev.ts';
 import type { Curve } from './curve.ts';
 import { ellipticPrototype } from './elliptic.ts';
-import type { FilterEdge, PoleFilter } from './filter-spec.ts';
+import type { PoleFilter } from './filter-spec.ts';
 import { bilinearCurve, prewarped, shapedCurve } from './frequency-map.ts';
 
 /** The responses that have edges; `rc` has corners instead. */
@@ -23,55 +23,74 @@ export function analoguePoleCurve(filter: PoleFilter): Curve {
  */
 export function digitalPoleCurve(filter: PoleFilter, rateHz: number): Curve {
   return bilinearCurve(
-    poleCurve(filter, (hz) => prewarped(Math.min(hz, GREATEST_CYCLES * rateHz), rateHz)),
+    poleCurve(filter, (hz) => prewarpedEdge(hz, rateHz)),
     rateHz,
   );
 }
 
-function poleCurve(filter: PoleFilter, axis: (hz: number) => number): Curve {
-  if (filter.response === 'rc') return singlePolesCurve(filter, axis);
-  const { lowHz, highHz } = filter.edge;
-  return shapedCurve(prototypeAtEdge(filter), filter.shape, axis(lowHz), axis(highHz));
+/** The frequency given of a filter that is to be transformed, just under half the rate at most, on the prewarped axis. */
+export function prewarpedEdge(hz: number, rateHz: number): number {
+  return prewarped(Math.min(hz, GREATEST_CYCLES * rateHz), rateHz);
 }
 
-/** The low-pass prototype over x, with x = 1 where the given edge is. */
-function prototypeAtEdge(filter: EdgedFilter): Curve {
+function poleCurve(filter: PoleFilter, axis: (hz: number) => number): Curve {
+  const { scale, lowHz, highHz } = placementOf(filter);
+  const prototype = scale === 1 ? prototypeOf(filter) : scaled(prototypeOf(filter), scale);
+  return shapedCurve(prototype, filter.shape, axis(lowHz), axis(highHz));
+}
+
+/** The low-pass prototype over x, with x = 1 where its own formula has its edge. */
+function prototypeOf(filter: PoleFilter): Curve {
   switch (filter.response) {
     case 'butterworth':
       return butterworthPrototype(filter.order);
     case 'bessel':
       return besselPrototype(filter.order);
-    case 'chebyshev': {
-      const curve = chebyshevPrototype(filter.order, filter.rippleDb);
-      return filter.edge.at === 'cutoff' ? scaled(curve, chebyshevCutoff(filter.order, filter.rippleDb)) : curve;
-    }
-    case 'inverse-chebyshev': {
-      const curve = inverseChebyshevPrototype(filter.order, filter.stopbandDb);
-      return filter.edge.at === 'cutoff'
-        ? scaled(curve, inverseChebyshevCutoff(filter.order, filter.stopbandDb))
-        : curve;
-    }
-    case 'elliptic': {
-      const prototype = ellipticPrototype(filter.order, filter.rippleDb, filter.stopbandDb);
-      const edges: Record<FilterEdge['at'], number> = {
-        'pass-edge': 1,
-        cutoff: prototype.cutoff,
-        'stop-edge': prototype.stopEdge,
-      };
-      return scaled(prototype.curve, edges[filter.edge.at]);
-    }
+    case 'chebyshev':
+      return chebyshevPrototype(filter.order, filter.rippleDb);
+    case 'inverse-chebyshev':
+      return inverseChebyshevPrototype(filter.order, filter.stopbandDb);
+    case 'elliptic':
+      return ellipticPrototype(filter.order, filter.rippleDb, filter.stopbandDb).curve;
+    case 'rc':
+      return singlePolesPrototype(filter.order);
   }
 }
 
-function singlePolesCurve(filter: Extract<PoleFilter, { response: 'rc' }>, axis: (hz: number) => number): Curve {
-  const curve = singlePolesPrototype(filter.order);
+/** Where a prototype is put. */
+interface Placement {
+  /** Where the frequency that was given is on the prototype's own axis. */
+  readonly scale: number;
+  readonly lowHz: number;
+  readonly highHz: number;
+}
+
+/** The frequencies at which a filter is held, and the point of its prototype that is put there. */
+export function placementOf(filter: PoleFilter): Placement {
+  if (filter.response !== 'rc') return { ...filter.edge, scale: edgeOf(filter) };
   const { lowHz, highHz } = filter.cornerHz;
-  if (filter.given !== 'cutoff' || filter.shape === 'band-pass') {
-    return shapedCurve(curve, filter.shape, axis(lowHz), axis(highHz));
+  if (filter.given !== 'cutoff' || filter.shape === 'band-pass') return { scale: 1, lowHz, highHz };
+  const scale = singlePolesCutoff(filter.order);
+  const cutoffHz = filter.shape === 'low-pass' ? lowHz * scale : lowHz / scale;
+  return { scale, lowHz: cutoffHz, highHz: cutoffHz };
+}
+
+/** Where the edge that was given is on the prototype's own axis. */
+function edgeOf(filter: EdgedFilter): number {
+  switch (filter.response) {
+    case 'butterworth':
+    case 'bessel':
+      return 1;
+    case 'chebyshev':
+      return filter.edge.at === 'cutoff' ? chebyshevCutoff(filter.order, filter.rippleDb) : 1;
+    case 'inverse-chebyshev':
+      return filter.edge.at === 'cutoff' ? inverseChebyshevCutoff(filter.order, filter.stopbandDb) : 1;
+    case 'elliptic': {
+      if (filter.edge.at === 'pass-edge') return 1;
+      const { cutoff, stopEdge } = ellipticPrototype(filter.order, filter.rippleDb, filter.stopbandDb);
+      return filter.edge.at === 'cutoff' ? cutoff : stopEdge;
+    }
   }
-  const cutoff = singlePolesCutoff(filter.order);
-  const cutoffHz = filter.shape === 'low-pass' ? lowHz * cutoff : lowHz / cutoff;
-  return shapedCurve(scaled(curve, cutoff), filter.shape, axis(cutoffHz), axis(cutoffHz));
 }
 
 function scaled(curve: Curve, factor: number): Curve {
