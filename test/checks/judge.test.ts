@@ -5,6 +5,7 @@ import { judgeChannel, judgeModel, judgingRig } from '../../server/src/checks/ju
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { type Environment, readEnvironment } from '../../server/src/rig/environment.ts';
+import type { NameUses } from '../../server/src/rig/name-uses.ts';
 import { editSnapshot, readSnapshot } from '../../server/src/rig/snapshot.ts';
 import { findingsOf, finished, found, NO_GUARD, names, only, underlined } from './judged.ts';
 
@@ -109,9 +110,9 @@ channels:
 
 describe('counting what is named', () => {
   /** As the workbench does it: what an edit has left alone is the same object as before. */
-  function judged(environment: Environment, before: ReturnType<typeof readAll> | undefined) {
+  function judged(environment: Environment, before?: ReturnType<typeof readAll>, uses?: NameUses) {
     const channels = readAll(environment, before);
-    return { channels, findings: finished(judgingRig(environment, channels, NO_GUARD)) };
+    return { channels, ...finished(judgingRig(environment, channels, NO_GUARD, uses)) };
   }
   function readAll(
     environment: Environment,
@@ -145,11 +146,11 @@ describe('counting what is named', () => {
     ];
     let snapshot = readSnapshot(head + texts[0]);
     let environment = readEnvironment(snapshot, CHECK_NAMES);
-    let state = judged(environment, undefined);
+    let state = judged(environment);
     for (const text of texts) {
       snapshot = editSnapshot(snapshot, [{ start: head.length, end: snapshot.length, text }]);
       environment = readEnvironment(snapshot, CHECK_NAMES, environment);
-      state = judged(environment, state.channels);
+      state = judged(environment, state.channels, state.uses);
       const unused = state.findings.filter(({ check }) => check === 'unused-name').map(({ thing }) => thing);
       const fromNothing = found(head + text, 'unused-name').map(({ thing }) => thing);
       expect(unused).toEqual(fromNothing);

@@ -17,7 +17,7 @@ export function findingsOf(text: string): readonly Finding[] {
     return { reading, result: judgeChannel(reading, environment.severities, NO_GUARD) };
   });
   return [
-    ...finished(judgingRig(environment, channels, NO_GUARD)),
+    ...finished(judgingRig(environment, channels, NO_GUARD)).findings,
     ...channels.flatMap(({ result }) => result.findings),
   ];
 }

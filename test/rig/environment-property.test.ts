@@ -1,13 +1,15 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { ChannelReading } from '../../server/src/rig/channel-reading.ts';
+import type { KnownChannel } from '../../server/src/rig/channel-reading.ts';
 import { readChannel, stillHolds } from '../../server/src/rig/channel-reading.ts';
 import type { Environment } from '../../server/src/rig/environment.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';
+import { type NameUses, NO_USES, nameUses } from '../../server/src/rig/name-uses.ts';
 import { rigProblems } from '../../server/src/rig/rig-problems.ts';
 import type { Snapshot, TextEdit } from '../../server/src/rig/snapshot.ts';
 import { editSnapshot, readSnapshot } from '../../server/src/rig/snapshot.ts';
 import { applyTextEdits } from '../../server/src/rig/text-edit.ts';
+import { unusedNames } from '../../server/src/rig/unused-names.ts';
 import { runs } from '../tools/runs.ts';
 import { CHECK_NAMES } from './fixture.ts';
 import { RIGS } from './snapshot-rigs.ts';
@@ -135,22 +137,24 @@ function editsOf(text: string, [kind, a, b, piece]: Step): readonly TextEdit[] {
 interface State {
   readonly snapshot: Snapshot;
   readonly environment: Environment;
-  readonly readings: readonly ChannelReading[];
+  readonly channels: readonly KnownChannel[];
+  readonly uses: NameUses;
 }
 
 /** What follows an edit: readings are kept where they still hold, as an editor keeps them. */
 function following(snapshot: Snapshot, before: State | undefined): State {
   const environment = readEnvironment(snapshot, CHECK_NAMES, before?.environment);
-  const kept = new Map(before?.readings.map((reading) => [reading.entry, reading]));
-  const readings = environment.channelEntries.map((entry) => {
-    const reading = kept.get(entry);
-    return reading && stillHolds(reading, environment) ? reading : readChannel(entry, environment);
+  const kept = new Map(before?.channels.map((channel) => [channel.reading.entry, channel]));
+  const channels = environment.channelEntries.map((entry) => {
+    const channel = kept.get(entry);
+    const holds = channel && stillHolds(channel.reading, environment);
+    return holds ? channel : { reading: readChannel(entry, environment) };
   });
-  return { snapshot, environment, readings };
+  return { snapshot, environment, channels, uses: nameUses(channels, before?.uses ?? NO_USES) };
 }
 
 /** Everything that was read, free of object identity and of what only serves to keep readings. */
-function described({ snapshot, environment, readings }: State): unknown {
+function described({ snapshot, environment, channels, uses }: State): unknown {
   const plain = (value: unknown): unknown => {
     if (value instanceof Map) return [...value].map(([key, one]) => [key, plain(one)]);
     if (Array.isArray(value)) return value.map(plain);
@@ -161,8 +165,8 @@ function described({ snapshot, environment, readings }: State): unknown {
   const { core: _, epochOf: __, ...rest } = environment;
   return {
     environment: plain(rest),
-    readings: readings.map(({ dependencies: ___, ...reading }) => plain(reading)),
-    problems: plain(rigProblems(environment, readings)),
+    readings: channels.map(({ reading: { dependencies: ___, ...reading } }) => plain(reading)),
+    problems: plain([...rigProblems(environment, channels), ...unusedNames(environment, uses)]),
   };
 }
 
@@ -194,7 +198,7 @@ describe('reading after edits', () => {
     expect(after.environment.digitizers.get('box')).toBe(before.environment.digitizers.get('box'));
     expect(after.environment.severities).toBe(before.environment.severities);
     expect(after.environment.filters.get('tidy')).not.toBe(before.environment.filters.get('tidy'));
-    const kept = after.readings.map((reading, index) => reading === before.readings[index]);
+    const kept = after.channels.map((channel, index) => channel === before.channels[index]);
     expect(kept).toEqual([true, true, true, false, true, true, true]);
   });
 
@@ -203,7 +207,7 @@ describe('reading after edits', () => {
     const at = TANGLED_RIG.indexOf('note: six');
     const after = following(editSnapshot(before.snapshot, [{ start: at, end: at + 4, text: 'peak' }]), before);
     expect(after.environment.core).toBe(before.environment.core);
-    const kept = after.readings.map((reading, index) => reading === before.readings[index]);
+    const kept = after.channels.map((channel, index) => channel === before.channels[index]);
     expect(kept).toEqual([true, true, true, true, true, false, true]);
   });
 });
@@ -213,7 +217,7 @@ describe('reading unfinished text', () => {
     const stride = Math.ceil(rig.length / (8 * runs(1_000)));
     for (let length = 0; length <= rig.length; length += stride) {
       const state = following(readSnapshot(rig.slice(0, length)), undefined);
-      expect(rigProblems(state.environment, state.readings)).toBeInstanceOf(Array);
+      expect(rigProblems(state.environment, state.channels)).toBeInstanceOf(Array);
     }
   });
 });

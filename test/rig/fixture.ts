@@ -3,12 +3,14 @@ import type { ChannelReading } from '../../server/src/rig/channel-reading.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import type { Environment } from '../../server/src/rig/environment.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';
+import { NO_USES, nameUses } from '../../server/src/rig/name-uses.ts';
 import type { Place } from '../../server/src/rig/place.ts';
 import type { PlacedProblem } from '../../server/src/rig/placed-problem.ts';
 import type { Cure } from '../../server/src/rig/problem.ts';
 import { rigProblems } from '../../server/src/rig/rig-problems.ts';
 import type { Snapshot } from '../../server/src/rig/snapshot.ts';
 import { readSnapshot } from '../../server/src/rig/snapshot.ts';
+import { unusedNames } from '../../server/src/rig/unused-names.ts';
 
 export const CHECK_NAMES: readonly string[] = ['fold-in-band', 'thin-margin', 'band-droop'];
 
@@ -26,7 +28,12 @@ export function readRig(text: string): ReadRig {
   const snapshot = readSnapshot(text);
   const environment = readEnvironment(snapshot, CHECK_NAMES);
   const readings = environment.channelEntries.map((entry) => readChannel(entry, environment));
-  const problems = [...readings.flatMap((reading) => reading.problems), ...rigProblems(environment, readings)];
+  const channels = readings.map((reading) => ({ reading }));
+  const problems = [
+    ...readings.flatMap((reading) => reading.problems),
+    ...rigProblems(environment, channels),
+    ...unusedNames(environment, nameUses(channels, NO_USES)),
+  ];
   return { snapshot, environment, readings, problems };
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { channelRig, expectOneProblem, readRig, saidOf, thingRig } from './fixture.ts';
+import { channelRig, expectOneProblem, readRig, saidOf, textAt, thingRig } from './fixture.ts';
 
 const CARD = 'filters:\n  card: { response: butterworth, order: 6, cutoff: 8 kHz }\n';
 
@@ -249,7 +249,7 @@ describe('a whole file', () => {
     const unused = (text: string) =>
       readRig(text)
         .problems.filter(({ problem }) => problem.name === 'unused-name')
-        .map(({ problem }) => problem.about);
+        .map(({ place }) => textAt(place));
     expect(unused(channelRig('', CARD))).toEqual(['card']);
     expect(unused(channelRig('filter: card', CARD))).toEqual([]);
     expect(unused(`rig: R\n${CARD}`)).toEqual([]);

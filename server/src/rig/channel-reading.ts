@@ -24,6 +24,11 @@ export interface ChannelReading {
   readonly dependencies: ChannelDependencies;
 }
 
+/** A channel, as far as the rig file is concerned: what was read of it. */
+export interface KnownChannel {
+  readonly reading: ChannelReading;
+}
+
 interface ChannelDependencies extends Dependencies {
   readonly sources: Core['scope']['sources'];
   readonly defaults: Core['defaults'];

@@ -1,6 +1,6 @@
 import { anchorTable, sameItems } from './anchors.ts';
 import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
-import type { Entry, NamedSection } from './entry.ts';
+import { type Entry, NAMED_SECTIONS, type NamedSection } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import type { Field } from './fields.ts';
 import type { Given, Source } from './model.ts';
@@ -80,7 +80,8 @@ function sortSignificant(significant: readonly Entry[]): Sorted {
     const others = kind ? named[kind] : topLevel;
     const first = others.get(entry.name) ?? (isMains ? named.source.get(MAINS) : undefined);
     if (first) {
-      problems.push(duplicateName(entry, kind ?? (isMains ? 'source' : 'key'), first));
+      const what = kind ?? (isMains ? 'source' : isSection(entry.name) ? 'section' : 'key');
+      problems.push(duplicateName(entry, what, first));
       continue;
     }
     others.set(entry.name, entry);
@@ -88,6 +89,10 @@ function sortSignificant(significant: readonly Entry[]): Sorted {
   }
   const lists = Object.fromEntries(Object.entries(named).map(([kind, entries]) => [kind, [...entries.values()]]));
   return { named: lists as unknown as Sorted['named'], topLevel, problems };
+}
+
+function isSection(name: string): boolean {
+  return NAMED_SECTIONS.some((section) => section === name);
 }
 
 /**

@@ -133,7 +133,7 @@ function addMergedFields(
 ): Fields {
   const merged = pairsOf(reader, node, entry);
   for (const problem of merged.problems) report(reader, problem);
-  if (!countExpansions(reader, merged.expansions, fields.place)) return fields;
+  if (!countExpansions(reader, merged.expansions, fields.place)) return { ...fields, unreadable: true };
   const rows = rowsOf(fields.context);
   for (const pair of merged.pairs) {
     const origin = pair.inherited ?? (inherited && inheritance(inherited.from, pair.entry, pair.value));
@@ -277,14 +277,19 @@ export function clipped(text: string): string {
   return line.length <= 60 ? line : `${line.slice(0, 57)}...`;
 }
 
+/** Whether so many more aliases may be followed; where the limit is passed, that is said. */
 function countExpansions(reader: Reader, count: number, place: Place): boolean {
+  if (count === 0) return true;
+  const before = reader.expansions;
   reader.expansions += count;
   if (reader.expansions <= MOST_ALIAS_EXPANSIONS) return true;
-  report(reader, {
-    name: 'too-much',
-    place,
-    message: `More than ${MOST_ALIAS_EXPANSIONS} aliases would have to be followed here; the rest is not read.`,
-    about: 'aliases',
-  });
+  if (before <= MOST_ALIAS_EXPANSIONS) {
+    report(reader, {
+      name: 'too-much',
+      place,
+      message: `More than ${MOST_ALIAS_EXPANSIONS} aliases would have to be followed here; the rest is not read.`,
+      about: 'aliases',
+    });
+  }
   return false;
 }

@@ -23,7 +23,10 @@ export function sharedInPlace<T extends object>(
   // Whoever comes first must not show in what all share: the thing is read as if nobody in particular inherited it.
   const from = field.entry.section === undefined && field.entry.name === 'defaults' ? 'defaults' : 'merge';
   const place = { entry: field.entry, start: node.start, end: node.end };
+  const expansions = reader.expansions;
+  reader.expansions = 0;
   const thing = read(reader, { ...field, path: name, inherited: { from, place } }, node);
+  reader.expansions += expansions;
   reader.scope.inPlace.set(node, { thing, problems: reader.origin.slice(before) });
   return thing;
 }

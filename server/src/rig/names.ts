@@ -56,7 +56,7 @@ export function nameExists(reader: Reader, name: ReadName, kind: Exclude<ThingKi
 function noteMissing(reader: Reader, name: string, place: Place, kind: Exclude<ThingKind, 'channel'>): void {
   const { names: all, usesOthers } = reader.scope;
   const known = all[kind];
-  reader.lookups.push({ kind, names: known, usesOthers });
+  reader.lookups.push({ kind, name, names: known, usesOthers });
   if (usesOthers || known.set.has(name) || hasSaidEnough(reader, place.entry)) return;
   const near = nearestName(known, name);
   const what = KIND_NAMES[kind];

@@ -67,8 +67,13 @@ export interface Scope {
 /** A name that a reading looked up, and what it found. */
 export type Lookup =
   | { readonly kind: keyof Things; readonly name: string; readonly thing: object | undefined }
-  /** Whether there is a thing of some name, which depends on all the names there are. */
-  | { readonly kind: Exclude<ThingKind, 'channel'>; readonly names: NameList; readonly usesOthers: boolean };
+  /** Whether there is a thing of that name, which depends on all the names there are. */
+  | {
+      readonly kind: Exclude<ThingKind, 'channel'>;
+      readonly name: string;
+      readonly names: NameList;
+      readonly usesOthers: boolean;
+    };
 
 /** A reading in progress: where it stands, and what it has found so far. */
 export interface Reader {

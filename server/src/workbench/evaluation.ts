@@ -7,6 +7,7 @@ import { readChannel, stillHolds } from '../rig/channel-reading.ts';
 import type { Entry } from '../rig/entry.ts';
 import type { Environment } from '../rig/environment.ts';
 import { readEnvironment } from '../rig/environment.ts';
+import type { NameUses } from '../rig/name-uses.ts';
 import type { Snapshot } from '../rig/snapshot.ts';
 
 /** One channel as read and judged. */
@@ -28,6 +29,8 @@ export interface Evaluation {
   readonly channels: readonly JudgedChannel[];
   /** What is said of no single channel: named things, names nobody uses, rates that do not go together. */
   readonly rigFindings: readonly Finding[];
+  /** What channels name, counted. */
+  readonly uses: NameUses;
 }
 
 /**
@@ -52,8 +55,8 @@ export function* evaluating(
     yield channel;
   }
   const complete = channels as readonly JudgedChannel[];
-  const rigFindings = yield* judgingRig(environment, complete, guard);
-  return { snapshot, environment, channels: complete, rigFindings };
+  const { findings, uses } = yield* judgingRig(environment, complete, guard, previous?.uses);
+  return { snapshot, environment, channels: complete, rigFindings: findings, uses };
 }
 
 /** Evaluates at one go. */

@@ -22,9 +22,13 @@ export function saidOfProblem({ problem, place, related }: PlacedProblem): SaidO
   };
 }
 
-/** A problem of anything else, about the thing that it stands in. */
+/**
+ * A problem of anything else, about the thing that it stands in. That a key is not computed is said once for the whole
+ * file, and stays the same finding wherever the first such key stands.
+ */
 export function saidOfThing(placed: PlacedProblem): SaidOfDocument {
-  return { ...saidOfProblem(placed), thing: thingOf(placed.place.entry) };
+  const { problem, place } = placed;
+  return { ...saidOfProblem(placed), thing: problem.name === 'not-computed' ? problem.name : thingOf(place.entry) };
 }
 
 /** The name by which findings tell an entry: `filters/tidy`, `mains`, `defaults`. */
