@@ -1,6 +1,5 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { analogueResponse } from '../../server/src/signal/analogue.ts';
 import {
   attenuationOfLnPower,
   decibels,
@@ -9,76 +8,11 @@ import {
   powerRatioOf,
   ratioOf,
 } from '../../server/src/signal/decibel.ts';
-import { fittingCutoffs, type LowPassFamily, leastOrder } from '../../server/src/signal/design.ts';
 import { halfBandTaps, kaiserBeta, kaiserLength, kaiserTaps, MOST_TAPS } from '../../server/src/signal/kaiser.ts';
 import { peakOfDbfs } from '../../server/src/signal/levels.ts';
 import { MinimumHeap } from '../../server/src/signal/minimum-heap.ts';
 import { product, signChanges, valueAt } from '../../server/src/signal/polynomial.ts';
 import { runs } from '../tools/runs.ts';
-
-const family =
-  (response: 'butterworth' | 'bessel', tolerance = 0): LowPassFamily =>
-  (order, cutoffHz) =>
-    analogueResponse({
-      response,
-      order,
-      shape: 'low-pass',
-      edge: { at: 'cutoff', lowHz: cutoffHz, highHz: cutoffHz },
-      tolerance,
-    });
-
-describe('the least order that does', () => {
-  it('is that of the formula for Butterworth', () => {
-    // Source: Butterworth's own, N = log((10^(A/10) - 1) / (10^(d/10) - 1)) / (2 log(f1 / f0)).
-    const need = { passHz: 1000, mostDb: 1, stopHz: 3000, leastDb: 60 };
-    const exact = Math.log((10 ** 6 - 1) / (10 ** 0.1 - 1)) / (2 * Math.log(3));
-    expect(leastOrder(family('butterworth'), need)?.order).toBe(Math.ceil(exact));
-  });
-
-  it('comes with cutoffs of which both ends do, and nothing outside does', () => {
-    fc.assert(
-      fc.property(
-        fc.double({ min: 1.5, max: 20, noNaN: true }),
-        fc.double({ min: 0.1, max: 6, noNaN: true }),
-        fc.double({ min: 10, max: 110, noNaN: true }),
-        fc.constantFrom(0, 0.05),
-        (ratio, mostDb, leastDb, tolerance) => {
-          const need = { passHz: 50, mostDb, stopHz: 50 * ratio, leastDb };
-          const build = family('butterworth', tolerance);
-          const fit = leastOrder(build, need);
-          if (fit === undefined) return;
-          const does = (cutoffHz: number): boolean => {
-            const response = build(fit.order, cutoffHz);
-            return response.greatestDb(0, need.passHz) <= mostDb && response.leastDb(need.stopHz, 1e9) >= leastDb;
-          };
-          expect(does(fit.lowestCutoffHz)).toBe(true);
-          expect(does(fit.highestCutoffHz)).toBe(true);
-          expect(does(fit.lowestCutoffHz * 0.999)).toBe(false);
-          expect(does(fit.highestCutoffHz * 1.001)).toBe(false);
-          expect(fit.order === 1 || leastOrder(build, need, fit.order - 1) === undefined).toBe(true);
-        },
-      ),
-      { seed: 31, numRuns: runs(300), endOnFailure: true },
-    );
-  });
-
-  it('is none where nothing does, or the need makes no sense', () => {
-    const impossible = {
-      passHz: 1000,
-      mostDb: 0.1,
-      stopHz: 1001,
-      leastDb: 100,
-    };
-    expect(leastOrder(family('bessel'), impossible)).toBeUndefined();
-    expect(
-      fittingCutoffs((hz) => family('bessel')(2, hz), {
-        ...impossible,
-        passHz: 0,
-      }),
-    ).toBeUndefined();
-    expect(leastOrder(family('bessel'), { ...impossible, stopHz: Number.NaN })).toBeUndefined();
-  });
-});
 
 describe("Kaiser's taps", () => {
   it('mirror one another and sum to nearly 1', () => {
