@@ -179,8 +179,17 @@ describe('level-unplaced', () => {
     expect(unplaced(text)).toEqual([['sources/s', 'hint']]);
     const finding = only(text, 'level-unplaced');
     expect(finding.figures).toEqual({ channels: 2 });
-    expect(finding.message).toContain('2 channels do not hear `s`');
+    expect(finding.message).toBe(
+      '2 channels do not hear `s`, because its level is in kPa, which those channels do not measure. A channel that hears it all the same has to name it in `hears`.',
+    );
     expect(underlined(finding)).toBe('s');
+  });
+
+  it('says so of one channel in the singular', () => {
+    const text = withSource('1 kPa', rig(''));
+    expect(only(text, 'level-unplaced').message).toBe(
+      '1 channel does not hear `s`, because its level is in kPa, which that channel does not measure. A channel that hears it all the same has to name it in `hears`.',
+    );
   });
 
   it('is said of a fold limit that has no place', () => {

@@ -17,11 +17,14 @@ export function unheardSources({ channels }: RigView): readonly SaidOfRig[] {
 function saidOf(source: Source, count: number): SaidOfRig {
   const level = source.levels[0]?.value;
   const unit = level?.kind === 'measured' ? level.unit : 'another unit';
-  const who = count === 1 ? '1 channel does not hear' : `${count} channels do not hear`;
+  const [who, which] =
+    count === 1
+      ? ['1 channel does not hear', 'that channel does not measure']
+      : [`${count.toLocaleString('en')} channels do not hear`, 'those channels do not measure'];
   return {
     severity: 'hint',
     thing: `sources/${source.name}`,
-    message: `${who} \`${source.name}\`, because its level is in ${unit}, which they do not measure. One that hears it all the same has to name it in \`hears\`.`,
+    message: `${who} \`${source.name}\`, because its level is in ${unit}, which ${which}. A channel that hears it all the same has to name it in \`hears\`.`,
     place: source.place,
     figures: { channels: count },
     excess: count,
