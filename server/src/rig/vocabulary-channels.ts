@@ -2,7 +2,9 @@ import type { KeyRow } from './vocabulary-kinds.ts';
 import {
   choice,
   either,
+  FILTERS,
   FREQUENCY,
+  FULL_SCALE,
   integer,
   LEVEL,
   listOf,
@@ -22,8 +24,6 @@ import {
 } from './vocabulary-kinds.ts';
 
 const NONE = choice({ none: 'None.' });
-const FILTER = nameOf('filter', 'filter');
-const FILTERS = either(FILTER, listOf(FILTER));
 
 const CHANNEL_ROWS: readonly KeyRow[] = [
   row(
@@ -40,14 +40,9 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
   row('channel', 'gain', number(POSITIVE), '10', "This channel's gain ahead of the converter.", {
     default: "the digitizer's",
   }),
-  row(
-    'channel',
-    'full-scale',
-    quantity('voltage', 'V', { forms: ['symmetric', 'range'], bounds: {}, width: true }),
-    '±1 V',
-    "This channel's full scale, in volts at the converter.",
-    { default: "the digitizer's" },
-  ),
+  row('channel', 'full-scale', FULL_SCALE, '±1 V', "This channel's full scale, in volts at the converter.", {
+    default: "the digitizer's",
+  }),
   row(
     'channel',
     'filter',

@@ -218,6 +218,8 @@ export const FREQUENCY_OR_RANGE = quantity('frequency', 'Hz', { forms: VALUE_OR_
 /** A shaft's speed; 50 Hz is 3000 rpm. */
 export const SPEED = quantity(['rotation', 'frequency'], 'rpm', { forms: VALUE_OR_RANGE });
 export const TOLERANCE = quantity('ratio', '%', { bounds: { low: 0, high: 1, highExcluded: true } });
-export const DECIBELS = quantity('decibel', 'dB', { bounds: NOT_NEGATIVE });
+export const FULL_SCALE = quantity('voltage', 'V', { forms: ['symmetric', 'range'], bounds: {}, width: true });
+const FILTER = nameOf('filter', 'filter');
+export const FILTERS = either(FILTER, listOf(FILTER));
 /** A level of a sinusoid: in the measured unit, in volts, or relative to full scale. */
 export const LEVEL = measuredQuantity(['dbfs', 'voltage']);

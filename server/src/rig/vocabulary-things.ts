@@ -2,7 +2,9 @@ import type { KeyRow } from './vocabulary-kinds.ts';
 import {
   choice,
   either,
+  FILTERS,
   FREQUENCY,
+  FULL_SCALE,
   integer,
   listOf,
   mapOf,
@@ -20,12 +22,10 @@ import {
   VALUE_OR_RANGE,
 } from './vocabulary-kinds.ts';
 
-const FULL_SCALE = quantity('voltage', 'V', { forms: ['symmetric', 'range'], bounds: {}, width: true });
-const FILTERS = either(nameOf('filter', 'filter'), listOf(nameOf('filter', 'filter')));
 const SAMPLE_RATES = quantity(['rate', 'frequency'], 'Hz', { forms: VALUE_OR_RANGE });
 
 /** What a sensor can measure. */
-export const MEASURED = choice({
+const MEASURED = choice({
   acceleration: 'Acceleration: g, m/s2.',
   velocity: 'Velocity: m/s, mm/s.',
   displacement: 'Displacement: m, mm, um.',
