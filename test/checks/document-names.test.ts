@@ -133,6 +133,9 @@ describe('names and keys that stand twice', () => {
       'a: duplicate-name `note`',
       'b: duplicate-name `order`',
     ]);
+    expect(found(`rig: R\n${text}`, 'duplicate-name')[1]!.message).toBe(
+      '`note` is given twice here; the first one counts.',
+    );
   });
 
   it('are not keys that merged maps have too', () => {

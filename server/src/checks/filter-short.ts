@@ -1,7 +1,7 @@
 import { formatHz } from '../quantity/write.ts';
 import { type ChannelView, type Check, SAYS_NOTHING } from './check.ts';
 import { filtersAhead, type Standing, standingOn, standingOnStage } from './standing.ts';
-import { differenceText, levelFigures, levelText, stageText } from './wording.ts';
+import { differenceText, levelFigures, levelText, overLimitText, stageText } from './wording.ts';
 
 export const filterShort: Check<'channel'> = {
   name: 'filter-short',
@@ -52,7 +52,7 @@ channels:
       {
         ...(isHint ? { severity: 'hint' as const } : {}),
         stage,
-        message: `What no source declares near ${formatHz(atHz)} may be recorded inside the band: ${attenuationText(attenuationDb)}, and of ${levelText(undeclaredDb, chain)} that leaves ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.${where === '' ? '' : ` It folds ${where}.`}`,
+        message: `What no source declares near ${formatHz(atHz)} may be recorded inside the band: ${attenuationText(attenuationDb)}, and of ${levelText(undeclaredDb, chain)} that leaves ${levelText(level, chain)}, ${overLimitText(level, chain)}.${where === '' ? '' : ` It folds ${where}.`}`,
         place: standing.place,
         related: [...standing.related, ...filtersAhead(chain, stage)],
         figures: { atHz, attenuationDb, ...levelFigures(level, chain), stage },

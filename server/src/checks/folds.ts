@@ -4,7 +4,7 @@ import { formatHz } from '../quantity/write.ts';
 import type { ChannelView, Said } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { filtersAhead, standingOnStage } from './standing.ts';
-import { differenceText, hzText, levelFigures, levelText, listText, stageText } from './wording.ts';
+import { hzText, levelFigures, levelText, listText, overLimitText, stageText } from './wording.ts';
 
 /** What one source leaves in the band by folding at one stage: its worst line, and the others. */
 export interface Fold {
@@ -59,7 +59,7 @@ export function saidOfFold(fold: Fold, chain: Chain, verb: 'is' | 'would be'): S
   const where = stageText(chain, stage);
   const sentences = [
     `${name} will be recorded at ${formatHz(recordedHz)}, inside the band, though ${whatText(worst)} is at ${truth}.`,
-    `There it ${verb} ${levelText(level, chain)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
+    `There it ${verb} ${levelText(level, chain)}, ${overLimitText(level, chain)}.`,
   ];
   if (where !== '') sentences.push(`It folds ${where}.`);
   if (rest.length > 0) sentences.push(`With it: ${listText(rest.map(lineText))}.`);

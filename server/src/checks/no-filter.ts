@@ -1,7 +1,7 @@
 import { formatHz } from '../quantity/write.ts';
 import { type Check, SAYS_NOTHING } from './check.ts';
 import { standingOn, standingOnStage } from './standing.ts';
-import { differenceText, levelFigures, levelText } from './wording.ts';
+import { levelFigures, levelText, overLimitText } from './wording.ts';
 
 export const noFilter: Check<'channel'> = {
   name: 'no-filter',
@@ -41,7 +41,7 @@ channels:
     return [
       {
         stage,
-        message: `Anything from ${formatHz(atHz)} up that no source declares will be recorded inside the band, because no filter stands before the sampling. Up to ${levelText(level, chain)} of it may be left, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
+        message: `Anything from ${formatHz(atHz)} up that no source declares will be recorded inside the band, because no filter stands before the sampling. Up to ${levelText(level, chain)} of it may be left, ${overLimitText(level, chain)}.`,
         place: standing.place,
         related: standing.related,
         figures: { fromHz: atHz, ...levelFigures(level, chain), stage },

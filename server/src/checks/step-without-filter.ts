@@ -2,7 +2,7 @@ import { formatHz } from '../quantity/write.ts';
 import { type ChannelView, type Check, SAYS_NOTHING, type Said } from './check.ts';
 import { isOver } from './shortfall.ts';
 import { standingOnStage } from './standing.ts';
-import { differenceText, levelFigures, levelText, ordinal, rateText } from './wording.ts';
+import { levelFigures, levelText, ordinal, overLimitText, rateText } from './wording.ts';
 
 export const stepWithoutFilter: Check<'channel'> = {
   name: 'step-without-filter',
@@ -65,7 +65,7 @@ function saidOfStage(view: ChannelView, index: number): readonly Said[] {
   return [
     {
       stage,
-      message: `Keeping every ${ordinal(step?.factor.value ?? 1)} sample without a filter folds everything above ${formatHz(rateHz / 2)} (half of ${rateText(rateHz)}) below it. Of ${what} at ${formatHz(atHz)} up to ${levelText(level, chain)} arrives in the band, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
+      message: `Keeping every ${ordinal(step?.factor.value ?? 1)} sample without a filter folds everything above ${formatHz(rateHz / 2)} (half of ${rateText(rateHz)}) below it. Of ${what} at ${formatHz(atHz)} up to ${levelText(level, chain)} arrives in the band, ${overLimitText(level, chain)}.`,
       place: standing.place,
       related: standing.related,
       figures: { atHz, ...levelFigures(level, chain), stage },

@@ -2,7 +2,7 @@ import { formatHz } from '../quantity/write.ts';
 import { type Check, SAYS_NOTHING } from './check.ts';
 import { COMMON_MARGIN } from './shortfall.ts';
 import { filtersAhead, standingOn, standingOnStage } from './standing.ts';
-import { differenceText, levelFigures, levelText } from './wording.ts';
+import { levelFigures, levelText, overLimitText } from './wording.ts';
 
 export const thinMargin: Check<'channel'> = {
   name: 'thin-margin',
@@ -50,7 +50,7 @@ channels:
     return [
       {
         stage,
-        message: `What no source declares will be recorded inside the band, because the filter has too little room: the band ends at ${formatHz(chain.bandHighHz)} and half the rate is ${nyquist}, a margin of ${margin.toFixed(2)} where ${COMMON_MARGIN} is usual. Up to ${levelText(level, chain)} may be left of what is at ${formatHz(fold.atHz)}, ${differenceText(excess)} over the fold limit of ${levelText(chain.foldLimit, chain)}.`,
+        message: `What no source declares will be recorded inside the band, because the filter has too little room: the band ends at ${formatHz(chain.bandHighHz)} and half the rate is ${nyquist}, a margin of ${margin.toFixed(2)} where ${COMMON_MARGIN} is usual. Up to ${levelText(level, chain)} may be left of what is at ${formatHz(fold.atHz)}, ${overLimitText(level, chain)}.`,
         place: standing.place,
         related: [
           ...standing.related,

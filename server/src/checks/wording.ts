@@ -22,6 +22,12 @@ export function levelText(level: number, { levelUnit, scale }: Chain): string {
   }
 }
 
+/** How far a level is over the fold limit: `15.9 dB over the fold limit of -80 dBFS`. */
+export function overLimitText(level: number, chain: Chain): string {
+  const limit = chain.foldLimit;
+  return `${differenceText(level - limit)} over the fold limit of ${levelText(limit, chain)}`;
+}
+
 /** A level and its limit as figures, under names that tell their scale. */
 export function levelFigures(level: number, chain: Chain): Readonly<Record<string, number>> {
   switch (chain.levelUnit) {

@@ -1,5 +1,6 @@
 import type { BlockKind, SplitState } from './blocks.ts';
 import { type Entry, NAMED_SECTIONS, type NamedSection } from './entry.ts';
+import { clipped } from './fields.ts';
 import { MOST_SYNTAX_FINDINGS } from './limits.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import type { Problem } from './problem.ts';
@@ -128,8 +129,8 @@ function duplicate(start: number, end: number, name: string): Problem {
     name: 'duplicate-name',
     start,
     end,
-    message: `"${name}" is given twice here: the first one counts.`,
-    about: name,
+    message: `\`${clipped(name)}\` is given twice here; the first one counts.`,
+    about: clipped(name),
   };
 }
 

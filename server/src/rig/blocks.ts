@@ -1,3 +1,16 @@
+import {
+  BYTE_ORDER_MARK,
+  CARRIAGE_RETURN,
+  CLOSE_BRACE,
+  CLOSE_BRACKET,
+  DASH,
+  HASH,
+  LINE_FEED,
+  OPEN_BRACE,
+  OPEN_BRACKET,
+  SPACE,
+  TAB,
+} from './characters.ts';
 import { NAMED_SECTIONS, type NamedSection } from './entry.ts';
 
 /**
@@ -29,20 +42,12 @@ export interface Stretch {
 
 export const TOP: SplitState = { section: undefined, indent: 0 };
 
-const SPACE = 32;
-const TAB = 9;
-const LINE_FEED = 10;
-const CARRIAGE_RETURN = 13;
-const HASH = 35;
-const DASH = 45;
-const BYTE_ORDER_MARK = 0xfeff;
-
 const HEAD = /^(?:"([a-z]+)"|'([a-z]+)'|([a-z]+))[ \t]*:(?:[ \t]+[&!]\S*)*(?:[ \t]+#.*)?[ \t]*\r?$/;
 const SECTIONS: ReadonlySet<string> = new Set(NAMED_SECTIONS);
 
 /** The characters that open a section's value without a key: it is then read as a whole. */
-const NO_KEY = new Set(['{', '['].map((character) => character.charCodeAt(0)));
-const CLOSERS = new Set(['}', ']'].map((character) => character.charCodeAt(0)));
+const NO_KEY = new Set([OPEN_BRACE, OPEN_BRACKET]);
+const CLOSERS = new Set([CLOSE_BRACE, CLOSE_BRACKET]);
 
 /** How the document is written, by the first character that says anything; `undefined` where none does. */
 export function styleOf(text: string): 'block' | 'flow' | undefined {

@@ -1,26 +1,17 @@
 import type { Core } from './core.ts';
-import { type Dependencies, dependenciesHold, followedAliases } from './dependencies.ts';
+import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
 import type { Entry } from './entry.ts';
 import { yamlProblem } from './entry-problems.ts';
 import type { Environment } from './environment.ts';
 import { namePlace, noteNotComputed, readEntryFields } from './fields.ts';
 import type { Channel } from './model.ts';
-import type { PlacedProblem } from './placed-problem.ts';
 import { addDefaults, channelOf, reportMissingChannelKeys } from './read-channel.ts';
-import { type Mention, startReading } from './reader.ts';
+import { type Noted, notedBy, startReading } from './reader.ts';
 
 /** A channel as read, what was wrong with it, and what the reading looked at. */
-export interface ChannelReading {
+export interface ChannelReading extends Noted {
   readonly entry: Entry;
   readonly channel: Channel;
-  /** What is wrong in the channel's own text. */
-  readonly problems: readonly PlacedProblem[];
-  /** What is wrong in text that it inherits: to be said once, at its origin, however many inherit it. */
-  readonly origin: readonly PlacedProblem[];
-  /** Keys of its own that are known but not computed: to be said once for each key of the file. */
-  readonly notComputed: readonly PlacedProblem[];
-  /** Where it names things in its own text. */
-  readonly mentions: readonly Mention[];
   readonly dependencies: ChannelDependencies;
 }
 
@@ -39,7 +30,6 @@ interface ChannelDependencies extends Dependencies {
   holdsFor: Core;
 }
 
-const NONE: readonly never[] = [];
 const BRACE_RANGE = /\{\d+\.\.\d+\}/;
 
 /** Reads a channel. */
@@ -56,24 +46,14 @@ export function readChannel(entry: Entry, environment: Environment): ChannelRead
   return {
     entry,
     channel,
-    problems: orNone(reader.own),
-    origin: orNone(reader.origin),
-    notComputed: orNone(reader.notComputed),
-    mentions: orNone(reader.mentions),
+    ...notedBy(reader),
     dependencies: {
-      lookups: orNone(reader.lookups),
-      anchors: followedAliases(reader) ? core.scope.anchors : undefined,
-      epoch: reader.epoch,
+      ...dependenciesOf(reader),
       sources: core.scope.sources,
       defaults: core.defaults,
       holdsFor: core,
     },
   };
-}
-
-/** Spares ten thousand channels an empty list each. */
-function orNone<T>(items: readonly T[]): readonly T[] {
-  return items.length === 0 ? NONE : items;
 }
 
 /**

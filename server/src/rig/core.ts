@@ -1,6 +1,6 @@
 import { anchorTable, sameItems } from './anchors.ts';
 import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
-import { type Entry, NAMED_SECTIONS, type NamedSection } from './entry.ts';
+import { type Entry, KIND_OF_SECTION, NAMED_SECTIONS } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import type { Field } from './fields.ts';
 import type { Given, Source } from './model.ts';
@@ -10,16 +10,21 @@ import { readDigitizer } from './read-digitizer.ts';
 import { readNamedFilter, readNamedGroup, readNamedSensor } from './read-named.ts';
 import { MAINS, readSource } from './read-source.ts';
 import { missingRigName, readTopLevel, type SeverityChoice, type TopLevel } from './read-top-level.ts';
-import { type Mention, type NameList, type Reader, type Scope, type SourceSet, startReading } from './reader.ts';
+import {
+  type Mention,
+  type NameList,
+  type Noted,
+  notedBy,
+  type Reader,
+  type Scope,
+  type SourceSet,
+  startReading,
+} from './reader.ts';
 import type { ThingKind } from './vocabulary-kinds.ts';
 
 /** What was read of one entry, and what the reading looked at. */
-export interface EntryReading {
+export interface EntryReading extends Noted {
   readonly value: unknown;
-  readonly problems: readonly PlacedProblem[];
-  readonly origin: readonly PlacedProblem[];
-  readonly notComputed: readonly PlacedProblem[];
-  readonly mentions: readonly Mention[];
   readonly dependencies: Dependencies;
 }
 
@@ -43,15 +48,6 @@ export interface Core {
 }
 
 type NamedKind = Exclude<ThingKind, 'channel'>;
-
-const KIND_OF_SECTION: Readonly<Record<Exclude<NamedSection, 'channels'>, NamedKind>> = {
-  clocks: 'clock',
-  digitizers: 'digitizer',
-  sensors: 'sensor',
-  filters: 'filter',
-  sources: 'source',
-  groups: 'group',
-};
 
 interface Sorted {
   /** The first entry of each name, by kind, in document order. */
@@ -191,14 +187,7 @@ function readEntry<T>(
   if (known && dependenciesHold(known.dependencies, scope, epoch)) return known;
   const reader = startReading(entry, scope, epoch);
   const value = how(reader);
-  return {
-    value,
-    problems: reader.own,
-    origin: reader.origin,
-    notComputed: reader.notComputed,
-    mentions: reader.mentions,
-    dependencies: dependenciesOf(reader),
-  };
+  return { value, ...notedBy(reader), dependencies: dependenciesOf(reader) };
 }
 
 function nameLists(named: Sorted['named'], old: Scope['names'] | undefined): Scope['names'] {

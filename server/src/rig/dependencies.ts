@@ -1,5 +1,5 @@
 import type { AnchorTable } from './anchors.ts';
-import type { Lookup, Reader, Scope } from './reader.ts';
+import { type Lookup, orNone, type Reader, type Scope } from './reader.ts';
 
 /** What a reading has looked at besides its own entry's text. */
 export interface Dependencies {
@@ -11,14 +11,14 @@ export interface Dependencies {
 
 export function dependenciesOf(reader: Reader): Dependencies {
   return {
-    lookups: reader.lookups,
+    lookups: orNone(reader.lookups),
     anchors: followedAliases(reader) ? reader.scope.anchors : undefined,
     epoch: reader.epoch,
   };
 }
 
 /** Whether what was read may depend on what aliases stand for. */
-export function followedAliases(reader: Reader): boolean {
+function followedAliases(reader: Reader): boolean {
   return reader.expansions > 0 || reader.entry.aliases.length > 0;
 }
 

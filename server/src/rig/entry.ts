@@ -1,9 +1,21 @@
 import type { Problem } from './problem.ts';
 import type { ScalarNode, TreeNode } from './tree.ts';
+import type { ThingKind } from './vocabulary-kinds.ts';
 
 /** The top-level keys whose children are entries of their own. */
 export const NAMED_SECTIONS = ['clocks', 'digitizers', 'sensors', 'filters', 'sources', 'groups', 'channels'] as const;
 export type NamedSection = (typeof NAMED_SECTIONS)[number];
+
+/** What stands in each of them. */
+export const KIND_OF_SECTION = {
+  clocks: 'clock',
+  digitizers: 'digitizer',
+  sensors: 'sensor',
+  filters: 'filter',
+  sources: 'source',
+  groups: 'group',
+  channels: 'channel',
+} as const satisfies Readonly<Record<NamedSection, ThingKind>>;
 
 /**
  * The smallest piece of a rig file that is read alone: one named thing or channel, or a top-level key that is no

@@ -1,4 +1,5 @@
 import { nearest } from '../quantity/spelling.ts';
+import { ASTERISK } from './characters.ts';
 import type { Entry } from './entry.ts';
 import { MOST_ALIAS_EXPANSIONS } from './limits.ts';
 import { anchoredMap, followAlias, inheritance, MERGE_KEY, type MergedMap, mergedMap } from './merging.ts';
@@ -162,7 +163,8 @@ function addField(
   byKey.set(key.text, { kind: row.value, row, path, node, entry, inherited });
   if (!row.computed && keyEntry === reader.entry && !UNCOMPUTED_CONTEXTS.has(context))
     noteNotComputed(reader, row.key, placeOf(keyEntry, key));
-  if (node.kind === 'empty' && entry === keyEntry && entry.text.charCodeAt(node.start) !== STAR) {
+  // Of an alias that led nowhere that has been said.
+  if (node.kind === 'empty' && entry === keyEntry && entry.text.charCodeAt(node.start) !== ASTERISK) {
     report(reader, {
       name: 'wrong-kind',
       place: placeOf(keyEntry, key),
@@ -171,9 +173,6 @@ function addField(
     });
   }
 }
-
-/** `*`: an alias that led nowhere, of which that has been said. */
-const STAR = 42;
 
 /** Says that a key is known but not computed; the sayings of a file are folded into one for each key. */
 export function noteNotComputed(reader: Reader, what: string, place: Place): void {

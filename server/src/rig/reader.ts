@@ -108,6 +108,34 @@ export function startReading(entry: Entry, scope: Scope, epoch: number): Reader 
   };
 }
 
+/** What a reading has noted besides what it has made of the text. */
+export interface Noted {
+  /** What is wrong in the entry's own text. */
+  readonly problems: readonly PlacedProblem[];
+  /** What is wrong in text that it inherits: to be said once, at its origin, however many inherit it. */
+  readonly origin: readonly PlacedProblem[];
+  /** Keys of its own that are known but not computed: to be said once for each key of the file. */
+  readonly notComputed: readonly PlacedProblem[];
+  /** Where it names things in its own text. */
+  readonly mentions: readonly Mention[];
+}
+
+export function notedBy({ own, origin, notComputed, mentions }: Reader): Noted {
+  return {
+    problems: orNone(own),
+    origin: orNone(origin),
+    notComputed: orNone(notComputed),
+    mentions: orNone(mentions),
+  };
+}
+
+const NONE: readonly never[] = [];
+
+/** Spares ten thousand channels an empty list each. */
+export function orNone<T>(items: readonly T[]): readonly T[] {
+  return items.length === 0 ? NONE : items;
+}
+
 export interface Report {
   readonly name: ProblemName;
   readonly place: Place;

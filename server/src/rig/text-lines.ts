@@ -1,7 +1,5 @@
+import { CARRIAGE_RETURN, LINE_FEED } from './characters.ts';
 import type { Position } from './place.ts';
-
-const LINE_FEED = 10;
-const CARRIAGE_RETURN = 13;
 
 /** Where each line of a text starts; `\n`, `\r\n` and `\r` end a line, as the language-server protocol has it. */
 export function lineStarts(text: string): readonly number[] {

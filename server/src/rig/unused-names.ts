@@ -1,3 +1,4 @@
+import { KIND_OF_SECTION } from './entry.ts';
 import type { Environment } from './environment.ts';
 import { clipped, namePlace } from './fields.ts';
 import type { Source } from './model.ts';
@@ -39,7 +40,7 @@ function namedByThings({ core }: Environment): ReadonlySet<string> {
   const named = new Set<string>();
   for (const [entry, { dependencies }] of core.readings) {
     for (const { kind, name } of dependencies.lookups) {
-      const isItself = name === entry.name && entry.section === `${kind}s`;
+      const isItself = name === entry.name && entry.section && KIND_OF_SECTION[entry.section] === kind;
       if (!isItself) named.add(`${kind} ${name}`);
     }
   }

@@ -1,26 +1,22 @@
-import { MOST_DEPTH } from './limits.ts';
-import type { EmptyNode, ListNode, MapNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
-import { flowCollection } from './yaml-tree-flow.ts';
 import {
   AMPERSAND,
   ASTERISK,
-  alias,
+  BYTE_ORDER_MARK,
   CARRIAGE_RETURN,
   COLON,
   DASH,
   DOUBLE_QUOTE,
   HASH,
-  isBlank,
   LINE_FEED,
-  nameEnd,
   OPEN_BRACE,
   OPEN_BRACKET,
-  plainScalar,
-  quotedScalar,
   SINGLE_QUOTE,
   SPACE,
-  skipSpaces,
-} from './yaml-tree-scalars.ts';
+} from './characters.ts';
+import { MOST_DEPTH } from './limits.ts';
+import type { EmptyNode, ListNode, MapNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
+import { flowCollection } from './yaml-tree-flow.ts';
+import { alias, isBlank, nameEnd, plainScalar, quotedScalar, skipSpaces } from './yaml-tree-scalars.ts';
 
 /*
  * Reads the YAML that rig files are made of: maps and lists by indentation, brackets, plain and quoted scalars on one
@@ -30,8 +26,6 @@ import {
  * Every function takes the offset at which it starts to read and gives a node, whose end is where to go on, or
  * `undefined`.
  */
-
-const BYTE_ORDER_MARK = 0xfeff;
 
 /** The tree of a text with nothing wrong and nothing unusual in it; `undefined` for any other. */
 export function readDirectly(text: string): TreeNode | undefined {

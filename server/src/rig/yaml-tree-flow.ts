@@ -1,9 +1,6 @@
-import { MOST_DEPTH } from './limits.ts';
-import type { EmptyNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
 import {
   AMPERSAND,
   ASTERISK,
-  alias,
   CARRIAGE_RETURN,
   CLOSE_BRACE,
   CLOSE_BRACKET,
@@ -12,16 +9,15 @@ import {
   DOUBLE_QUOTE,
   HASH,
   LINE_FEED,
-  nameEnd,
   OPEN_BRACE,
   OPEN_BRACKET,
-  plainScalar,
-  quotedScalar,
   SINGLE_QUOTE,
   SPACE,
-  skipSpaces,
   TAB,
-} from './yaml-tree-scalars.ts';
+} from './characters.ts';
+import { MOST_DEPTH } from './limits.ts';
+import type { EmptyNode, ScalarNode, TreeNode, TreePair } from './tree.ts';
+import { alias, nameEnd, plainScalar, quotedScalar, skipSpaces } from './yaml-tree-scalars.ts';
 
 /**
  * Maps and lists in brackets, in their usual forms; `undefined` for whatever is unusual or wrong.

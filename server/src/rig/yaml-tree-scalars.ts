@@ -1,27 +1,26 @@
+import {
+  BACKSLASH,
+  CARRIAGE_RETURN,
+  CLOSE_BRACE,
+  CLOSE_BRACKET,
+  COLON,
+  COMMA,
+  DASH,
+  DOUBLE_QUOTE,
+  HASH,
+  LINE_FEED,
+  OPEN_BRACE,
+  OPEN_BRACKET,
+  SINGLE_QUOTE,
+  SPACE,
+  TAB,
+} from './characters.ts';
 import type { AliasNode, ScalarNode } from './tree.ts';
 
 /*
  * Scalars and aliases on one line, in their usual forms. Every function takes the offset of the first character, and
  * gives `undefined` for whatever is unusual or wrong: the YAML library then reads the text instead.
  */
-
-export const SPACE = 32;
-export const TAB = 9;
-export const LINE_FEED = 10;
-export const CARRIAGE_RETURN = 13;
-export const HASH = 35;
-export const COLON = 58;
-export const COMMA = 44;
-export const DASH = 45;
-export const DOUBLE_QUOTE = 34;
-export const SINGLE_QUOTE = 39;
-export const AMPERSAND = 38;
-export const ASTERISK = 42;
-export const OPEN_BRACE = 123;
-export const CLOSE_BRACE = 125;
-export const OPEN_BRACKET = 91;
-export const CLOSE_BRACKET = 93;
-const BACKSLASH = 92;
 
 /** Characters that a plain scalar does not start with, or not without a closer look: `-` is looked at. */
 const NO_PLAIN_START = new Set([...'?:,[]{}#&*!|>\'"%@`'].map((character) => character.charCodeAt(0)));

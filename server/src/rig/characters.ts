@@ -1,0 +1,19 @@
+/** Codes of the characters that YAML is made of, as `charCodeAt` gives them. */
+export const SPACE = 32;
+export const TAB = 9;
+export const LINE_FEED = 10;
+export const CARRIAGE_RETURN = 13;
+export const HASH = 35;
+export const COLON = 58;
+export const COMMA = 44;
+export const DASH = 45;
+export const DOUBLE_QUOTE = 34;
+export const SINGLE_QUOTE = 39;
+export const AMPERSAND = 38;
+export const ASTERISK = 42;
+export const OPEN_BRACE = 123;
+export const CLOSE_BRACE = 125;
+export const OPEN_BRACKET = 91;
+export const CLOSE_BRACKET = 93;
+export const BACKSLASH = 92;
+export const BYTE_ORDER_MARK = 0xfeff;
