@@ -235,9 +235,9 @@ describe('a whole file', () => {
 
   it('says of a key that is not computed just once', () => {
     const rig = readRig(
-      'rig: R\nchannels:\n  a: { rate: 1 kHz, band: 1..2 Hz, resolve: 1 mV }\n  b: { rate: 1 kHz, band: 1..2 Hz, resolve: 1 mV }\n',
+      'rig: R\nchannels:\n  a: { rate: 1 kHz, band: 1..2 Hz, pattern: { of: 2, take: [0] } }\n  b: { rate: 1 kHz, band: 1..2 Hz, pattern: { of: 2, take: [0] } }\n',
     );
-    expect(saidOf(rig)).toEqual(['not-computed: resolve']);
+    expect(saidOf(rig)).toEqual(['not-computed: pattern']);
   });
 
   it('says nothing of unknown names while others may know them', () => {

@@ -28,18 +28,16 @@ const KEYS: Readonly<Record<ContextName, string>> = {
 };
 
 const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
-  rig: 'uses groups run accept',
+  rig: 'uses groups accept',
   digitizer: 'scan-interval settling noise jitter delay-compensated interleave',
   sensor: 'noise',
   source: 'noise spans',
   group: KEYS.group,
-  channel: 'resolve group pattern pulses spectrum noise',
+  channel: 'group pattern pulses noise',
   step: 'per-turn speed',
   pattern: KEYS.pattern,
   pulses: KEYS.pulses,
-  spectrum: KEYS.spectrum,
   interleave: KEYS.interleave,
-  run: KEYS.run,
   acceptance: KEYS.acceptance,
 };
 
@@ -71,6 +69,8 @@ function besides(context: ContextName, key: string): string {
     return `${key === 'rate' ? '' : 'rate: 1 kHz, '}${band}${measured}${bridge}`;
   }
   if (context === 'sensor') return key === 'rated' ? 'excitation: 10 V, range: 500 N, ' : '';
+  if (context === 'spectrum') return ['lines', 'resolution', 'record'].includes(key) ? '' : 'lines: 800, ';
+  if (context === 'run') return RUN_FRAMES.get(key) ?? '';
   if (context === 'step') return key === 'speed' ? 'per-turn: 64, ' : '';
   const others = keysOf(context).filter((row) => row.required && row.key !== key);
   return others.map((row) => `${row.key}: ${row.example}, `).join('');
@@ -95,6 +95,11 @@ const FILTER_FRAMES: ReadonlyMap<string, string> = new Map([
   ['delay', 'response: cic, order: 3, '],
   ['tolerance', 'response: rc, order: 1, corner: 1 kHz, '],
   ['passes', 'response: fir, taps: [1, 1], '],
+]);
+
+const RUN_FRAMES: ReadonlyMap<string, string> = new Map([
+  ['records', 'record: 4 s, '],
+  ['record', 'records: 200, '],
 ]);
 
 const SOURCE_FRAMES: ReadonlyMap<string, string> = new Map([

@@ -12,10 +12,21 @@ const ROUNDING = 1e-9;
  * What sweeps over a range passes such a point and does not stay there; what has a tolerance of half a zone is near
  * a multiple whatever the rate. Neither is meant.
  */
-export function onNyquistAtStage(component: Component, { ratesHz, clockTolerance }: SignalPath): number | null {
+export function onNyquistAtStage(component: Component, path: SignalPath): number | null {
   const { nominalHz, lowHz, highHz } = component;
   if (nominalHz === undefined) return null;
-  const reachHz = Math.max(nominalHz - lowHz, highHz - nominalHz);
+  return nearNyquistAtStage(nominalHz, Math.max(nominalHz - lowHz, highHz - nominalHz), path);
+}
+
+/**
+ * The first stage, from 1, at which a frequency is within `reachHz` of a multiple of half the rate, or farther by no
+ * more than the clock's tolerance. `null` where it is at none, or where the reach is half a zone.
+ */
+export function nearNyquistAtStage(
+  nominalHz: number,
+  reachHz: number,
+  { ratesHz, clockTolerance }: SignalPath,
+): number | null {
   let hz = nominalHz;
   for (let index = 0; index < ratesHz.length; index++) {
     const rateHz = ratesHz[index]!;

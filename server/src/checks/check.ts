@@ -1,5 +1,6 @@
 import type { BandResponse } from '../chain/band-response.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import type { ChannelSpectrum } from '../chain/spectrum.ts';
 import type { UndeclaredFold } from '../chain/undeclared.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
@@ -48,6 +49,8 @@ export interface ChannelView {
   readonly shortfall: Shortfall | undefined;
   /** What is expected at the input and what it takes, where both are known in volts. */
   readonly input: InputRange | undefined;
+  /** How the record is turned into a spectrum, where that is said. */
+  readonly spectrum: ChannelSpectrum | undefined;
 }
 
 /** What a check says; channel and check name are filled in by the list that runs it, and the severity where it is the usual one. */

@@ -2,21 +2,27 @@ import { bandDroop } from './band-droop.ts';
 import { bandOverNyquist } from './band-over-nyquist.ts';
 import type { Check, CheckPage } from './check.ts';
 import { clips } from './clips.ts';
+import { diskShort } from './disk-short.ts';
 import { DOCUMENT_PAGES } from './document/pages.ts';
 import { filterShort } from './filter-short.ts';
+import { foldHides } from './fold-hides.ts';
 import { foldInBand } from './fold-in-band.ts';
 import { foldUnlevelled } from './fold-unlevelled.ts';
 import { headroomThin } from './headroom-thin.ts';
 import { levelUnplaced } from './level-unplaced.ts';
+import { linesTooCoarse } from './lines-too-coarse.ts';
+import { linkShort } from './link-short.ts';
 import { noFilter } from './no-filter.ts';
 import { onNyquist } from './on-nyquist.ts';
 import { rangeWasted } from './range-wasted.ts';
 import { rateOverConverter } from './rate-over-converter.ts';
 import { rateUnreachable } from './rate-unreachable.ts';
 import { ratesConflict } from './rates-conflict.ts';
+import { recordTooLong } from './record-too-long.ts';
 import { resonanceInBand } from './resonance-in-band.ts';
 import { stepWithoutFilter } from './step-without-filter.ts';
 import { thinMargin } from './thin-margin.ts';
+import { windowLeaks } from './window-leaks.ts';
 
 export type { CheckPage } from './check.ts';
 
@@ -32,16 +38,19 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   noFilter,
   stepWithoutFilter,
   onNyquist,
+  foldHides,
   bandDroop,
   clips,
   headroomThin,
   rangeWasted,
   resonanceInBand,
   levelUnplaced,
+  linesTooCoarse,
+  windowLeaks,
 ];
 
 /** The checks over many channels. */
-export const RIG_CHECKS: readonly Check<'rig'>[] = [ratesConflict];
+export const RIG_CHECKS: readonly Check<'rig'>[] = [ratesConflict, recordTooLong, diskShort, linkShort];
 
 /** Every check, as its reference page shows it. */
 export const ALL_CHECKS: readonly CheckPage[] = [...RIG_CHECKS, ...CHANNEL_CHECKS, ...DOCUMENT_PAGES];

@@ -2,6 +2,7 @@ import { arrivalsOf } from '../chain/arrivals.ts';
 import { type BandResponse, bandResponseOf } from '../chain/band-response.ts';
 import { chainOf } from '../chain/chain.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
 import { type UndeclaredFold, undeclaredFolds } from '../chain/undeclared.ts';
 import type { Channel } from '../rig/model.ts';
 import type { ChannelView, InputRange, Shortfall } from './check.ts';
@@ -22,6 +23,7 @@ class View implements ChannelView {
   #undeclared: readonly (UndeclaredFold | undefined)[] | undefined;
   #bandResponse: BandResponse | undefined;
   #shortfall: { readonly of: Shortfall | undefined } | undefined;
+  #spectrum: { readonly of: ChannelSpectrum | undefined } | undefined;
   #input: { readonly of: InputRange | undefined } | undefined;
 
   constructor(channel: Channel, chain: Chain) {
@@ -52,5 +54,11 @@ class View implements ChannelView {
   get input(): InputRange | undefined {
     this.#input ??= { of: inputRangeOf(this) };
     return this.#input.of;
+  }
+
+  get spectrum(): ChannelSpectrum | undefined {
+    if (!this.channel.spectrum) return undefined;
+    this.#spectrum ??= { of: spectrumOf(this.chain) };
+    return this.#spectrum.of;
   }
 }

@@ -3,7 +3,7 @@ import { type Dependencies, dependenciesHold, dependenciesOf } from './dependenc
 import { type Entry, KIND_OF_SECTION, NAMED_SECTIONS } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import type { Field } from './fields.ts';
-import type { Given, Source } from './model.ts';
+import type { Given, Run, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { readClock } from './read-clock.ts';
 import { readDigitizer } from './read-digitizer.ts';
@@ -40,6 +40,7 @@ export interface Core {
   readonly defaults: ReadonlyMap<string, Field>;
   readonly severities: ReadonlyMap<string, SeverityChoice>;
   readonly rigName: Given<string> | undefined;
+  readonly run: Run | undefined;
   readonly problems: readonly PlacedProblem[];
   /** Problems of text that things inherit, said at its origin. */
   readonly origin: readonly PlacedProblem[];
@@ -167,6 +168,7 @@ export function readCore(
     defaults: top.defaults ?? NO_DEFAULTS,
     severities: top.severities ?? NO_SEVERITIES,
     rigName: top.rigName,
+    run: top.run,
     problems,
     origin,
     notComputed,

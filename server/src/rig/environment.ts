@@ -3,7 +3,7 @@ import { type Core, readCore } from './core.ts';
 import type { Entry } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import { epochsOf } from './epochs.ts';
-import type { Clock, Digitizer, Filter, Given, Sensor, Source } from './model.ts';
+import type { Clock, Digitizer, Filter, Given, Run, Sensor, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import type { SeverityChoice } from './read-top-level.ts';
 import type { Mention } from './reader.ts';
@@ -29,6 +29,7 @@ export interface Environment {
   readonly defaults: Entry | undefined;
   readonly severities: ReadonlyMap<string, SeverityChoice>;
   readonly rigName: Given<string> | undefined;
+  readonly run: Run | undefined;
   /** Of everything but the channels; of these, only that a name stands there twice. */
   readonly problems: readonly PlacedProblem[];
   /** Keys outside the channels that are known but not computed. */
@@ -71,6 +72,7 @@ export function readEnvironment(
     defaults: core.defaultsEntry,
     severities: core.severities,
     rigName: core.rigName,
+    run: core.run,
     problems: [...snapshot.problems, ...core.problems, ...sorted.problems],
     notComputed: core.notComputed,
     mentions: core.mentions,

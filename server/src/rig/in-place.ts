@@ -10,7 +10,7 @@ export function sharedInPlace<T extends object>(
   reader: Reader,
   field: Field,
   node: MapNode,
-  name: 'filter' | 'sensor',
+  name: 'filter' | 'sensor' | 'spectrum',
   read: (reader: Reader, field: Field, node: MapNode) => T,
 ): T {
   if (field.entry === reader.entry) return read(reader, field, node);

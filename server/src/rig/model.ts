@@ -1,5 +1,7 @@
 import type { Quantity } from '../quantity/quantity.ts';
 import type { FilterShape } from '../signal/filter-spec.ts';
+import type { RecordLength } from '../signal/spectrum-plan.ts';
+import type { WindowName } from '../signal/windows.ts';
 import type { Place } from './place.ts';
 
 /** Where a value came from when the channel does not say it itself. */
@@ -242,6 +244,30 @@ export interface Peak {
   readonly single: boolean;
 }
 
+/** How a channel's record is turned into a spectrum. */
+export interface Spectrum {
+  /** Of one record; its place is that of the one key that says it. */
+  readonly length: Given<RecordLength>;
+  readonly window: Given<WindowName> | undefined;
+  /** 0 to less than 1. */
+  readonly overlap: Given<number> | undefined;
+  readonly averages: Given<number> | undefined;
+  /** Two tones this far apart have to be told from one another. */
+  readonly separateHz: Given<number> | undefined;
+}
+
+/** How long is recorded, and where the data goes. */
+export interface Run {
+  readonly durationS: Given<number> | undefined;
+  /** Triggered records: how many, and how long each is. */
+  readonly records: Given<number> | undefined;
+  readonly recordS: Given<number> | undefined;
+  readonly diskBytes: Given<number> | undefined;
+  readonly linkBytesPerSecond: Given<number> | undefined;
+  /** Of one sample of any channel. */
+  readonly sampleBits: Given<number> | undefined;
+}
+
 /**
  * A channel with everything it names resolved and everything it inherits filled in.
  *
@@ -272,4 +298,7 @@ export interface Channel extends Thing {
   readonly unheard: readonly Source[];
   readonly peak: Given<Peak> | undefined;
   readonly headroomDb: Given<number> | undefined;
+  /** The smallest step that must be seen. */
+  readonly resolve: Given<Level> | undefined;
+  readonly spectrum: Given<Spectrum> | undefined;
 }

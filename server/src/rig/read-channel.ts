@@ -17,6 +17,7 @@ import { findThing } from './names.ts';
 import type { Place } from './place.ts';
 import { readFrequencyRange, readFullScale, readValue } from './quantities.ts';
 import { readSensor, SENSOR_KEYS } from './read-sensor.ts';
+import { readSpectrum } from './read-spectrum.ts';
 import { readSteps } from './read-steps.ts';
 import type { Reader } from './reader.ts';
 import type { MapNode } from './tree.ts';
@@ -39,6 +40,7 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
   const hears = readHears(reader, byKey.get('hears'), sensor?.thing);
   const bandpass = readChoice(reader, byKey.get('sampling'))?.value === 'bandpass';
   const filterField = byKey.get('filter');
+  const resolveField = byKey.get('resolve');
   checkUncomputed(reader, fields);
   readText(reader, byKey.get('note'));
   return {
@@ -65,6 +67,8 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
     unheard: hears.unheard,
     peak: readPeak(reader, byKey.get('peak'), sensor?.thing),
     headroomDb: readValue(reader, byKey.get('headroom')),
+    resolve: resolveField && readChannelLevel(reader, resolveField, sensor?.thing),
+    spectrum: readSpectrum(reader, byKey.get('spectrum')),
   };
 }
 

@@ -13,9 +13,10 @@ import {
   reportUnknownKey,
   resolved,
 } from './fields.ts';
-import type { Given, Source } from './model.ts';
+import type { Given, Run, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { channelOf } from './read-channel.ts';
+import { readRun } from './read-run.ts';
 import { readMains } from './read-source.ts';
 import { placedProblem, type Reader, report } from './reader.ts';
 import type { MapNode } from './tree.ts';
@@ -31,6 +32,7 @@ export interface TopLevel {
   readonly mains?: Source | undefined;
   readonly defaults?: ReadonlyMap<string, Field>;
   readonly severities?: ReadonlyMap<string, SeverityChoice>;
+  readonly run?: Run | undefined;
 }
 
 const SECTIONS: ReadonlySet<string> = new Set(NAMED_SECTIONS);
@@ -69,6 +71,8 @@ export function readTopLevel(reader: Reader, checkNames: readonly string[]): Top
       return { mains: readMains(reader, field) };
     case 'defaults':
       return readMap(reader, field, readDefaults);
+    case 'run':
+      return readMap(reader, field, (_, one, node) => ({ run: readRun(reader, one, node) }));
     case 'checks':
       return readMap(reader, field, (_, one, node) => readSeverities(reader, one, node, checkNames));
     default:

@@ -22,6 +22,7 @@ import {
   TEXT,
   TIME,
 } from './vocabulary-kinds.ts';
+import { WINDOW_CHOICES } from './window-choices.ts';
 
 const NONE = choice({ none: 'None.' });
 
@@ -133,7 +134,6 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     measuredQuantity(['voltage', 'dbfs'], { bounds: {} }),
     '0.01 g',
     'The smallest step that must be seen.',
-    { computed: false },
   ),
   row('channel', 'group', nameOf('group'), 'tower', 'The group whose phases are compared.', { computed: false }),
   row(
@@ -157,8 +157,7 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     'spectrum',
     mapOf('spectrum'),
     '{ lines: 800, window: hann }',
-    'How the record will be turned into a spectrum.',
-    { computed: false },
+    'How the record will be turned into a spectrum: one of `lines`, `resolution` and `record`, and what else it takes.',
   ),
   row('channel', 'note', TEXT, 'above the coupling', 'Free text.'),
 ];
@@ -191,41 +190,22 @@ const PULSES_ROWS: readonly KeyRow[] = [
 ];
 
 const SPECTRUM_ROWS: readonly KeyRow[] = [
-  row('spectrum', 'lines', integer({ low: 1 }), '800', 'The number of lines of the spectrum that are shown.', {
-    computed: false,
+  row('spectrum', 'lines', integer({ low: 1 }), '800', 'The number of lines of the spectrum that are shown.'),
+  row('spectrum', 'resolution', FREQUENCY, '1.25 Hz', 'The distance from one line to the next.'),
+  row('spectrum', 'record', TIME, '0.8 s', 'The length of the record behind one spectrum.'),
+  row('spectrum', 'window', choice(WINDOW_CHOICES), 'hann', 'The window that the record is weighted with.', {
+    default: 'hann',
   }),
-  row('spectrum', 'resolution', FREQUENCY, '1.25 Hz', 'The distance from one line to the next.', { computed: false }),
-  row('spectrum', 'record', TIME, '0.8 s', 'The length of the record behind one spectrum.', { computed: false }),
-  row(
-    'spectrum',
-    'window',
-    choice({
-      rectangle: 'No window.',
-      hann: 'Hann: the usual choice.',
-      hamming: 'Hamming: a low first side lobe.',
-      blackman: 'Blackman: low side lobes.',
-      'blackman-harris': 'Blackman-Harris, four terms: very low side lobes.',
-      'flat-top': 'Flat top: true levels between the lines.',
-    }),
-    'hann',
-    'The window that the record is weighted with.',
-    { default: 'hann', computed: false },
-  ),
   row(
     'spectrum',
     'overlap',
     quantity('ratio', '%', { bounds: { low: 0, high: 1, highExcluded: true } }),
     '50 %',
     'How far one record reaches into the next.',
-    { default: '0 %', computed: false },
+    { default: '0 %' },
   ),
-  row('spectrum', 'averages', integer({ low: 1 }), '16', 'The number of spectra that are averaged.', {
-    default: '1',
-    computed: false,
-  }),
-  row('spectrum', 'separate', FREQUENCY, '4 Hz', 'Two tones this far apart have to be told from one another.', {
-    computed: false,
-  }),
+  row('spectrum', 'averages', integer({ low: 1 }), '16', 'The number of spectra that are averaged.', { default: '1' }),
+  row('spectrum', 'separate', FREQUENCY, '4 Hz', 'Two tones this far apart have to be told from one another.'),
 ];
 
 /** The keys of a channel and of the small maps in it; the keys of a sensor are a channel's too. */

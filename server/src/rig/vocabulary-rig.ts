@@ -103,9 +103,7 @@ export const RIG_ROWS: readonly KeyRow[] = [
     '{ bearing: { rate: 25.6 kHz, band: 10 Hz .. 10 kHz } }',
     'The channels, in the order in which they are scanned.',
   ),
-  row('rig', 'run', mapOf('run'), '{ duration: 8 h, disk: 500 GB }', 'How long is recorded, and where the data goes.', {
-    computed: false,
-  }),
+  row('rig', 'run', mapOf('run'), '{ duration: 8 h, disk: 500 GB }', 'How long is recorded, and where the data goes.'),
   row(
     'rig',
     'accept',
@@ -136,17 +134,14 @@ export const RIG_ROWS: readonly KeyRow[] = [
     computed: false,
   }),
 
-  row('run', 'duration', TIME, '8 h', 'How long is recorded.', { computed: false }),
-  row('run', 'records', integer({ low: 1 }), '200', 'The number of triggered records.', { computed: false }),
-  row('run', 'record', TIME, '4 s', 'The length of one triggered record.', { computed: false }),
-  row('run', 'disk', quantity(['data', 'bits'], 'B'), '500 GB', 'The space there is for the data.', {
-    computed: false,
+  row('run', 'duration', TIME, '8 h', 'How long is recorded; with `records`, how long the run lasts.'),
+  row('run', 'records', integer({ low: 1 }), '200', 'The number of triggered records, each as long as `record` says.', {
+    default: 'the whole duration is recorded',
   }),
-  row('run', 'link', quantity('data-rate', 'B/s'), '100 MB/s', 'How fast the data can be carried away.', {
-    computed: false,
-  }),
+  row('run', 'record', TIME, '4 s', 'The length of one triggered record.'),
+  row('run', 'disk', quantity(['data', 'bits'], 'B'), '500 GB', 'The space there is for the data.'),
+  row('run', 'link', quantity('data-rate', 'B/s'), '100 MB/s', 'How fast the data can be carried away.'),
   row('run', 'sample-size', quantity(['bits', 'data'], 'bit'), '32 bit', 'The space one sample takes.', {
-    computed: false,
     default: 'the bits of the converter, rounded up to 8, 16, 24 or 32',
   }),
 

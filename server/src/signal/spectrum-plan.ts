@@ -30,12 +30,16 @@ export interface SpectrumSettings {
   readonly averages: number;
 }
 
-export interface SpectrumPlan {
+/** The record behind one spectrum, whatever its window. */
+export interface SpectrumRecord {
   /** Samples of one record, at the last stage's rate. */
   readonly recordSamples: number;
   readonly recordS: number;
   /** From one line to the next: 1 / record. */
   readonly resolutionHz: number;
+}
+
+export interface SpectrumPlan extends SpectrumRecord {
   /** Lines that are shown. */
   readonly lines: number;
   /** From the first sample of the first record to the end of the last. */
@@ -55,25 +59,32 @@ export interface SpectrumPlan {
  *   overlap outside 0 .. 1 counts as its nearer end, averages below 1 as 1, parts of an average not at all.
  */
 export function planSpectrum(settings: SpectrumSettings, rateHz: number): SpectrumPlan | undefined {
-  const recordSamples = samplesOf(settings.length, rateHz);
-  const recordS = recordSamples / rateHz;
-  if (!(recordSamples >= 1 && recordS > 0 && Number.isFinite(recordSamples) && Number.isFinite(recordS))) {
-    return undefined;
-  }
+  const record = recordAt(settings.length, rateHz);
+  if (!record) return undefined;
+  const { recordSamples, recordS, resolutionHz } = record;
   const overlap = within(settings.overlap);
   const averages = wholeAverages(settings.averages);
   const independentAverages = effectiveAverages(settings.window, overlap, averages);
-  const resolutionHz = 1 / recordS;
   return {
-    recordSamples,
-    recordS,
-    resolutionHz,
+    ...record,
     lines: settings.length.by === 'lines' ? settings.length.lines : linesOf(recordSamples),
     totalS: totalTimeS(recordS, overlap, averages),
     independentAverages,
     randomError: 1 / Math.sqrt(independentAverages),
     leastSeparationHz: leastSeparationHz(settings.window, resolutionHz),
   };
+}
+
+/**
+ * One record of samples at `rateHz`, the last stage's: what is known of a spectrum without looking at its window.
+ *
+ * @returns `undefined` where the rate or the length makes no record: not above 0, or beyond what a double holds
+ */
+export function recordAt(length: RecordLength, rateHz: number): SpectrumRecord | undefined {
+  const recordSamples = samplesOf(length, rateHz);
+  const recordS = recordSamples / rateHz;
+  const isRecord = recordSamples >= 1 && recordS > 0 && Number.isFinite(recordSamples) && Number.isFinite(recordS);
+  return isRecord ? { recordSamples, recordS, resolutionHz: 1 / recordS } : undefined;
 }
 
 /**
@@ -103,6 +114,16 @@ export function linesOf(recordSamples: number): number {
 /** How long averaging takes: record x (1 + (averages - 1) (1 - overlap)). */
 export function totalTimeS(recordS: number, overlap: number, averages: number): number {
   return recordS * (1 + (averages - 1) * (1 - overlap));
+}
+
+/** The most averages that `availableS` has room for; 0 where one record is longer than that. */
+export function averagesThatFit(recordS: number, overlap: number, availableS: number): number {
+  const room = availableS * (1 + ROUNDING) - recordS;
+  if (!(room >= 0)) return 0;
+  const step = recordS * (1 - within(overlap));
+  return step > 0
+    ? Math.min(1 + Math.floor((room / step) * (1 + ROUNDING)), Number.MAX_SAFE_INTEGER)
+    : Number.MAX_SAFE_INTEGER;
 }
 
 /**

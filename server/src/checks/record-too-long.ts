@@ -1,0 +1,107 @@
+import { triggeredRecords } from '../chain/run-storage.ts';
+import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
+import { formatQuantity } from '../quantity/write.ts';
+import type { Channel, Given, Run } from '../rig/model.ts';
+import { averagesThatFit, totalTimeS } from '../signal/spectrum-plan.ts';
+import { type Check, type RigView, SAYS_NOTHING, type SaidOfRig } from './check.ts';
+import { standingOn } from './standing.ts';
+
+/** Relative. */
+const ROUNDING = 1e-9;
+
+export const recordTooLong: Check<'rig'> = {
+  name: 'record-too-long',
+  kind: 'rig',
+  severity: 'warning',
+  finds: 'The records that a spectrum is averaged over do not fit in what is recorded.',
+  why: 'An average over more records than there are is cut short: the spectrum scatters more than was planned, or the analysis refuses. Records that overlap take less time. Where records are triggered, each of them has to hold a record of the spectrum, and all of them together the averages.',
+  shows: `rig: Fan bearing
+run: { duration: 10 s }
+channels:
+  bearing:
+    rate: 25.6 kHz
+    band: 10 Hz .. 5 kHz
+    undeclared: -80 dBFS
+    spectrum: { record: 0.8 s, averages: 13 }
+`,
+  clean: `rig: Fan bearing
+run: { duration: 10.4 s }
+channels:
+  bearing:
+    rate: 25.6 kHz
+    band: 10 Hz .. 5 kHz
+    undeclared: -80 dBFS
+    spectrum: { record: 0.8 s, averages: 13 }
+`,
+  sources: ['Arithmetic: record x (1 + (averages - 1) x (1 - overlap)).'],
+  run: ({ environment: { run }, channels }: RigView) => {
+    if (!run) return SAYS_NOTHING;
+    const said: SaidOfRig[] = [];
+    for (const { result } of channels) {
+      const { channel, chain } = result;
+      if (!channel.spectrum || !chain) continue;
+      const spectrum = spectrumOf(chain);
+      const one = spectrum && overlong(channel, spectrum, run);
+      if (one) said.push(one);
+    }
+    return said;
+  },
+};
+
+function overlong(channel: Channel, spectrum: ChannelSpectrum, run: Run): SaidOfRig | undefined {
+  const triggered = triggeredRecords(run);
+  if (triggered) return overTriggered(channel, spectrum, run);
+  const { durationS } = run;
+  if (!durationS) return undefined;
+  const { settings, record } = spectrum;
+  const totalS = totalTimeS(record.recordS, settings.overlap, settings.averages);
+  if (totalS <= durationS.value * (1 + ROUNDING)) return undefined;
+  const time = timeText(durationS.value);
+  const what =
+    settings.averages === 1
+      ? `A record of ${timeText(record.recordS)} will not fit in the ${time} that are recorded.`
+      : `${settings.averages} averages will not fit in the ${time} that are recorded: with records of ${timeText(record.recordS)} they take ${timeText(totalS)}.`;
+  const isAveraged = record.recordS <= durationS.value * (1 + ROUNDING);
+  return saidOf(channel, spectrum, isAveraged, what, durationS, { totalS, recordedS: durationS.value });
+}
+
+function overTriggered(channel: Channel, spectrum: ChannelSpectrum, run: Run): SaidOfRig | undefined {
+  const { records, recordS } = run;
+  if (!records || !recordS) return undefined;
+  const { settings, record } = spectrum;
+  const each = averagesThatFit(record.recordS, settings.overlap, recordS.value);
+  const most = each * records.value;
+  if (settings.averages <= most) return undefined;
+  const time = timeText(recordS.value);
+  const what =
+    each === 0
+      ? `A record of ${timeText(record.recordS)} will not fit in the ${time} of a triggered record.`
+      : `${settings.averages} averages will not fit in ${records.value} triggered records of ${time}: at ${timeText(record.recordS)} each, ${most} do.`;
+  const neededS = (recordS.value * settings.averages) / Math.max(most, 1);
+  const totalS = each === 0 ? record.recordS : neededS;
+  return saidOf(channel, spectrum, each > 0, what, recordS, { totalS, recordedS: recordS.value });
+}
+
+/** It is the averages that are too many, or else the record itself that is too long. */
+function saidOf(
+  channel: Channel,
+  { spectrum }: ChannelSpectrum,
+  isAveraged: boolean,
+  message: string,
+  limit: Given<number>,
+  figures: { readonly totalS: number; readonly recordedS: number },
+): SaidOfRig {
+  const standing = standingOn(channel, (isAveraged ? spectrum.averages : undefined) ?? spectrum.length);
+  return {
+    channel: channel.name,
+    message,
+    place: standing.place,
+    related: [...standing.related, { place: limit.place, message: 'What is recorded stands here.' }],
+    figures,
+    excess: figures.totalS / figures.recordedS,
+  };
+}
+
+function timeText(seconds: number): string {
+  return formatQuantity(seconds, 'time', 4);
+}
