@@ -24,11 +24,11 @@ channels:
     undeclared: -80 dBFS
 `,
   clean: `rig: Fan bearing
-# 25600 samples a second of 3 bytes each: 2.21184 GB in 8 h.
 run: { duration: 8 h, disk: 2.22 GB }
 digitizers:
   front-end: { bits: 24 }
 channels:
+  # 25600 samples a second of 3 bytes each: 2.21184 GB in 8 h.
   bearing:
     digitizer: front-end
     rate: 25.6 kHz

@@ -13,7 +13,7 @@ export const linesTooCoarse: Check<'channel'> = {
   why: 'A record of some length shows a tone as a lobe that is a few lines wide, by the window. Two tones nearer to one another than the width of that lobe 6 dB below its top stand in one lobe: their levels and their number can no longer be read. Only a longer record, or a narrower window, tells them apart. Of what turns with a shaft the orders are compared, at the lowest speed at which both are in the band.',
   shows: `rig: Gearbox
 sources:
-  mesh: { carrier: 620 Hz, modulation: 20 Hz, level: 200 mV, wanted: true }
+  mesh: { carrier: 620 Hz, modulation: 20 Hz, wanted: true }
 channels:
   casing:
     rate: 5.12 kHz
@@ -24,7 +24,7 @@ channels:
 `,
   clean: `rig: Gearbox
 sources:
-  mesh: { carrier: 620 Hz, modulation: 20 Hz, level: 200 mV, wanted: true }
+  mesh: { carrier: 620 Hz, modulation: 20 Hz, wanted: true }
 channels:
   casing:
     rate: 5.12 kHz

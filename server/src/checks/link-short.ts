@@ -24,11 +24,11 @@ channels:
     undeclared: -80 dBFS
 `,
   clean: `rig: Fan bearing
-# 25600 samples a second of 3 bytes each: 76.8 kB/s.
 run: { link: 76.8 kB/s }
 digitizers:
   front-end: { bits: 24 }
 channels:
+  # 25600 samples a second of 3 bytes each: 76.8 kB/s.
   bearing:
     digitizer: front-end
     rate: 25.6 kHz
