@@ -1,9 +1,10 @@
 import { CHECK_NAMES } from '../checks/list.ts';
 import { nearest } from '../quantity/spelling.ts';
 import type { FileReport, ReportedFinding } from '../report/findings-json.ts';
-import { findingsJson, summaryOf } from '../report/findings-json.ts';
+import { findingsJson, summaryOf, totalsOf } from '../report/findings-json.ts';
 import { findingsText, summaryText } from '../report/findings-text.ts';
 import { locatedFindings } from '../workbench/findings.ts';
+import { runTotals } from '../workbench/run-totals.ts';
 import type { Workbench } from '../workbench/workbench.ts';
 import type { Command } from './command.ts';
 import { deliver } from './command.ts';
@@ -83,7 +84,9 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
     exit = graver(exit, 1);
   if (format === 'json') return graver(exit, deliver(findingsJson(reports), options, io));
   const text = reports.map((report) => findingsText(report, paint)).join('');
-  const summary = options.flag('quiet') ? '' : summaryText(reports.length, summaryOf(reports), paint);
+  const summary = options.flag('quiet')
+    ? ''
+    : summaryText(reports.length, summaryOf(reports), paint, totalsOf(reports));
   return graver(exit, deliver(text + summary, options, io));
 }
 
@@ -108,6 +111,7 @@ function reportOf(
     path: rig.path,
     channels: rig.evaluation.channels.length,
     findings,
+    totals: runTotals(rig.evaluation),
   };
 }
 

@@ -4,9 +4,13 @@ import { formatHz } from '../quantity/write.ts';
 import type { Entry } from '../rig/entry.ts';
 import type { Snapshot } from '../rig/snapshot.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
+import { runTotals, totalsText } from '../workbench/run-totals.ts';
 import { protocolRange } from './convert.ts';
 
-/** The outline: the top-level keys, the named things below their sections, and each channel with its rate. */
+/**
+ * The outline: the top-level keys, the named things below their sections, and each channel with its rate. What a run
+ * makes of data stands with the first of them.
+ */
 export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
   const { snapshot } = evaluation;
   const rates = new Map<Entry, string>();
@@ -26,6 +30,8 @@ export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
       section.range = { start: section.range.start, end: symbol.range.end };
     } else top.push(symbol);
   }
+  const totals = runTotals(evaluation);
+  if (totals && top[0]) top[0].detail = totalsText(totals);
   return top;
 }
 

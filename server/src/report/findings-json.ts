@@ -1,6 +1,7 @@
 import type { Finding, Severity } from '../checks/finding.ts';
 import type { Remedy } from '../remedies/remedy.ts';
 import type { PositionRange } from '../rig/place.ts';
+import type { RunStorage } from '../workbench/run-totals.ts';
 import { reported } from './number.ts';
 
 /** A file's findings, ready to be reported. */
@@ -8,6 +9,8 @@ export interface FileReport {
   readonly path: string;
   readonly channels: number;
   readonly findings: readonly ReportedFinding[];
+  /** What the file's run makes of data, where it has one. */
+  readonly totals?: RunStorage | undefined;
 }
 
 export interface ReportedFinding {
@@ -23,10 +26,15 @@ export interface Summary {
   readonly hint: number;
   readonly accepted: number;
   readonly channels: number;
+  /** Of all runs together, while they record; only where there is a run. */
+  readonly bytesPerSecond?: number;
+  /** Of all runs together, in all; only where there is a run whose amount of data is known. */
+  readonly bytes?: number;
 }
 
-/** Counts over all files. */
+/** Counts and sums over all files. */
 export function summaryOf(files: readonly FileReport[]): Summary {
+  const totals = totalsOf(files);
   const count = (severity: Severity): number =>
     files.reduce((sum, file) => sum + file.findings.filter(({ finding }) => finding.severity === severity).length, 0);
   return {
@@ -35,7 +43,26 @@ export function summaryOf(files: readonly FileReport[]): Summary {
     hint: count('hint'),
     accepted: 0,
     channels: files.reduce((sum, file) => sum + file.channels, 0),
+    ...(totals ? { bytesPerSecond: reported(totals.bytesPerSecond) } : {}),
+    ...(totals?.bytes === undefined ? {} : { bytes: reported(totals.bytes) }),
   };
+}
+
+/** What the runs of all files make of data together; `undefined` where no file has a run. */
+export function totalsOf(files: readonly FileReport[]): RunStorage | undefined {
+  const runs = files.flatMap(({ totals }) => totals ?? []);
+  if (runs.length === 0) return undefined;
+  const known = runs.flatMap(({ bytes }) => bytes ?? []);
+  return {
+    bytesPerSecond: sum(runs.map(({ bytesPerSecond }) => bytesPerSecond)),
+    bytes: known.length > 0 ? sum(known) : undefined,
+    channels: sum(runs.map(({ channels }) => channels)),
+    channelsLeftOut: sum(runs.map(({ channelsLeftOut }) => channelsLeftOut)),
+  };
+}
+
+function sum(numbers: readonly number[]): number {
+  return numbers.reduce((total, one) => total + one, 0);
 }
 
 /** The findings of some files as JSON: stable keys, stable order, the same to the byte for the same texts. */

@@ -1,3 +1,4 @@
+import { type RunStorage, totalsText } from '../workbench/run-totals.ts';
 import type { FileReport, ReportedFinding, Summary } from './findings-json.ts';
 import type { Paint } from './paint.ts';
 import { printable } from './printable.ts';
@@ -30,12 +31,22 @@ function findingText(path: string, { finding, range, remedies }: ReportedFinding
   return `${lines.join('\n')}\n\n`;
 }
 
-/** One line: what was checked, and how much was found. */
-export function summaryText(files: number, { error, warning, hint, channels }: Summary, paint: Paint): string {
+/**
+ * What was checked, and how much was found, in one line; in a second what is recorded.
+ *
+ * @param totals of all files that have a run
+ */
+export function summaryText(
+  files: number,
+  { error, warning, hint, channels }: Summary,
+  paint: Paint,
+  totals?: RunStorage,
+): string {
   const part = (count: number, one: string, ink: 'error' | 'warning' | 'hint'): string =>
     count === 0 ? `no ${one}s` : paint(counted(count, one), ink);
+  const recorded = totals ? `Recorded: ${totalsText(totals)}.\n` : '';
   const checked = `${counted(channels, 'channel')} in ${counted(files, 'file')} checked`;
-  return `${checked}: ${part(error, 'error', 'error')}, ${part(warning, 'warning', 'warning')}, ${part(hint, 'hint', 'hint')}.\n`;
+  return `${checked}: ${part(error, 'error', 'error')}, ${part(warning, 'warning', 'warning')}, ${part(hint, 'hint', 'hint')}.\n${recorded}`;
 }
 
 function counted(count: number, one: string): string {
