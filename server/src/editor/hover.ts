@@ -11,6 +11,7 @@ import { expectedAt } from './expectation.ts';
 import { filterMarkdown } from './hover-filter.ts';
 import { mapMarkdown } from './hover-map.ts';
 import { sourceMarkdown } from './hover-source.ts';
+import { spectrumIsMeant, spectrumMarkdown } from './hover-spectrum.ts';
 import { channelAt } from './map-view.ts';
 import { codeMarkdown, MOST_HOVER_CHARACTERS } from './picture-markdown.ts';
 import { plainTextOf } from './plain-text.ts';
@@ -50,11 +51,15 @@ function markdownFor(
   }
   const key = pointed.pair?.key.text;
   if (channel && mapIsMeant(pointed, key)) return mapMarkdown(channel, abilities);
+  const spectrum = channel && spectrumIsMeant(pointed) ? spectrumMarkdown(channel) : undefined;
   if (pointed.on === 'key' && key !== undefined) {
-    return keyMarkdown(pointed, key) ?? nameMarkdown(evaluation, pointed, key, channel, abilities);
+    const explained = keyMarkdown(pointed, key);
+    if (spectrum !== undefined && explained !== undefined) return `${spectrum}\n\n${explained}`;
+    return explained ?? nameMarkdown(evaluation, pointed, key, channel, abilities);
   }
   const text = pointed.node?.kind === 'scalar' ? pointed.node.text : undefined;
-  return text === undefined ? undefined : nameMarkdown(evaluation, pointed, text, channel, abilities, key);
+  const named = text === undefined ? undefined : nameMarkdown(evaluation, pointed, text, channel, abilities, key);
+  return spectrum === undefined || named === undefined ? (spectrum ?? named) : `${spectrum}\n\n${named}`;
 }
 
 /** What stands behind an entry's own name: a channel's map, a filter's curve, where a source lands. */
