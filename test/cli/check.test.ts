@@ -142,6 +142,14 @@ describe('--only', () => {
 });
 
 describe('check --format json', () => {
+  it('has what is recorded in its summary where there is a run, as the text has it below', async () => {
+    // 16 bits at 20 kHz are 40 kB a second, 2.4 MB a minute.
+    const files = { 'a.rig.yaml': `${FOLDS}run: { duration: 60 s }\n` };
+    const { stdout } = await ran(['check', '--format', 'json'], files);
+    expect(parsed(stdout).summary).toMatchObject({ channels: 1, bytesPerSecond: 40_000, bytes: 2_400_000 });
+    expect((await ran(['check'], files)).stdout).toMatch(/\nRecorded: 40 kB\/s, 2\.4 MB in all\.\n$/);
+  });
+
   it('has the shape that programs rely on, with the figures worked out by hand', async () => {
     const { stdout } = await ran(['check', '--format', 'json'], { 'a.rig.yaml': FOLDS });
     const json = parsed(stdout);
