@@ -50,15 +50,24 @@ describe('keys that are not computed', () => {
     found(`rig: R\n${text}`, 'not-computed').map(({ about }) => about);
 
   it('are told once for each key of a file, whoever has it', () => {
-    const two = channels(`a: { ${OK}, resolve: 1 mV, noise: 1 uV/rtHz }`, `b: { ${OK}, resolve: 2 mV }`);
-    expect(keys(two)).toEqual(['resolve', 'noise']);
-    const sensor = `sensors: { s: { noise: 1 uV/rtHz } }\ndefaults: { resolve: 1 mV, sensor: s }\n`;
-    expect(keys(sensor + two)).toEqual(['noise', 'resolve']);
+    const two = channels(
+      `a: { ${OK}, pattern: { of: 2, take: [0] }, noise: 1 uV/rtHz }`,
+      `b: { ${OK}, pattern: { of: 2, take: [0] } }`,
+    );
+    expect(keys(two)).toEqual(['pattern', 'noise']);
+    const sensor = `sensors: { s: { noise: 1 uV/rtHz } }\ndefaults: { pattern: { of: 2, take: [0] }, sensor: s }\n`;
+    expect(keys(sensor + two)).toEqual(['noise', 'pattern']);
   });
 
   it('are the same finding wherever the first of them stands', () => {
-    const one = only(`rig: R\n${channels(`a: { ${OK}, resolve: 1 mV }`, `b: { ${OK} }`)}`, 'not-computed');
-    const other = only(`rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, resolve: 1 mV }`)}`, 'not-computed');
+    const one = only(
+      `rig: R\n${channels(`a: { ${OK}, pattern: { of: 2, take: [0] } }`, `b: { ${OK} }`)}`,
+      'not-computed',
+    );
+    const other = only(
+      `rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, pattern: { of: 2, take: [0] } }`)}`,
+      'not-computed',
+    );
     expect([one.channel, one.thing, one.about]).toEqual([other.channel, other.thing, other.about]);
   });
 });

@@ -31,7 +31,8 @@ export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
     } else top.push(symbol);
   }
   const totals = runTotals(evaluation);
-  if (totals && top[0]) top[0].detail = totalsText(totals);
+  // Where no channel's samples have a size there is nothing to tell yet.
+  if (totals && totals.channels > 0 && top[0]) top[0].detail = totalsText(totals);
   return top;
 }
 
