@@ -51,21 +51,21 @@ describe('keys that are not computed', () => {
 
   it('are told once for each key of a file, whoever has it', () => {
     const two = channels(
-      `a: { ${OK}, pattern: { of: 2, take: [0] }, noise: 1 uV/rtHz }`,
-      `b: { ${OK}, pattern: { of: 2, take: [0] } }`,
+      `a: { ${OK}, then: [{ per-turn: 64 }], noise: 1 uV/rtHz }`,
+      `b: { ${OK}, then: [{ per-turn: 64 }] }`,
     );
-    expect(keys(two)).toEqual(['pattern', 'noise']);
-    const sensor = `sensors: { s: { noise: 1 uV/rtHz } }\ndefaults: { pattern: { of: 2, take: [0] }, sensor: s }\n`;
-    expect(keys(sensor + two)).toEqual(['noise', 'pattern']);
+    expect(keys(two)).toEqual(['per-turn', 'noise']);
+    const sensor = `sensors: { s: { noise: 1 uV/rtHz } }\ndefaults: { then: [{ per-turn: 64 }], sensor: s }\n`;
+    expect(keys(sensor + two)).toEqual(['noise', 'per-turn']);
   });
 
   it('are the same finding wherever the first of them stands', () => {
     const one = only(
-      `rig: R\n${channels(`a: { ${OK}, pattern: { of: 2, take: [0] } }`, `b: { ${OK} }`)}`,
+      `rig: R\n${channels(`a: { ${OK}, then: [{ per-turn: 64 }] }`, `b: { ${OK} }`)}`,
       'not-computed',
     );
     const other = only(
-      `rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, pattern: { of: 2, take: [0] } }`)}`,
+      `rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, then: [{ per-turn: 64 }] }`)}`,
       'not-computed',
     );
     expect([one.channel, one.thing, one.about]).toEqual([other.channel, other.thing, other.about]);

@@ -74,10 +74,10 @@ describe('the rest of the document', () => {
   });
 
   it('says once that a key is not computed, for each key', () => {
-    const channel = 'rate: 1000 Hz, band: 1 Hz .. 10 Hz, undeclared: -90 dBFS, pattern: { of: 2, take: [0] }';
+    const channel = 'rate: 1000 Hz, band: 1 Hz .. 10 Hz, undeclared: -90 dBFS, then: [{ per-turn: 64 }]';
     const text = `rig: Test\nchannels:\n  a: { ${channel} }\n  b: { ${channel}, group: g }\ngroups: { g: { within: 1 deg } }\n`;
     const about = found(text, 'not-computed').map((finding) => finding.about);
-    expect(about.filter((key) => key === 'pattern')).toHaveLength(1);
+    expect(about.filter((key) => key === 'per-turn')).toHaveLength(1);
     expect(new Set(about).size).toBe(about.length);
   });
 

@@ -237,7 +237,7 @@ describe('a hover on a word of the vocabulary', () => {
   });
 
   it('over a key that is not computed yet says so', () => {
-    expect(hover('channels:\n  a:\n    pattern: { o▮f: 2, take: [0] }\n')!.shown).toContain('does not compute it yet');
+    expect(hover('channels:\n  a:\n    then: [{ per-t▮urn: 64 }]\n')!.shown).toContain('does not compute it yet');
   });
 
   it('over a name in `checks` tells what the check finds and why it matters', () => {

@@ -90,6 +90,24 @@ describe('settings', () => {
   });
 });
 
+describe('a band that is folded on purpose', () => {
+  it('is offered a rate that keeps it whole, the right way up first', () => {
+    const text = `rig: R
+clocks: { c: { frequency: 160 MHz, divide: 1..64 } }
+digitizers: { d: { clock: c, full-scale: ±1 V, bits: 14 } }
+filters: { image: { response: elliptic, order: 10, ripple: 0.1 dB, stopband: 80 dB, shape: band-pass, pass-edge: 19.9 MHz .. 25.1 MHz } }
+channels:
+  a: { digitizer: d, rate: 22.8571 MHz, sampling: bandpass, filter: image, band: 20 MHz .. 25 MHz }
+`;
+    // Of 160 MHz, 26.67 MHz (upside down) is nearer than 17.78 MHz: 16.67 .. 20 MHz and 25 .. 40 MHz keep the band whole.
+    const titles = offered(text, 'bandpass-straddles').map(({ title }) => title);
+    expect(titles[0]).toMatch(
+      /^Sample at 17.778 MHz: the band is recorded at 2.2222 MHz .. 7.2222 MHz \(data x0.778\)/,
+    );
+    expect(titles[1]).toMatch(/^Sample at 26.667 MHz: the band is recorded at 1.6667 MHz .. 6.6667 MHz, upside down/);
+  });
+});
+
 describe('what changes the rig, the test or what is known', () => {
   it('begins its title accordingly, is never preferred, and comes after the settings', () => {
     const remedies = offered(EXTRACT_FAN, 'fold-in-band');

@@ -164,13 +164,13 @@ describe('a channel', () => {
     expect(problem.about).toBe(key);
   });
 
-  it('is not complete without rate and band, nor where this version could say nothing that holds', () => {
+  it('is not complete without rate and band, but a pulse train needs none', () => {
     const complete = (text: string) => readRig(text).readings[0]!.channel.complete;
     expect(complete(channelRig(''))).toBe(true);
     expect(complete('rig: R\nchannels:\n  a: { rate: 1 kHz }\n')).toBe(false);
     expect(complete('rig: R\nchannels:\n  a: { rate: x, band: 1..2 Hz }\n')).toBe(false);
-    expect(complete(channelRig('sampling: bandpass'))).toBe(false);
-    expect(complete(channelRig('pulses: { per-turn: 60, speed: 600 rpm }'))).toBe(false);
+    expect(complete(channelRig('sampling: bandpass'))).toBe(true);
+    expect(complete('rig: R\nchannels:\n  a: { rate: 1 kHz, pulses: { per-turn: 60, speed: 600 rpm } }\n')).toBe(true);
   });
 
   it('keeps to the steps before one that is not computed', () => {
@@ -235,9 +235,9 @@ describe('a whole file', () => {
 
   it('says of a key that is not computed just once', () => {
     const rig = readRig(
-      'rig: R\nchannels:\n  a: { rate: 1 kHz, band: 1..2 Hz, pattern: { of: 2, take: [0] } }\n  b: { rate: 1 kHz, band: 1..2 Hz, pattern: { of: 2, take: [0] } }\n',
+      'rig: R\nchannels:\n  a: { rate: 1 kHz, band: 1..2 Hz, then: [{ per-turn: 64 }] }\n  b: { rate: 1 kHz, band: 1..2 Hz, then: [{ per-turn: 64 }] }\n',
     );
-    expect(saidOf(rig)).toEqual(['not-computed: pattern']);
+    expect(saidOf(rig)).toEqual(['not-computed: per-turn']);
   });
 
   it('says nothing of unknown names while others may know them', () => {

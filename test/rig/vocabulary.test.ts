@@ -29,15 +29,12 @@ const KEYS: Readonly<Record<ContextName, string>> = {
 
 const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
   rig: 'uses groups accept',
-  digitizer: 'scan-interval settling noise jitter delay-compensated interleave',
+  digitizer: 'scan-interval settling noise jitter delay-compensated',
   sensor: 'noise',
   source: 'noise spans',
   group: KEYS.group,
-  channel: 'group pattern pulses noise',
+  channel: 'group noise',
   step: 'per-turn speed',
-  pattern: KEYS.pattern,
-  pulses: KEYS.pulses,
-  interleave: KEYS.interleave,
   acceptance: KEYS.acceptance,
 };
 
@@ -186,11 +183,6 @@ describe('the vocabulary', () => {
 
   it('explains every key in a sentence', () => {
     for (const { doc } of VOCABULARY) expect(doc).toMatch(/^[A-Z].*\.$/);
-  });
-
-  it('says of a map of which nothing is computed just that', () => {
-    const said = saidOf(readRig(rigWith('channel', 'pulses', '{ per-turn: 60, speed: 600..3000 rpm }')));
-    expect(said).toEqual(['not-computed: groups', 'not-computed: pulses']);
   });
 
   it('shows how every key is written, a section with an entry of its own', () => {

@@ -1,6 +1,7 @@
 import type { HeardSource, Source } from '../rig/model.ts';
 import { type FoldedPiece, foldHz } from '../signal/folding.ts';
 import { componentsOf } from './components.ts';
+import { cutAtBand } from './cut-piece.ts';
 import type { Arrival, Chain, LevelScale, SignalPath } from './model.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
@@ -17,6 +18,9 @@ const PLAINLY_LOW_DB = 60;
 const PLAINLY_UNDER_FULL_SCALE_DB = 120;
 const PLAINLY_UNDER_LIMIT_DB = 10;
 
+/** Frequencies nearer than this, relative to the rate, are the same. */
+const SAME_PLACE = 1e-9;
+
 /** Levels are compared with limits to this, so that one that is exactly at its limit is not over it. */
 export const LEVEL_ROUNDING_DB = 1e-9;
 
@@ -27,7 +31,7 @@ interface TracedSource {
 }
 
 interface NotedArrivals {
-  readonly question: Pick<Chain, 'bandLowHz' | 'bandHighHz' | 'scale'>;
+  readonly question: Pick<Chain, 'bandLowHz' | 'bandHighHz' | 'scale' | 'isBandpass'>;
   readonly heard: readonly HeardSource[];
   readonly arrivals: readonly Arrival[];
   /** The highest that folds into the band; `-Infinity` where nothing does. */
@@ -46,15 +50,20 @@ export function arrivalsOf(chain: Chain): readonly Arrival[] {
   const { heard } = chain.channel;
   for (const noted of notesOn(chain.path, ARRIVALS)) if (isSameQuestion(noted, chain)) return noted.arrivals;
   const arrivals: Arrival[] = [];
-  const { bandLowHz, bandHighHz, scale } = chain;
+  const { bandLowHz, bandHighHz, scale, isBandpass } = chain;
   let images: BandImages | undefined;
   const imagesOnce = (): BandImages => {
-    images ??= bandImages(chain.path, bandLowHz, bandHighHz);
+    images ??= bandImages(chain);
     return images;
   };
   for (const one of heard) addArrivals(arrivals, one, chain, imagesOnce);
   const highestFoldDb = highestFoldOf(arrivals);
-  note(chain.path, ARRIVALS, { question: { bandLowHz, bandHighHz, scale }, heard, arrivals, highestFoldDb });
+  note(chain.path, ARRIVALS, {
+    question: { bandLowHz, bandHighHz, scale, isBandpass },
+    heard,
+    arrivals,
+    highestFoldDb,
+  });
   return arrivals;
 }
 
@@ -69,6 +78,7 @@ function isSameQuestion({ question: before, heard, highestFoldDb }: NotedArrival
   return (
     before.bandHighHz === chain.bandHighHz &&
     before.bandLowHz === chain.bandLowHz &&
+    before.isBandpass === chain.isBandpass &&
     isSameScale(before.scale, chain.scale) &&
     isSameLimit(before.scale, chain.scale, highestFoldDb) &&
     isSameHearing(heard, chain.channel.heard)
@@ -107,7 +117,8 @@ function isSameHearing(first: readonly HeardSource[], second: readonly HeardSour
 function addArrivals(arrivals: Arrival[], heard: HeardSource, chain: Chain, images: () => BandImages): void {
   const levels = sourceLevelsOf(heard, chain.channel.sensor, chain.scale);
   const entersAtSensor = levels.entry === 'sensor';
-  for (const traced of tracedSource(chain.path, heard.source, entersAtSensor).parts) {
+  const { parts } = tracedSource(chain.path, heard.source, entersAtSensor);
+  for (const traced of chain.isBandpass ? partsOfBandpass(parts, chain) : parts) {
     const level = componentLevel(levels, traced.component);
     const landed =
       traced.kind === 'piece'
@@ -125,6 +136,34 @@ function tracedSource(path: SignalPath, source: Source, entersAtSensor: boolean)
   return note(path, TRACED, { source, entersAtSensor, parts });
 }
 
+/** What belongs to a band that is folded on purpose does not fold; everything else does, whatever the stage. */
+function partsOfBandpass(parts: readonly TracedPart[], chain: Chain): readonly TracedPart[] {
+  const { bandLowHz, bandHighHz } = chain;
+  return parts.flatMap((part): readonly TracedPart[] => {
+    if (part.kind !== 'piece') return [part];
+    const { inside, outside } = cutAtBand(part.piece, bandLowHz, bandHighHz);
+    const cut = (piece: FoldedPiece, isBesideBand: boolean): TracedPiece => ({
+      ...part,
+      piece,
+      isBesideBand,
+      whole: undefined,
+      surely: undefined,
+    });
+    const isBeside = movesWithBand(part.piece, chain);
+    const folded = outside.map((piece) => cut({ ...piece, foldsAtStage: piece.foldsAtStage ?? 1 }, isBeside));
+    return inside ? [cut({ ...inside, foldsAtStage: null }, false), ...folded] : folded;
+  });
+}
+
+/** Whether a piece is folded about the same frequency as the band is. */
+function movesWithBand(piece: FoldedPiece, { recordedBand, bandLowHz, rateHz }: Chain): boolean {
+  const { lowHz, highHz, mirrored } = recordedBand;
+  if (piece.mirrored !== mirrored) return false;
+  const band = mirrored ? bandLowHz + highHz : bandLowHz - lowHz;
+  const own = mirrored ? piece.trueLowHz + piece.recordedHighHz : piece.trueLowHz - piece.recordedLowHz;
+  return Math.abs(band - own) <= SAME_PLACE * rateHz;
+}
+
 /** What of a part lands in the band, or all of it where nothing does. */
 interface Landed {
   readonly inBand: boolean;
@@ -136,8 +175,10 @@ function landedPiece(traced: TracedPiece, entersAtSensor: boolean, componentDb: 
   const { piece } = traced;
   const { path } = chain;
   const slackHz = slackOf(piece, path.clockTolerance);
-  const landing = landingIn(piece, chain.bandLowHz - slackHz, chain.bandHighHz + slackHz);
+  const { recordedBand } = chain;
+  const landing = landingIn(piece, recordedBand.lowHz - slackHz, recordedBand.highHz + slackHz);
   const inBand = landing !== undefined;
+  if (traced.isBesideBand) return { inBand: false, slackHz, strongest: wholeOf(traced, entersAtSensor, path) };
   const isPart = landing !== undefined && (landing.from > 0 || landing.to < 1);
   const sure = isPart
     ? surelyTakenOff(path, piece, entersAtSensor, landing.from, landing.to)

@@ -1,4 +1,5 @@
-import { greatestPointAlong } from '../signal/cascade.ts';
+import { type Along, alongPiece, greatestPointAlong } from '../signal/cascade.ts';
+import { foldThrough } from '../signal/folding.ts';
 import type { Chain } from './model.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
 
@@ -16,30 +17,57 @@ export interface BandResponse {
 interface NotedBand {
   readonly bandLowHz: number;
   readonly bandHighHz: number;
+  readonly isBandpass: boolean;
   readonly response: BandResponse;
 }
+
+/** Of a band that crosses multiples of half the rate, which is an error anyway. */
+const MOST_PIECES = 16;
 
 const BANDS: NoteKind<NotedBand> = { name: 'response in the band', most: 24 };
 
 /** The extremes of a chain's response over its band, as far as the last Nyquist frequency lets it be recorded. */
 export function bandResponseOf(chain: Chain): BandResponse {
-  const { path, bandLowHz, bandHighHz } = chain;
+  const { path, bandLowHz, bandHighHz, isBandpass } = chain;
   for (const noted of notesOn(path, BANDS)) {
-    if (noted.bandHighHz === bandHighHz && noted.bandLowHz === bandLowHz) return noted.response;
+    const isSame = noted.bandHighHz === bandHighHz && noted.bandLowHz === bandLowHz && noted.isBandpass === isBandpass;
+    if (isSame) return noted.response;
   }
-  const lastNyquistHz = path.ratesHz[path.ratesHz.length - 1]! / 2;
-  const lowHz = Math.min(bandLowHz, lastNyquistHz);
-  const highHz = Math.min(bandHighHz, lastNyquistHz);
-  const at = (t: number): number => (t >= 1 ? highHz : lowHz + t * (highHz - lowHz));
-  const filters = path.known.flat().map((response) => ({ response, lowHz, highHz, reversed: false }));
-  const sag = filters.length === 0 ? { attenuationDb: 0, t: 0 } : greatestPointAlong(filters);
   const response: BandResponse = {
-    sagDb: sag.attenuationDb,
-    sagAtHz: at(sag.t),
+    ...(isBandpass ? foldedSag(chain) : nativeSag(chain)),
     liftDb: -path.sensor.leastDb(bandLowHz, bandHighHz),
     liftAtHz: liftedMost(chain),
   };
-  return note(path, BANDS, { bandLowHz, bandHighHz, response }).response;
+  return note(path, BANDS, { bandLowHz, bandHighHz, isBandpass, response }).response;
+}
+
+type Sag = Pick<BandResponse, 'sagDb' | 'sagAtHz'>;
+
+/** Every filter meets the band where it is. */
+function nativeSag({ path, bandLowHz, bandHighHz }: Chain): Sag {
+  const lastNyquistHz = path.ratesHz[path.ratesHz.length - 1]! / 2;
+  const lowHz = Math.min(bandLowHz, lastNyquistHz);
+  const highHz = Math.min(bandHighHz, lastNyquistHz);
+  return sagAlong(
+    path.known.flat().map((response) => ({ response, lowHz, highHz, reversed: false })),
+    lowHz,
+    highHz,
+  );
+}
+
+/** Each filter meets the band as folded so far, a piece at a time. */
+function foldedSag({ path, bandLowHz, bandHighHz }: Chain): Sag {
+  let worst: Sag = { sagDb: 0, sagAtHz: bandLowHz };
+  for (const piece of foldThrough(bandLowHz, bandHighHz, path.ratesHz, MOST_PIECES)) {
+    const sag = sagAlong(alongPiece(piece, path.known), piece.trueLowHz, piece.trueHighHz);
+    if (sag.sagDb > worst.sagDb) worst = sag;
+  }
+  return worst;
+}
+
+function sagAlong(filters: readonly Along[], lowHz: number, highHz: number): Sag {
+  const { attenuationDb, t } = filters.length === 0 ? { attenuationDb: 0, t: 0 } : greatestPointAlong(filters);
+  return { sagDb: attenuationDb, sagAtHz: t >= 1 ? highHz : lowHz + t * (highHz - lowHz) };
 }
 
 /** Where the sensor lifts most: at the resonance where that is in the band, otherwise at one of its ends. */

@@ -2,6 +2,7 @@ import type { Channel } from '../rig/model.ts';
 import { levelScaleOf } from './level-scale.ts';
 import type { Chain, SignalPath, Stage, StageFilter } from './model.ts';
 import { exactRate } from './reachable.ts';
+import { foldedBand } from './recorded-band.ts';
 import type { PlannedFilter } from './signal-path.ts';
 import { planOf, signalPathOf } from './signal-path.ts';
 
@@ -12,9 +13,11 @@ import { planOf, signalPathOf } from './signal-path.ts';
  * A written rate that the digitizer can make stands for the exact one; one that it can't make is taken as written.
  */
 export function chainOf(channel: Channel): Chain | undefined {
-  const { rateHz: rate, band } = channel;
-  if (!channel.complete || !rate || !band || !(rate.value > 0 && rate.value < Infinity) || !(band.value.highHz > 0))
-    return undefined;
+  const { rateHz: rate } = channel;
+  if (!channel.complete || !rate || !(rate.value > 0 && rate.value < Infinity)) return undefined;
+  // Of a pulse train all of the record is used.
+  const band = channel.band?.value ?? (channel.pulses && { lowHz: 0, highHz: rate.value / 2 });
+  if (!band || !(band.highHz > 0)) return undefined;
   const exact = exactRate(channel.digitizer, rate);
   const plan = planOf(channel);
   const rateHz = exact ?? rate.value;
@@ -32,7 +35,9 @@ export function chainOf(channel: Channel): Chain | undefined {
     };
   });
   const scale = levelScaleOf(channel);
-  const { lowHz, highHz } = band.value;
+  const { lowHz, highHz } = band;
+  const isBandpass = channel.sampling?.value === 'bandpass';
+  const recordedBand = isBandpass ? foldedBand(lowHz, highHz, path.ratesHz) : { lowHz, highHz, mirrored: false };
   return {
     channel,
     stages,
@@ -43,7 +48,9 @@ export function chainOf(channel: Channel): Chain | undefined {
     scale,
     bandLowHz: lowHz,
     bandHighHz: highHz,
-    margin: stages[stages.length - 1]!.nyquistHz / highHz,
+    recordedBand,
+    isBandpass,
+    margin: stages[stages.length - 1]!.nyquistHz / recordedBand.highHz,
     foldLimit: scale.foldLimit,
     levelUnit: scale.unit,
     path,

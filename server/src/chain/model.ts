@@ -1,5 +1,6 @@
 import type { Channel, FilterUse, Sensor, Source, Step } from '../rig/model.ts';
 import type { Response } from '../signal/response.ts';
+import type { RecordedBand } from './recorded-band.ts';
 
 /** One sampling of the chain: the converter's, or a decimation's. */
 export interface Stage {
@@ -73,7 +74,11 @@ export interface Chain {
   readonly scale: LevelScale;
   readonly bandLowHz: number;
   readonly bandHighHz: number;
-  /** Nyquist frequency of the last stage over the band's top. */
+  /** Where the band is in the record: itself, unless it is folded on purpose. */
+  readonly recordedBand: RecordedBand;
+  /** True where the band is folded on purpose. */
+  readonly isBandpass: boolean;
+  /** Nyquist frequency of the last stage over the top of the band as it is recorded. */
   readonly margin: number;
   /** On the scale of `levelUnit`. */
   readonly foldLimit: number;
@@ -103,6 +108,7 @@ export interface Arrival {
   readonly attenuationDb: number;
   /** The true frequency at which `level` is reached. */
   readonly atHz: number;
+  /** False too for what belongs to a band that is folded on purpose. */
   readonly folded: boolean;
   /** The first stage, from 1, at which it folded. */
   readonly foldsAtStage: number | null;

@@ -16,6 +16,8 @@ interface TracedBase {
 export interface TracedPiece extends TracedBase {
   readonly kind: 'piece';
   readonly piece: FoldedPiece;
+  /** True where it is beside a band that is folded on purpose, moves with it, and so never gets into it. */
+  readonly isBesideBand: boolean;
   /** Where the whole piece comes through best: worked out when it is first needed, and the same for all who need it. */
   whole: Strongest | undefined;
   /** What the whole piece is sure to lose, likewise. */
@@ -61,6 +63,7 @@ function piecesOf(base: TracedBase, pieces: readonly FoldedPiece[]): readonly Tr
     component,
     onNyquistAtStage,
     piece,
+    isBesideBand: false,
     whole: undefined,
     surely: undefined,
   }));

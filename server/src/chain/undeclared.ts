@@ -32,6 +32,7 @@ interface Bound {
 interface NotedLeast {
   readonly bandLowHz: number;
   readonly bandHighHz: number;
+  readonly isBandpass: boolean;
   readonly entersAtSensor: boolean;
   readonly least: readonly (Least | undefined)[];
 }
@@ -76,25 +77,25 @@ function boundOf({ channel, scale }: Chain): Bound {
 }
 
 function leastByStage(chain: Chain, bound: Bound): readonly (Least | undefined)[] {
-  const { path, bandLowHz, bandHighHz } = chain;
+  const { path, bandLowHz, bandHighHz, isBandpass } = chain;
   const entersAtSensor = bound.entersAtSensor && !path.sensorIsFlat;
   if (bound.curve) return searched(chain, entersAtSensor, bound.curve);
   for (const noted of notesOn(path, LEAST)) {
     const isSame =
-      noted.bandHighHz === bandHighHz && noted.bandLowHz === bandLowHz && noted.entersAtSensor === entersAtSensor;
+      noted.bandHighHz === bandHighHz &&
+      noted.bandLowHz === bandLowHz &&
+      noted.isBandpass === isBandpass &&
+      noted.entersAtSensor === entersAtSensor;
     if (isSame) return noted.least;
   }
   const least = searched(chain, entersAtSensor, undefined);
-  return note(path, LEAST, { bandLowHz, bandHighHz, entersAtSensor, least }).least;
+  return note(path, LEAST, { bandLowHz, bandHighHz, isBandpass, entersAtSensor, least }).least;
 }
 
-function searched(
-  { path, bandLowHz, bandHighHz }: Chain,
-  entersAtSensor: boolean,
-  curve: Response | undefined,
-): readonly (Least | undefined)[] {
+function searched(chain: Chain, entersAtSensor: boolean, curve: Response | undefined): readonly (Least | undefined)[] {
+  const { path } = chain;
   const ahead = [...path.known[0]!];
   if (entersAtSensor) ahead.push(path.sensor);
   if (curve) ahead.push(curve);
-  return worstFolds(bandImages(path, bandLowHz, bandHighHz), ahead);
+  return worstFolds(bandImages(chain), ahead);
 }

@@ -1,7 +1,7 @@
 import { type Along, leastPointAlong } from '../signal/cascade.ts';
 import { type FoldedPiece, foldsInto } from '../signal/folding.ts';
 import type { Response } from '../signal/response.ts';
-import type { SignalPath } from './model.ts';
+import type { Chain, SignalPath } from './model.ts';
 import { partOf } from './strongest.ts';
 
 /** The least that is taken off anything that folds into a band, and where that is. */
@@ -14,6 +14,8 @@ export interface Least {
 /** What folds into a band: every range below the first Nyquist frequency that ends there. */
 export interface BandImages {
   readonly path: SignalPath;
+  /** The band itself where it is folded on purpose: of what lands in the record's band, the one thing that is wanted. */
+  readonly spared: TrueRange | undefined;
   /** The least attenuated behind the first stage come first. */
   readonly images: readonly Image[];
 }
@@ -36,17 +38,21 @@ const MOST_SEARCHED = 1024;
 /** Where no more than this can be gained by looking on, the bound is taken: an equal ripple would never end. */
 const CLOSE_DB = 0.01;
 
+/** What has to be known of a chain to say what folds into its band. */
+type ImagedBand = Pick<Chain, 'path' | 'recordedBand' | 'isBandpass' | 'bandLowHz' | 'bandHighHz'>;
+
 /** Everything below the first Nyquist frequency of a path that ends in a band. */
-export function bandImages(path: SignalPath, bandLowHz: number, bandHighHz: number): BandImages {
+export function bandImages({ path, recordedBand, isBandpass, bandLowHz, bandHighHz }: ImagedBand): BandImages {
   const firstNyquistHz = path.ratesHz[0]! / 2;
-  const topHz = Math.min(bandHighHz, path.ratesHz[path.ratesHz.length - 1]! / 2);
-  const pieces = foldsInto(bandLowHz, topHz, path.ratesHz.slice(1), firstNyquistHz, MOST_IMAGES);
+  const topHz = Math.min(recordedBand.highHz, path.ratesHz[path.ratesHz.length - 1]! / 2);
+  const pieces = foldsInto(recordedBand.lowHz, topHz, path.ratesHz.slice(1), firstNyquistHz, MOST_IMAGES);
   const images = pieces.map((piece): Image => {
     let laterDb = 0;
     for (const { response, lowHz, highHz } of laterMembers(piece, path)) laterDb += response.leastDb(lowHz, highHz);
     return { piece, laterDb };
   });
-  return { path, images: images.sort((first, second) => first.laterDb - second.laterDb) };
+  const spared = isBandpass ? { lowHz: bandLowHz, highHz: bandHighHz } : undefined;
+  return { path, spared, images: images.sort((first, second) => first.laterDb - second.laterDb) };
 }
 
 /**
@@ -56,16 +62,18 @@ export function bandImages(path: SignalPath, bandLowHz: number, bandHighHz: numb
  * @param ahead the responses that see the true frequency, the filters ahead of the first stage among them
  */
 export function worstFolds(
-  { path, images }: BandImages,
+  { path, spared, images }: BandImages,
   ahead: readonly Response[],
   lowHz = 0,
   highHz = Infinity,
 ): readonly (Least | undefined)[] {
   const found: (Least | undefined)[] = path.ratesHz.map(() => undefined);
-  const firstZone = Math.max(1, Math.floor((2 * lowHz) / path.ratesHz[0]!));
+  // Of a band that is folded on purpose, what is native below half the rate is a stranger too.
+  const firstZone = Math.max(spared ? 0 : 1, Math.floor((2 * lowHz) / path.ratesHz[0]!));
   let searches = 0;
   const consider = (stage: number, image: Image, zone: number): void => {
     const range = trueRange(image, zone, path);
+    if (spared && isWithin(range, spared)) return;
     const low = Math.max(range.lowHz, lowHz);
     const high = Math.min(range.highHz, highHz);
     if (low > high) return;
@@ -83,7 +91,8 @@ export function worstFolds(
   for (const image of images) {
     // Stages count from 0 here, and the pieces' own from the second one.
     if (image.piece.foldsAtStage !== null) consider(image.piece.foldsAtStage, image, 0);
-    for (let count = 0; count <= MOST_ZONES; count++) {
+    const skipped = image.piece.foldsAtStage !== null && firstZone === 0 ? 1 : 0;
+    for (let count = skipped; count <= MOST_ZONES; count++) {
       const zone = firstZone + count;
       const beyondHz = Math.max(trueRange(image, zone, path).lowHz, lowHz);
       if (beyondHz > highHz) break;
@@ -107,6 +116,12 @@ function laterMembers(piece: FoldedPiece, { known, ratesHz }: SignalPath): reado
     const { lowHz, highHz, reversed } = index + 1 < ratesHz.length ? piece.inputs[index]! : recorded;
     return responses.map((response) => ({ response, lowHz, highHz, reversed }));
   });
+}
+
+/** Whether a range is no more than the band, the clock's tolerance apart. */
+function isWithin({ lowHz, highHz }: TrueRange, band: TrueRange): boolean {
+  const middle = (lowHz + highHz) / 2;
+  return middle > band.lowHz && middle < band.highHz;
 }
 
 interface TrueRange {

@@ -24,6 +24,7 @@ channels:
   sources: ['Shannon, Communication in the presence of noise, Proc. IRE 1949: the sampling theorem.'],
   run({ chain, channel }) {
     const { bandHighHz, stages } = chain;
+    if (chain.isBandpass) return SAYS_NOTHING;
     const index = stages.findIndex(({ nyquistHz }) => bandHighHz >= nyquistHz);
     if (index < 0) return SAYS_NOTHING;
     const stage = index + 1;

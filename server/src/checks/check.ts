@@ -1,4 +1,5 @@
 import type { BandResponse } from '../chain/band-response.ts';
+import type { ImageArrival } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import type { ChannelSpectrum } from '../chain/spectrum.ts';
 import type { UndeclaredFold } from '../chain/undeclared.ts';
@@ -45,6 +46,8 @@ export interface ChannelView {
   /** By stage: the worst that what no source declares may leave in the band. */
   readonly undeclared: readonly (UndeclaredFold | undefined)[];
   readonly bandResponse: BandResponse;
+  /** What uneven sampling makes of the sources, inside the band and above the fold limit. */
+  readonly images: readonly ImageArrival[];
   /** What is to be said of the filtering: at most one of three checks speaks. */
   readonly shortfall: Shortfall | undefined;
   /** What is expected at the input and what it takes, where both are known in volts. */

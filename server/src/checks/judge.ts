@@ -12,7 +12,7 @@ import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
 import { saidOfProblem, saidOfThing } from './document/problems.ts';
 import { type Finding, identityOf, SEVERITIES, type Severity } from './finding.ts';
-import { CHANNEL_CHECKS, RIG_CHECKS } from './list.ts';
+import { CHANNEL_CHECKS, PULSE_CHECKS, RIG_CHECKS } from './list.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
 import { viewOf } from './view.ts';
 
@@ -56,7 +56,7 @@ export function judgeWhile(
   const view = guard('chain', () => viewOf(channel), undefined);
   if (!view) return undefined;
   const findings: Finding[] = [];
-  for (const check of firstOf(first)) {
+  for (const check of firstOf(first, channel)) {
     const before = findings.length;
     runCheck(findings, check, view, severities, guard);
     for (let index = before; index < findings.length; index++) if (!mayStand(findings[index]!)) return undefined;
@@ -69,7 +69,7 @@ export function judgeWhile(
 
 /** What one check by itself says of a made-up channel. */
 export function judgeBy(checkName: string, channel: Channel, severities: Severities, guard: Guard): readonly Finding[] {
-  const check = CHANNEL_CHECKS.find(({ name }) => name === checkName);
+  const check = checksFor(channel).find(({ name }) => name === checkName);
   const view = check && guard('chain', () => viewOf(channel), undefined);
   if (!check || !view) return NO_FINDINGS;
   const findings: Finding[] = [];
@@ -77,9 +77,15 @@ export function judgeBy(checkName: string, channel: Channel, severities: Severit
   return findings;
 }
 
-/** All checks, the named one first. */
-function firstOf(checkName: string): readonly Check<'channel'>[] {
-  return [...CHANNEL_CHECKS].sort((one, other) => Number(other.name === checkName) - Number(one.name === checkName));
+function checksFor({ pulses }: Channel): readonly Check<'channel'>[] {
+  return pulses ? PULSE_CHECKS : CHANNEL_CHECKS;
+}
+
+/** All checks of a channel, the named one first. */
+function firstOf(checkName: string, channel: Channel): readonly Check<'channel'>[] {
+  return [...checksFor(channel)].sort(
+    (one, other) => Number(other.name === checkName) - Number(one.name === checkName),
+  );
 }
 
 /** What is said of no single channel, and what helps to say it faster after the next edit. */
@@ -127,7 +133,7 @@ export function* judgingRig(
 function judgeInto(findings: Finding[], channel: Channel, severities: Severities, guard: Guard): Chain | undefined {
   const view = guard('chain', () => viewOf(channel), undefined);
   if (!view) return undefined;
-  for (const check of CHANNEL_CHECKS) runCheck(findings, check, view, severities, guard);
+  for (const check of checksFor(channel)) runCheck(findings, check, view, severities, guard);
   runDigitalEdges(findings, view, severities, guard);
   return view.chain;
 }

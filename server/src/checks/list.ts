@@ -1,5 +1,6 @@
 import { bandDroop } from './band-droop.ts';
 import { bandOverNyquist } from './band-over-nyquist.ts';
+import { bandpassStraddles } from './bandpass-straddles.ts';
 import type { Check, CheckPage } from './check.ts';
 import { clips } from './clips.ts';
 import { diskShort } from './disk-short.ts';
@@ -9,11 +10,14 @@ import { foldHides } from './fold-hides.ts';
 import { foldInBand } from './fold-in-band.ts';
 import { foldUnlevelled } from './fold-unlevelled.ts';
 import { headroomThin } from './headroom-thin.ts';
+import { interleaveImage } from './interleave-image.ts';
 import { levelUnplaced } from './level-unplaced.ts';
 import { linesTooCoarse } from './lines-too-coarse.ts';
 import { linkShort } from './link-short.ts';
 import { noFilter } from './no-filter.ts';
 import { onNyquist } from './on-nyquist.ts';
+import { patternImage } from './pattern-image.ts';
+import { pulseMissed } from './pulse-missed.ts';
 import { rangeWasted } from './range-wasted.ts';
 import { rateOverConverter } from './rate-over-converter.ts';
 import { rateUnreachable } from './rate-unreachable.ts';
@@ -32,6 +36,7 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   rateOverConverter,
   bandOverNyquist,
   thinMargin,
+  bandpassStraddles,
   foldInBand,
   foldUnlevelled,
   filterShort,
@@ -39,6 +44,8 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   stepWithoutFilter,
   onNyquist,
   foldHides,
+  patternImage,
+  interleaveImage,
   bandDroop,
   clips,
   headroomThin,
@@ -47,6 +54,17 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   levelUnplaced,
   linesTooCoarse,
   windowLeaks,
+  pulseMissed,
+];
+
+/** What is asked of a channel that is a pulse train: it is read for its edges, and nothing in it folds or sags. */
+export const PULSE_CHECKS: readonly Check<'channel'>[] = [
+  rateUnreachable,
+  rateOverConverter,
+  clips,
+  headroomThin,
+  rangeWasted,
+  pulseMissed,
 ];
 
 /** The checks over many channels. */

@@ -83,7 +83,8 @@ function isToBeSaid({ arrival: { level, inBand, nominalHz }, stage }: Standing, 
   if (level <= chain.foldLimit + LEVEL_ROUNDING_DB) return false;
   if (inBand || nominalHz === undefined) return inBand;
   const pointHz = recordedPointHz(nominalHz, stage, chain.ratesHz);
-  return pointHz >= chain.bandLowHz && pointHz <= chain.bandHighHz;
+  const { lowHz, highHz } = chain.recordedBand;
+  return pointHz >= lowHz && pointHz <= highHz;
 }
 
 function saidOf({ arrival, stage, withinOneLine }: Standing, chain: Chain, lineHz: number): Said {

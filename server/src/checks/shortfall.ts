@@ -22,11 +22,12 @@ export function shortfallOf(view: View): Shortfall | undefined {
   const first = view.undeclared[0];
   if (first && isOver(view, first) && lacksFilter(view)) return { kind: 'no-filter', fold: first };
   // Where the band itself does not fit below half the rate, that is what has to be said.
-  if (chain.stages.some(({ nyquistHz }) => chain.bandHighHz >= nyquistHz)) return undefined;
+  if (!chain.isBandpass && chain.stages.some(({ nyquistHz }) => chain.bandHighHz >= nyquistHz)) return undefined;
   const worst = worstShort(view);
   if (!worst) return undefined;
   const margin = chain.stages[worst.stage - 1]!.nyquistHz / chain.bandHighHz;
-  if (margin < COMMON_MARGIN - MARGIN_ROUNDING) return { kind: 'thin-margin', fold: worst, margin };
+  if (!chain.isBandpass && margin < COMMON_MARGIN - MARGIN_ROUNDING)
+    return { kind: 'thin-margin', fold: worst, margin };
   return { kind: 'filter-short', fold: worst, isHint: isOnlyHint(view, worst) };
 }
 

@@ -1,6 +1,7 @@
 import { arrivalsOf } from '../chain/arrivals.ts';
 import { type BandResponse, bandResponseOf } from '../chain/band-response.ts';
 import { chainOf } from '../chain/chain.ts';
+import { type ImageArrival, imageArrivalsOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
 import { type UndeclaredFold, undeclaredFolds } from '../chain/undeclared.ts';
@@ -21,6 +22,7 @@ class View implements ChannelView {
   readonly chain: Chain;
   #arrivals: readonly Arrival[] | undefined;
   #undeclared: readonly (UndeclaredFold | undefined)[] | undefined;
+  #images: readonly ImageArrival[] | undefined;
   #bandResponse: BandResponse | undefined;
   #shortfall: { readonly of: Shortfall | undefined } | undefined;
   #spectrum: { readonly of: ChannelSpectrum | undefined } | undefined;
@@ -39,6 +41,11 @@ class View implements ChannelView {
   get undeclared(): readonly (UndeclaredFold | undefined)[] {
     this.#undeclared ??= undeclaredFolds(this.chain);
     return this.#undeclared;
+  }
+
+  get images(): readonly ImageArrival[] {
+    this.#images ??= imageArrivalsOf(this.chain);
+    return this.#images;
   }
 
   get bandResponse(): BandResponse {

@@ -41,7 +41,13 @@ function headline(chain: Chain, judged: JudgedChannel): string {
   const last = chain.stages.at(-1)!;
   const counts = judged.result.findings.length;
   const verdict = counts === 0 ? 'clean' : counts === 1 ? '1 finding' : `${counts} findings`;
-  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · band to ${formatHz(chain.bandHighHz)} · margin ${chain.margin.toFixed(2)} · ${verdict}`;
+  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}`;
+}
+
+function bandText({ isBandpass, bandHighHz, recordedBand }: Chain): string {
+  if (!isBandpass) return `band to ${formatHz(bandHighHz)}`;
+  const { lowHz, highHz, mirrored } = recordedBand;
+  return `band recorded at ${formatHz(lowHz)} .. ${formatHz(highHz)}${mirrored ? ', upside down' : ''}`;
 }
 
 function arrivalsTable(chain: Chain, arrivals: readonly Arrival[]): string {

@@ -13,6 +13,9 @@ import type { Palette } from './palette.ts';
 import { element, short } from './svg.ts';
 import { LABEL, labelGroup, SMALL, text } from './text-svg.ts';
 
+/** Fold lines of images are lighter than the record's own. */
+const IMAGE_WIDTH = 0.8;
+
 /** The upper part of an alias map: the fold line over true frequency, the band across, what arrives as marks. */
 export function foldMapSvg(map: AliasMap, layout: MapLayout, palette: Palette): string {
   const { trueAxes, recordedAxis } = layout;
@@ -34,6 +37,11 @@ export function foldMapSvg(map: AliasMap, layout: MapLayout, palette: Palette): 
   return [
     bandStrip(map, layout, palette),
     grid(map, layout, palette),
+    ...map.stretches.flatMap(({ images }, index) =>
+      images.map((line) =>
+        foldLineSvg(line, trueAxes[index]!, recordedAxis, map.fadedAtDb, { ...palette, faintest: 0 }, IMAGE_WIDTH),
+      ),
+    ),
     ...map.stretches.map(({ line }, index) =>
       foldLineSvg(line, trueAxes[index]!, recordedAxis, map.fadedAtDb, palette),
     ),

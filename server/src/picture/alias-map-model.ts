@@ -1,8 +1,10 @@
+import { type ImageArrival, imageArrivalsOf, imageRulesOf, shiftOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { formatHz } from '../quantity/write.ts';
+import { decibels } from '../signal/decibel.ts';
 import type { MarkKind } from './arrival-words.ts';
 import { clippedName, kindOf, labelOf } from './arrival-words.ts';
-import type { FoldLine, FoldPoint } from './fold-line.ts';
+import type { FoldLine, FoldPoint, LineImage } from './fold-line.ts';
 import { foldLineOf, pointAt } from './fold-line.ts';
 import type { Stretch } from './stretches.ts';
 import { stretchesOf } from './stretches.ts';
@@ -40,7 +42,11 @@ export interface AliasMap {
   readonly ratesHz: readonly number[];
   readonly bandLowHz: number;
   readonly bandHighHz: number;
-  readonly stretches: readonly (Stretch & { readonly line: FoldLine })[];
+  readonly stretches: readonly (Stretch & {
+    readonly line: FoldLine;
+    /** Of the images that uneven sampling makes, the highest few. */
+    readonly images: readonly FoldLine[];
+  })[];
   readonly marks: readonly Mark[];
   readonly foldLimit: number;
   readonly levelUnit: string;
@@ -55,14 +61,16 @@ export interface AliasMap {
 /** More marks than this make a picture that nobody reads; the lightest are left out and counted. */
 const MOST_MARKS = 160;
 const LEAST_FADE_DB = 40;
+const MOST_IMAGE_LINES = 6;
 
 /** What the picture of a channel's alias map shows. */
 export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
   const last = chain.stages.at(-1)!;
-  const marks = arrivals
-    .filter(({ level }) => Number.isFinite(level))
-    .map((arrival) => markOf(arrival, chain))
-    .sort((a, b) => b.weight - a.weight);
+  const images = imagesShown(chain);
+  const marks = [
+    ...arrivals.filter(({ level }) => Number.isFinite(level)).map((arrival) => markOf(arrival, chain)),
+    ...imageArrivalsOf(chain).map((image) => markOfImage(image, chain)),
+  ].sort((a, b) => b.weight - a.weight);
   const shown = marks.slice(0, MOST_MARKS);
   const levels = shown.map(({ level }) => level);
   const limit = Number.isFinite(chain.foldLimit) ? chain.foldLimit : 0;
@@ -74,11 +82,12 @@ export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): Alias
     recordRateHz: last.rateHz,
     nyquistHz: last.nyquistHz,
     ratesHz: chain.ratesHz,
-    bandLowHz: chain.bandLowHz,
-    bandHighHz: chain.bandHighHz,
+    bandLowHz: chain.recordedBand.lowHz,
+    bandHighHz: chain.recordedBand.highHz,
     stretches: stretchesOf(chain, arrivals).map((stretch) => ({
       ...stretch,
       line: foldLineOf(chain, stretch.lowHz, stretch.highHz),
+      images: images.map((image) => foldLineOf(chain, stretch.lowHz, stretch.highHz, image)),
     })),
     marks: shown,
     foldLimit: limit,
@@ -108,6 +117,33 @@ function markOf(arrival: Arrival, chain: Chain): Mark {
     level: arrival.level,
     inBand: arrival.inBand,
     weight: rank + Math.max(-900, Math.min(900, arrival.level)),
+  };
+}
+
+/** Of images at the same place the higher one; the lines of more than a few would be a thicket. */
+function imagesShown(chain: Chain): readonly LineImage[] {
+  return imageRulesOf(chain)
+    .map((rule) => ({ shiftHz: shiftOf(rule, chain), lossDb: -decibels(rule.ratioAt(chain.bandHighHz)) }))
+    .sort((first, second) => first.lossDb - second.lossDb)
+    .slice(0, MOST_IMAGE_LINES);
+}
+
+function markOfImage(image: ImageArrival, chain: Chain): Mark {
+  const line = { shiftHz: image.shiftHz, lossDb: 0 };
+  return {
+    kind: 'spoils',
+    sourceName: clippedName(image.source.name),
+    label: `${clippedName(image.source.name)} image`,
+    trueText: spanText(image.trueLowHz, image.trueHighHz),
+    recordedText: spanText(image.recordedLowHz, image.recordedHighHz),
+    from: pointAt(chain, image.trueLowHz, line),
+    to: pointAt(chain, image.trueHighHz, line),
+    isOnLine: true,
+    recordedLowHz: image.recordedLowHz,
+    recordedHighHz: image.recordedHighHz,
+    level: image.level,
+    inBand: true,
+    weight: 3_000 + Math.max(-900, Math.min(900, image.level)),
   };
 }
 
@@ -152,7 +188,7 @@ function describe(chain: Chain, arrivals: readonly Arrival[]): string {
   const spoiling = arrivals.filter(({ overLimit }) => overLimit).sort((a, b) => b.level - a.level);
   const folded = arrivals.filter((arrival) => arrival.folded && !arrival.overLimit).length;
   const native = arrivals.filter((arrival) => !arrival.folded).length;
-  const record = `The record of ${chain.channel.name} is sampled at ${formatHz(chain.stages.at(-1)!.rateHz)}; its band is ${formatHz(chain.bandLowHz)} to ${formatHz(chain.bandHighHz)}.`;
+  const record = `The record of ${chain.channel.name} is sampled at ${formatHz(chain.stages.at(-1)!.rateHz)}; its band is ${formatHz(chain.bandLowHz)} to ${formatHz(chain.bandHighHz)}${foldedBandText(chain)}.`;
   const told = spoiling
     .slice(0, 3)
     .map(
@@ -161,7 +197,16 @@ function describe(chain: Chain, arrivals: readonly Arrival[]): string {
     );
   const more = spoiling.length > 3 ? [`${spoiling.length - 3} more fold into the band over the limit.`] : [];
   const rest = `${count(folded, 'arrival folds', 'arrivals fold')} without harm, ${count(native, 'arrives', 'arrive')} unfolded.`;
-  return [record, ...told, ...more, rest].join(' ');
+  const images = imageArrivalsOf(chain).length;
+  const uneven =
+    images === 0 ? [] : [`Uneven sampling puts ${count(images, 'image', 'images')} into the band over the limit.`];
+  return [record, ...told, ...more, ...uneven, rest].join(' ');
+}
+
+function foldedBandText({ isBandpass, recordedBand }: Chain): string {
+  if (!isBandpass) return '';
+  const { lowHz, highHz, mirrored } = recordedBand;
+  return `, recorded at ${formatHz(lowHz)} to ${formatHz(highHz)}${mirrored ? ', upside down' : ''}`;
 }
 
 function spanOf({ recordedLowHz, recordedHighHz }: Arrival): string {

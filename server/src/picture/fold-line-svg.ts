@@ -18,6 +18,7 @@ export function foldLineSvg(
   recordedAxis: Axis,
   fadedAtDb: number,
   palette: Palette,
+  width = 1.7,
 ): string {
   if (line.length === 0) return '';
   const stops = fadeStops(line, fadedAtDb, palette.faintest).map(({ trueHz, opacity }) =>
@@ -39,7 +40,7 @@ export function foldLineSvg(
     .join('');
   return (
     element('linearGradient', { id, ...gradient }, stops.join('')) +
-    element('path', { d, stroke: `url(#${id})`, 'stroke-width': 1.7, 'stroke-linejoin': 'round', fill: 'none' })
+    element('path', { d, stroke: `url(#${id})`, 'stroke-width': width, 'stroke-linejoin': 'round', fill: 'none' })
   );
 }
 

@@ -19,6 +19,7 @@ export const narrowBand: RemedyDefinition = {
   why: 'What folds beside the band spoils nothing. It is a remedy only if the test can do without the part of the band that is given up.',
   answers: [
     'band-over-nyquist',
+    'bandpass-straddles',
     'thin-margin',
     'fold-in-band',
     'fold-unlevelled',
@@ -26,6 +27,8 @@ export const narrowBand: RemedyDefinition = {
     'no-filter',
     'step-without-filter',
     'on-nyquist',
+    'pattern-image',
+    'interleave-image',
     'band-droop',
     'resonance-in-band',
   ],

@@ -1,3 +1,4 @@
+import { chainOf } from '../chain/chain.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { Channel } from '../rig/model.ts';
 import type { Proposal, RemedyDefinition } from './definition.ts';
@@ -19,9 +20,13 @@ export const sampleElsewhere: RemedyDefinition = {
     'rate-unreachable',
     'rates-conflict',
     'rate-over-converter',
+    'bandpass-straddles',
     'fold-in-band',
     'fold-unlevelled',
     'on-nyquist',
+    'pulse-missed',
+    'pattern-image',
+    'interleave-image',
     'filter-short',
     'thin-margin',
   ],
@@ -34,7 +39,26 @@ function searchElsewhere(search: Search): readonly Proposal[] {
   if (!channel || today === undefined) return [];
   if (context.finding.check === 'rates-conflict') return neighbourRates(search, channel, today);
   const found = firstCured(search, nearestFirst(channel, today), (hz) => sampledAt(channel, hz));
+  if (found?.after.chain?.recordedBand.mirrored) {
+    // The right way up is worth a rate that is a little further off.
+    const upright = firstCured(search, nearestFirst(channel, today), (hz) => uprightAt(channel, hz));
+    if (upright) return [upright, found].flatMap(({ value }) => bandpassProposal(search, channel, today, value));
+  }
   return found ? proposal(search, today, found.value, outcomeOf(search, found.after)) : [];
+}
+
+/** The channel at another rate, if that records its band the right way up. */
+function uprightAt(channel: Channel, hz: number): Channel | undefined {
+  const other = sampledAt(channel, hz);
+  return other && !chainOf(other)?.recordedBand.mirrored ? other : undefined;
+}
+
+function bandpassProposal(search: Search, channel: Channel, today: number, hz: number): readonly Proposal[] {
+  const other = sampledAt(channel, hz);
+  const band = other && chainOf(other)?.recordedBand;
+  if (!band) return [];
+  const where = `the band is recorded at ${formatHz(band.lowHz)} .. ${formatHz(band.highHz)}`;
+  return proposal(search, today, hz, band.mirrored ? `${where}, upside down` : where);
 }
 
 /** The reachable rates on both sides, the nearest first. */

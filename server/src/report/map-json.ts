@@ -1,3 +1,4 @@
+import { imageArrivalsOf, imageRulesOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { reported } from './number.ts';
 
@@ -12,9 +13,25 @@ export function mapJson(file: string, chain: Chain, arrivals: readonly Arrival[]
     margin: reported(chain.margin),
     ...levelKey('foldLimit', chain, chain.foldLimit),
     arrivals: arrivals.map((arrival) => arrivalJson(arrival, chain)),
+    ...imagesKey(chain),
     findings,
   };
   return `${JSON.stringify(map, undefined, 2)}\n`;
+}
+
+/** What uneven sampling puts into the band over the limit; nothing is said of images where all samples are kept. */
+function imagesKey(chain: Chain): object {
+  if (imageRulesOf(chain).length === 0) return {};
+  return {
+    images: imageArrivalsOf(chain).map((image) => ({
+      source: image.source.name,
+      component: image.component,
+      trueHz: [reported(image.trueLowHz), reported(image.trueHighHz)],
+      recordedHz: [reported(image.recordedLowHz), reported(image.recordedHighHz)],
+      shiftHz: reported(image.shiftHz),
+      ...levelKey('level', chain, image.level),
+    })),
+  };
 }
 
 function arrivalJson(arrival: Arrival, chain: Chain): object {

@@ -28,6 +28,12 @@ export const MOST_HARMONICS = 1_000;
 /** Pairs of sidebands of one source. */
 export const MOST_SIDEBANDS = 1_000;
 
+/** Slots of one turn of a pattern of samples. */
+export const MOST_PATTERN_SLOTS = 100_000;
+
+/** Converters that take turns. */
+export const MOST_CONVERTERS = 1_000;
+
 /** Syntax findings of one file. */
 export const MOST_SYNTAX_FINDINGS = 200;
 

@@ -1,5 +1,8 @@
 import type { Quantity } from '../quantity/quantity.ts';
 import type { FilterShape } from '../signal/filter-spec.ts';
+import type { Interleave } from '../signal/interleave.ts';
+import type { SlotPattern } from '../signal/pattern.ts';
+import type { PulseTrain } from '../signal/pulse-train.ts';
 import type { RecordLength } from '../signal/spectrum-plan.ts';
 import type { WindowName } from '../signal/windows.ts';
 import type { Place } from './place.ts';
@@ -68,6 +71,7 @@ export interface Digitizer extends Thing {
   /** The converter's internal rate as a multiple of the channel's. */
   readonly modulatorMultiple: Given<number> | undefined;
   readonly decimationFilter: FilterUse | undefined;
+  readonly interleave: Given<Interleave> | undefined;
 }
 
 export type ListedRates =
@@ -272,7 +276,8 @@ export interface Run {
  * A channel with everything it names resolved and everything it inherits filled in.
  *
  * A field is `undefined` where the text does not give it or gives it unreadably; the latter has been said as a
- * problem. `complete` is false where `rate` or `band` is missing: such a channel is not checked further.
+ * problem. `complete` is false where `rate` or `band` is missing (a pulse train needs no band): such a channel is not checked
+ * further.
  */
 export interface Channel extends Thing {
   readonly kind: 'channel';
@@ -288,8 +293,14 @@ export interface Channel extends Thing {
   readonly filters: readonly FilterUse[];
   /** The place of the `filter` key's value, also where it says `none`. */
   readonly filterPlace: Place | undefined;
+  /** Of the converter's samples, those that are kept; `undefined` for all. */
+  readonly pattern: Given<SlotPattern> | undefined;
   readonly steps: readonly Step[];
+  /** Where the channel is a pulse train; what is said of folding and filters does not apply to one. */
+  readonly pulses: Given<PulseTrain> | undefined;
   readonly band: Given<FrequencyRange> | undefined;
+  /** `bandpass` where the band is folded on purpose. */
+  readonly sampling: Given<'baseband' | 'bandpass'> | undefined;
   readonly foldLimit: Given<Limit> | undefined;
   readonly undeclared: Given<Undeclared> | undefined;
   readonly flatnessDb: Given<number> | undefined;

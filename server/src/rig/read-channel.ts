@@ -16,9 +16,11 @@ import type { Channel, Given, Level, Limit, Peak, Sensor, Undeclared } from './m
 import { findThing } from './names.ts';
 import type { Place } from './place.ts';
 import { readFrequencyRange, readFullScale, readValue } from './quantities.ts';
+import { readPulses } from './read-pulses.ts';
 import { readSensor, SENSOR_KEYS } from './read-sensor.ts';
 import { readSpectrum } from './read-spectrum.ts';
 import { readSteps } from './read-steps.ts';
+import { readPattern } from './read-uneven.ts';
 import type { Reader } from './reader.ts';
 import type { MapNode } from './tree.ts';
 import { checkUncomputed } from './uncomputed.ts';
@@ -37,8 +39,8 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
   const digitizer = digitizerField && digitizerNode && findThing(reader, digitizerField, digitizerNode, 'digitizer');
   const rateHz = readValue(reader, byKey.get('rate'));
   const band = readFrequencyRange(reader, byKey.get('band'));
+  const pulses = readPulses(reader, byKey.get('pulses'));
   const hears = readHears(reader, byKey.get('hears'), sensor?.thing);
-  const bandpass = readChoice(reader, byKey.get('sampling'))?.value === 'bandpass';
   const filterField = byKey.get('filter');
   const resolveField = byKey.get('resolve');
   checkUncomputed(reader, fields);
@@ -47,8 +49,7 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
     kind: 'channel',
     name: reader.entry.name,
     place: namePlace(reader.entry),
-    // Of what is sampled for its edges, or folded on purpose, this version can say nothing that holds.
-    complete: rateHz !== undefined && band !== undefined && !bandpass && !byKey.has('pulses'),
+    complete: rateHz !== undefined && (band !== undefined || pulses !== undefined),
     sensor: sensor?.thing,
     sensorPlace: sensor?.place,
     digitizer,
@@ -58,8 +59,11 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
     fullScale: readFullScale(reader, byKey.get('full-scale')),
     filters: isNone(filterField) ? [] : readFilterUses(reader, filterField, 'analogue'),
     filterPlace: filterField && placeOf(filterField.entry, filterField.node),
+    pattern: readPattern(reader, byKey.get('pattern')),
+    pulses,
     steps: readSteps(reader, byKey.get('then')),
     band,
+    sampling: readChoice(reader, byKey.get('sampling')),
     foldLimit: readFoldLimit(reader, byKey.get('fold-limit'), sensor?.thing),
     undeclared: readUndeclared(reader, byKey.get('undeclared'), sensor?.thing),
     flatnessDb: readValue(reader, byKey.get('flatness')),

@@ -3,6 +3,7 @@ import { readFilterUse, readFilterUses } from './filter-uses.ts';
 import type { Digitizer, FullScale, Given, ListedRates } from './model.ts';
 import { findThing } from './names.ts';
 import { readEnds, readFullScale, readValue } from './quantities.ts';
+import { readInterleave } from './read-uneven.ts';
 import type { Reader } from './reader.ts';
 import { checkUncomputed } from './uncomputed.ts';
 import { alternative, given, readChoice, readNumber, readNumbers, reportWrongKind, scalarOf } from './values.ts';
@@ -32,6 +33,7 @@ export function readDigitizer(reader: Reader): Digitizer {
     lowCornerHz: readValue(reader, field('low-corner')),
     filters: readFilterUses(reader, field('filter'), 'analogue'),
     modulatorMultiple: readValue(reader, field('modulator')),
+    interleave: readInterleave(reader, field('interleave')),
     decimationFilter: decimation && hasValue(decimation) ? readFilterUse(reader, decimation, 'digital') : undefined,
   };
 }

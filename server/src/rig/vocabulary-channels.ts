@@ -90,13 +90,10 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
   row(
     'channel',
     'sampling',
-    choice(
-      {
-        baseband: 'The band lies below the Nyquist frequency.',
-        bandpass: 'The band is folded on purpose.',
-      },
-      ['bandpass'],
-    ),
+    choice({
+      baseband: 'The band lies below the Nyquist frequency.',
+      bandpass: 'The band is folded on purpose.',
+    }),
     'baseband',
     'Whether the band is sampled as it is, or folded on purpose.',
     { default: 'baseband' },
@@ -142,7 +139,7 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     mapOf('pattern'),
     '{ of: 10, take: [0, 1, 2, 3] }',
     'Of every so many sample slots, only some are kept.',
-    { default: 'all are kept', computed: false },
+    { default: 'all are kept' },
   ),
   row(
     'channel',
@@ -150,7 +147,6 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     mapOf('pulses'),
     '{ per-turn: 60, speed: 600..3000 rpm, duty: 50 % }',
     'A pulse train that is read for its edges; what is said of folding and filters does not apply to it.',
-    { computed: false },
   ),
   row(
     'channel',
@@ -176,16 +172,15 @@ const STEP_ROWS: readonly KeyRow[] = [
 const PULSES_ROWS: readonly KeyRow[] = [
   row('pulses', 'per-turn', integer({ low: 1 }), '60', 'The number of pulses in one turn.', {
     required: true,
-    computed: false,
   }),
-  row('pulses', 'speed', SPEED, '600..3000 rpm', "The shaft's speed.", { required: true, computed: false }),
+  row('pulses', 'speed', SPEED, '600..3000 rpm', "The shaft's speed.", { required: true }),
   row(
     'pulses',
     'duty',
     quantity('ratio', '%', { bounds: { low: 0, lowExcluded: true, high: 1, highExcluded: true } }),
     '50 %',
     'The part of each period during which the pulse is high.',
-    { default: '50 %', computed: false },
+    { default: '50 %' },
   ),
 ];
 

@@ -1,3 +1,4 @@
+import { MOST_CONVERTERS, MOST_PATTERN_SLOTS } from './limits.ts';
 import type { KeyRow, ThingKind, ValueKind } from './vocabulary-kinds.ts';
 import {
   choice,
@@ -173,25 +174,35 @@ export const RIG_ROWS: readonly KeyRow[] = [
 
 /** The keys of a chopped-up or interleaved record's own small maps. */
 export const PATTERN_ROWS: readonly KeyRow[] = [
-  row('pattern', 'of', integer({ low: 1 }), '10', 'The number of sample slots in one turn of the pattern.', {
-    required: true,
-    computed: false,
-  }),
+  row(
+    'pattern',
+    'of',
+    integer({ low: 1, high: MOST_PATTERN_SLOTS }),
+    '10',
+    'The number of sample slots in one turn of the pattern.',
+    {
+      required: true,
+    },
+  ),
   row('pattern', 'take', listOf(integer(NOT_NEGATIVE)), '[0, 1, 2, 3]', 'The slots that are kept, counted from 0.', {
     required: true,
-    computed: false,
   }),
-  row('interleave', 'converters', integer({ low: 2 }), '4', 'The number of converters that take turns.', {
-    required: true,
-    computed: false,
-  }),
+  row(
+    'interleave',
+    'converters',
+    integer({ low: 2, high: MOST_CONVERTERS }),
+    '4',
+    'The number of converters that take turns.',
+    {
+      required: true,
+    },
+  ),
   row(
     'interleave',
     'gain-mismatch',
     quantity('ratio', '%', { bounds: NOT_NEGATIVE }),
     '0.1 %',
     'How far their gains differ, rms about the mean.',
-    { computed: false },
   ),
   row(
     'interleave',
@@ -199,7 +210,6 @@ export const PATTERN_ROWS: readonly KeyRow[] = [
     quantity('time', 's', { bounds: NOT_NEGATIVE }),
     '2 ps',
     'How far their sampling instants differ, rms about the mean.',
-    { computed: false },
   ),
   row(
     'interleave',
@@ -207,6 +217,5 @@ export const PATTERN_ROWS: readonly KeyRow[] = [
     quantity('ratio', '%', { bounds: NOT_NEGATIVE }),
     '0.05 %',
     'How far their offsets differ, rms about the mean, of full scale.',
-    { computed: false },
   ),
 ];

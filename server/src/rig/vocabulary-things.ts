@@ -189,7 +189,6 @@ const DIGITIZER_ROWS: readonly KeyRow[] = [
     mapOf('interleave'),
     '{ converters: 4, gain-mismatch: 0.1 % }',
     'Several converters that take turns, and how far they differ.',
-    { computed: false },
   ),
 ];
 

@@ -115,7 +115,7 @@ export const DOCUMENT_PAGES: readonly (CheckPage & { readonly name: ProblemName 
     'hint',
     'A key that is known and that this version does not compute, once for each key of a file.',
     'Its value is read and checked, and nothing is concluded from it: what it does to the data is not in the findings.',
-    'rig: Fan bearing\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 2 kHz, pattern: { of: 2, take: [0] } }\n',
+    'rig: Fan bearing\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 2 kHz, then: [{ per-turn: 64 }] }\n',
     'rig: Fan bearing\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 2 kHz }\n',
   ),
 ];

@@ -1,0 +1,182 @@
+import type { Source } from '../rig/model.ts';
+import { decibels } from '../signal/decibel.ts';
+import type { FoldedPiece } from '../signal/folding.ts';
+import { mismatchRatio } from '../signal/interleave.ts';
+import { patternImages } from '../signal/pattern.ts';
+import { coincidenceOf, foldShifted, partnerOf, shiftHzOf } from '../signal/shifted-folding.ts';
+import { componentsOf } from './components.ts';
+import type { Chain } from './model.ts';
+import { componentLevel, sourceLevelsOf } from './source-level.ts';
+import { strongestOf } from './strongest.ts';
+
+/**
+ * Images that uneven sampling makes: of what arrives at a frequency, another at so many hertz beside it, that much
+ * lower.
+ */
+export interface ImageRule {
+  readonly kind: 'pattern' | 'interleave';
+  /** It stands k / turns of the first rate above what it is an image of. */
+  readonly k: number;
+  /** Slots of the pattern, or converters. */
+  readonly turns: number;
+  /** Height over the original's, at a true frequency in Hz. */
+  readonly ratioAt: (hz: number) => number;
+  /** What another image of a single tone adds where the two coincide, at worst in phase. */
+  readonly partnerGain: (hz: number, rateHz: number) => number;
+}
+
+/** An image of a component of a source that lands in the band. */
+export interface ImageArrival {
+  readonly kind: ImageRule['kind'];
+  readonly source: Source;
+  readonly component: string;
+  /** Where the original is. */
+  readonly trueLowHz: number;
+  readonly trueHighHz: number;
+  readonly recordedLowHz: number;
+  readonly recordedHighHz: number;
+  /** The highest of the part that lands in the band, on the chain's scale. */
+  readonly level: number;
+  /** The true frequency at which that is reached. */
+  readonly atHz: number;
+  readonly levelKnown: boolean;
+  readonly shiftHz: number;
+}
+
+/** An image of the band itself that lands in the band. */
+export interface BandImage {
+  readonly kind: ImageRule['kind'];
+  /** What the image loses, dB. */
+  readonly lossDb: number;
+  readonly shiftHz: number;
+  readonly recordedLowHz: number;
+  readonly recordedHighHz: number;
+}
+
+/** Images that are followed; the highest come first. */
+const MOST_RULES = 512;
+const MOST_FOLLOWED = 20_000;
+const MOST_PIECES = 16;
+
+/** Every image that the channel's pattern and its digitizer's converters make, the highest of each first. */
+export function imageRulesOf({ channel }: Chain): readonly ImageRule[] {
+  const rules: ImageRule[] = [];
+  const pattern = channel.pattern?.value;
+  const images = pattern && patternImages(pattern);
+  if (images?.kind === 'gains') {
+    const { gains, slots } = images;
+    // The first is the record itself.
+    for (const k of images.strongest.slice(1, 1 + MOST_RULES)) {
+      const partnerGain = (hz: number, rateHz: number): number => {
+        const coincidence = coincidenceOf(hz, rateHz, slots);
+        const partner = coincidence === undefined ? k : partnerOf(k, coincidence, slots);
+        return partner === k ? 0 : gains[partner]!;
+      };
+      rules.push({ kind: 'pattern', k, turns: slots, ratioAt: () => gains[k]!, partnerGain });
+    }
+  }
+  const mismatch = channel.digitizer?.interleave?.value;
+  if (mismatch && (mismatch.gainMismatch > 0 || mismatch.timingMismatchS > 0)) {
+    const ratioAt = (hz: number): number => mismatchRatio(hz, mismatch);
+    for (let k = 1; k < Math.min(mismatch.converters, MOST_RULES); k++) {
+      rules.push({ kind: 'interleave', k, turns: mismatch.converters, ratioAt, partnerGain: () => 0 });
+    }
+  }
+  return rules;
+}
+
+/** How far beside what it is an image of, in Hz. */
+export function shiftOf({ k, turns }: ImageRule, { ratesHz }: Chain): number {
+  return shiftHzOf(k, ratesHz[0]!, turns);
+}
+
+/**
+ * Every image of everything that the channel hears, as far as it lands in the band above the fold limit. What lies
+ * behind the converter sees an image where it is; what lies before it saw the original.
+ */
+export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
+  const rules = imageRulesOf(chain);
+  if (rules.length === 0) return NOTHING;
+  const found: ImageArrival[] = [];
+  let followed = 0;
+  for (const heard of chain.channel.heard) {
+    const levels = sourceLevelsOf(heard, chain.channel.sensor, chain.scale);
+    for (const component of componentsOf(heard.source)) {
+      const componentDb = componentLevel(levels, component);
+      for (const rule of rules) {
+        const highestDb = componentDb + decibels(rule.ratioAt(component.highHz)) + MOST_LIFT_DB;
+        if (highestDb <= chain.foldLimit) continue;
+        if (++followed > MOST_FOLLOWED) return found;
+        const shiftHz = shiftOf(rule, chain);
+        for (const piece of piecesOf(component.lowHz, component.highHz, shiftHz, chain)) {
+          const part = landing(piece, chain);
+          if (!part) continue;
+          const strongest = strongestOf(chain.path, piece, levels.entry === 'sensor', part.from, part.to);
+          const isTone = component.lowHz === component.highHz;
+          const added = isTone ? rule.partnerGain(component.lowHz, chain.ratesHz[0]!) : 0;
+          const level = componentDb + decibels(rule.ratioAt(strongest.atHz) + added) - strongest.attenuationDb;
+          if (!(level > chain.foldLimit)) continue;
+          found.push({
+            kind: rule.kind,
+            source: heard.source,
+            component: component.label,
+            trueLowHz: piece.trueLowHz,
+            trueHighHz: piece.trueHighHz,
+            recordedLowHz: piece.recordedLowHz,
+            recordedHighHz: piece.recordedHighHz,
+            level,
+            atHz: strongest.atHz,
+            levelKnown: levels.known,
+            shiftHz,
+          });
+        }
+      }
+    }
+  }
+  return found;
+}
+
+const NOTHING: readonly never[] = [];
+
+/** A sensor's resonance may lift what enters there: what is lower than the limit by more than this can be passed over. */
+const MOST_LIFT_DB = 60;
+
+/** The highest image of the band itself that lands in the band, by each kind of uneven sampling. */
+export function bandImagesOf(chain: Chain): readonly BandImage[] {
+  const found = new Map<ImageRule['kind'], BandImage>();
+  for (const rule of imageRulesOf(chain)) {
+    const { kind, ratioAt } = rule;
+    const lossDb = -decibels(ratioAt(chain.bandHighHz));
+    const known = found.get(kind);
+    if (known && known.lossDb <= lossDb) continue;
+    const shiftHz = shiftOf(rule, chain);
+    const inBand = piecesOf(chain.bandLowHz, chain.bandHighHz, shiftHz, chain).find((piece) => {
+      const part = landing(piece, chain);
+      return part !== undefined && part.to > part.from;
+    });
+    if (!inBand) continue;
+    const { recordedLowHz, recordedHighHz } = inBand;
+    found.set(kind, { kind, lossDb, shiftHz, recordedLowHz, recordedHighHz });
+  }
+  return [...found.values()];
+}
+
+/** Pieces of a range as its image is recorded. */
+function piecesOf(lowHz: number, highHz: number, shiftHz: number, { ratesHz }: Chain): readonly FoldedPiece[] {
+  return foldShifted(lowHz, highHz, shiftHz, ratesHz, MOST_PIECES).filter(({ collapsed }) => !collapsed);
+}
+
+/** The part of a piece that is recorded in the band, along its true frequency from 0 to 1. */
+function landing(
+  { recordedLowHz, recordedHighHz, mirrored }: FoldedPiece,
+  { recordedBand }: Chain,
+): { readonly from: number; readonly to: number } | undefined {
+  const start = Math.max(recordedLowHz, recordedBand.lowHz);
+  const end = Math.min(recordedHighHz, recordedBand.highHz);
+  if (start > end) return undefined;
+  const width = recordedHighHz - recordedLowHz;
+  if (width === 0) return { from: 0, to: 1 };
+  return mirrored
+    ? { from: (recordedHighHz - end) / width, to: (recordedHighHz - start) / width }
+    : { from: (start - recordedLowHz) / width, to: (end - recordedLowHz) / width };
+}
