@@ -119,7 +119,8 @@ function greatestPartner(
   const first = multipleOf(trueLowHz, rateHz, slots, Math.ceil);
   const last = multipleOf(trueHighHz, rateHz, slots, Math.floor);
   const greatestOther = gains[(shift === strongest[0] ? strongest[1] : strongest[0]) ?? slots] ?? 0;
-  if (!(last - first < MOST_COINCIDENCES)) return greatestOther;
+  // Past the safe integers the multiples are no longer told apart either.
+  if (!(last - first < MOST_COINCIDENCES && last < Number.MAX_SAFE_INTEGER)) return greatestOther;
   let greatest = 0;
   for (let coincidence = first; coincidence <= last; coincidence++) {
     const partner = partnerOf(shift, coincidence, slots);
@@ -138,7 +139,7 @@ function multipleOf(frequencyHz: number, rateHz: number, slots: number, inwards:
  * The images of a band that fall back into it, cut to where they do; its own place in the record is not among them.
  * A collapsed piece is left whole.
  *
- * @param limit see `imagesOfRange`; the result may have one piece for each of these and each piece of the band itself
+ * @param limit see `imagesOfRange`, at least 2; the result may have one piece for each of these and each piece of the band itself
  */
 export function imagesInBand(
   lowHz: number,
@@ -147,11 +148,13 @@ export function imagesInBand(
   pattern: PatternGains,
   limit: number = MOST_PIECES,
 ): readonly PatternPiece[] {
-  const pieces = imagesOfRange(lowHz, highHz, ratesHz, pattern, limit);
+  const pieces = imagesOfRange(lowHz, highHz, ratesHz, pattern, Math.max(limit, 2));
   const landing = merged(pieces.filter(({ shift }) => shift === 0).map(recordedRange));
   return pieces
     .filter(({ shift }) => shift !== 0)
-    .flatMap((piece) => within(landing, recordedRange(piece)).map((part) => cutTo(piece, part)));
+    .flatMap((piece) =>
+      piece.collapsed ? [piece] : within(landing, recordedRange(piece)).map((part) => cutTo(piece, part)),
+    );
 }
 
 function recordedRange({ recordedLowHz, recordedHighHz }: FoldedPiece): FrequencyRange {

@@ -69,9 +69,8 @@ export function partnerOf(shift: number, coincidence: number, slots: number): nu
   return partner < 0 ? partner + slots : Math.abs(partner);
 }
 
-/** The part of a piece that is recorded within `recorded`, which is within what the piece records. */
+/** The part of a piece, not a collapsed one, that is recorded within `recorded`, which is within what it records. */
 export function cutTo<Piece extends FoldedPiece>(piece: Piece, recorded: FrequencyRange): Piece {
-  if (piece.collapsed) return piece;
   const belowHz = recorded.lowHz - piece.recordedLowHz;
   const aboveHz = piece.recordedHighHz - recorded.highHz;
   const trimmed = <Range extends FrequencyRange>(range: Range, reversed: boolean): Range => {
