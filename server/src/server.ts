@@ -3,6 +3,7 @@ import type { CancellationToken, Connection, InitializeParams, InitializeResult 
 import {
   CodeActionKind,
   DidChangeConfigurationNotification,
+  DidChangeWatchedFilesNotification,
   LSPErrorCodes,
   ResponseError,
   TextDocumentSyncKind,
@@ -16,7 +17,10 @@ import { foldingOf } from './editor/folding.ts';
 import { hoverAt } from './editor/hover.ts';
 import { mapAt } from './editor/map-view.ts';
 import { outlineOf } from './editor/outline.ts';
+import { foldersOf, readableFrom } from './server-folders.ts';
+import { readUsedFile, readWantedFiles } from './server-used-files.ts';
 import type { Evaluation } from './workbench/evaluation.ts';
+import { canonicalUri } from './workbench/uris.ts';
 import { Workbench } from './workbench/workbench.ts';
 
 /**
@@ -24,6 +28,9 @@ import { Workbench } from './workbench/workbench.ts';
  * twice as long again, so that no slice lasts more than 20 ms.
  */
 export const SLICE_MS = 6;
+
+/** The files that clients are asked to watch: rig files by name, wherever they lie. */
+const WATCHED = [{ globPattern: '**/*.rig.{yaml,yml,json}' }];
 
 interface OpenDocument {
   readonly version: number;
@@ -43,15 +50,22 @@ export function serve(connection: Connection): void {
   const workbench = new Workbench((message) => connection.console.error(message));
   const documents = new Map<string, OpenDocument>();
   let abilities: ClientAbilities = abilitiesOf(undefined);
+  /** URIs of the folders that the client has open. */
+  let folders: readonly string[] = [];
+  const readable = () => readableFrom(folders, documents.keys());
 
   connection.onInitialize((params: InitializeParams): InitializeResult => {
     abilities = abilitiesOf(params);
+    folders = foldersOf(params);
     return {
       serverInfo: { name: 'ratewright' },
       capabilities: {
         textDocumentSync: { openClose: true, change: TextDocumentSyncKind.Incremental },
         ...(abilities.pullsFindings
-          ? { diagnosticProvider: { interFileDependencies: false, workspaceDiagnostics: false } }
+          ? { diagnosticProvider: { interFileDependencies: true, workspaceDiagnostics: false } }
+          : {}),
+        ...(abilities.announcesFolders
+          ? { workspace: { workspaceFolders: { supported: true, changeNotifications: true } } }
           : {}),
         hoverProvider: true,
         completionProvider: { triggerCharacters: [' ', ':', ',', '{', '['] },
@@ -63,12 +77,25 @@ export function serve(connection: Connection): void {
   });
   connection.onInitialized(() => {
     if (abilities.announcesSettings) void connection.client.register(DidChangeConfigurationNotification.type);
+    if (abilities.watchesFiles)
+      void connection.client.register(DidChangeWatchedFilesNotification.type, { watchers: WATCHED });
+    if (abilities.announcesFolders) {
+      connection.workspace.onDidChangeWorkspaceFolders(({ added, removed }) => {
+        const gone = new Set(removed.map(({ uri }) => uri));
+        folders = [...folders.filter((uri) => !gone.has(uri)), ...added.map(({ uri }) => uri)];
+        readAgain(workbench.filesUsed());
+      });
+    }
   });
 
   connection.onDidOpenTextDocument(({ textDocument }) => {
-    workbench.setFile(textDocument.uri, { text: textDocument.text });
+    const before = readable().paths.length;
+    workbench.openFile(textDocument.uri, textDocument.text);
     documents.set(textDocument.uri, { version: textDocument.version, nearOffset: undefined, evaluated: undefined });
     push(textDocument.uri);
+    changedBelow([textDocument.uri]);
+    // A file outside all open folders opens up its own: what was not read before may be now.
+    if (readable().paths.length > before) readAgain(workbench.filesUsed());
   });
   connection.onDidChangeTextDocument(({ textDocument, contentChanges }) => {
     workbench.editFile(textDocument.uri, contentChanges);
@@ -78,12 +105,57 @@ export function serve(connection: Connection): void {
       evaluated: undefined,
     });
     push(textDocument.uri);
+    changedBelow([textDocument.uri]);
   });
   connection.onDidCloseTextDocument(({ textDocument }) => {
+    // Forgotten rather than closed: if others use it, it is read again, as it has become on the disk.
     workbench.forgetFile(textDocument.uri);
     documents.delete(textDocument.uri);
+    changedBelow([textDocument.uri]);
     if (!abilities.pullsFindings) void connection.sendDiagnostics({ uri: textDocument.uri, diagnostics: [] });
   });
+
+  connection.onDidChangeWatchedFiles(({ changes }) => {
+    const used = new Set(workbench.filesUsed().map(canonicalUri));
+    readAgain(changes.map(({ uri }) => uri).filter((uri) => used.has(canonicalUri(uri))));
+  });
+
+  /** Reads used files again, and has those who use them checked again. */
+  function readAgain(uris: readonly string[]): void {
+    for (const uri of uris) workbench.setFile(uri, readUsedFile(uri, readable()));
+    changedBelow(uris);
+  }
+
+  /** After files have changed: the findings of open documents that use them may be others now. */
+  function changedBelow(uris: readonly string[]): void {
+    workbench.forgetUnused();
+    const users = new Set(uris.flatMap((uri) => workbench.usersOf(uri)));
+    for (const uri of users) {
+      const document = documents.get(uri);
+      if (!document) continue;
+      documents.set(uri, { ...document, evaluated: undefined });
+      push(uri);
+    }
+    if (users.size > 0) askToRefresh();
+  }
+
+  let refreshing: 'no' | 'yes' | 'once more' = 'no';
+
+  /** Asks a client that pulls to pull again; never a second time before it has answered the first. */
+  function askToRefresh(): void {
+    if (!abilities.pullsFindings || !abilities.refreshesFindings) return;
+    if (refreshing !== 'no') {
+      refreshing = 'once more';
+      return;
+    }
+    refreshing = 'yes';
+    const after = (): void => {
+      const again = refreshing === 'once more';
+      refreshing = 'no';
+      if (again) askToRefresh();
+    };
+    connection.languages.diagnostics.refresh().then(after, after);
+  }
 
   function offsetOfLast(uri: string, changes: readonly object[]): number | undefined {
     const last = changes.at(-1);
@@ -101,6 +173,7 @@ export function serve(connection: Connection): void {
   }
 
   async function evaluateInSlices(uri: string, document: OpenDocument): Promise<Evaluation | undefined> {
+    readWantedFiles(workbench, readable);
     const steps = workbench.evaluating(uri, document.nearOffset);
     for (;;) {
       const sliceEnd = performance.now() + SLICE_MS;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { reasonOf } from '../../server/src/cli/read-file.ts';
+import { reasonOf } from '../../server/src/server-read-file.ts';
 import { ran } from './ran.ts';
 import { CLEAN, FOLDS } from './rigs.ts';
 

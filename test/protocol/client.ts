@@ -5,6 +5,7 @@ import type {
   Diagnostic,
   Position,
   PublishDiagnosticsParams,
+  RegistrationParams,
   ServerCapabilities,
 } from 'vscode-languageserver-protocol';
 import type { ProtocolConnection } from 'vscode-languageserver-protocol/node';
@@ -20,6 +21,8 @@ export interface TestClient {
   readonly connection: ProtocolConnection;
   readonly capabilities: ServerCapabilities;
   readonly child: ChildProcess | undefined;
+  /** The methods that the server has registered for since. */
+  readonly registered: readonly string[];
   open(uri: string, text: string): void;
   /** Sends one change; without positions it replaces the whole text. */
   change(uri: string, text: string, start?: Position, end?: Position): number;
@@ -34,6 +37,10 @@ export interface TestClient {
 export interface ClientOptions {
   readonly pull: boolean;
   readonly initializationOptions?: object;
+  /** URIs of the folders that are open; none where left out. */
+  readonly folders?: readonly string[];
+  /** The client watches files, and pulls again when it is asked to. */
+  readonly watchesAndRefreshes?: boolean;
   /** Spawns this server program over standard input and output; otherwise the server runs in this process. */
   readonly spawn?: readonly string[];
 }
@@ -48,14 +55,26 @@ export async function startClient(options: ClientOptions): Promise<TestClient> {
     latest.set(params.uri, params);
     for (const check of [...waiting]) check();
   });
-  connection.onRequest('client/registerCapability', () => null);
+  const registered: string[] = [];
+  connection.onRequest('client/registerCapability', ({ registrations }: RegistrationParams) => {
+    registered.push(...registrations.map(({ method }) => method));
+    return null;
+  });
+  const watches = options.watchesAndRefreshes === true;
   connection.listen();
   const { capabilities } = (await connection.sendRequest('initialize', {
     processId: process.pid,
     rootUri: null,
     initializationOptions: options.initializationOptions,
+    workspaceFolders: options.folders?.map((uri) => ({ uri, name: uri })) ?? null,
     capabilities: {
-      workspace: { workspaceEdit: { documentChanges: true, changeAnnotationSupport: {} } },
+      workspace: {
+        workspaceEdit: { documentChanges: true, changeAnnotationSupport: {} },
+        workspaceFolders: options.folders !== undefined,
+        ...(watches
+          ? { diagnostics: { refreshSupport: true }, didChangeWatchedFiles: { dynamicRegistration: true } }
+          : {}),
+      },
       textDocument: {
         hover: { contentFormat: ['markdown', 'plaintext'] },
         ...(options.pull ? { diagnostic: { dynamicRegistration: false } } : {}),
@@ -68,6 +87,7 @@ export async function startClient(options: ClientOptions): Promise<TestClient> {
     connection,
     capabilities,
     child,
+    registered,
     open(uri, text) {
       versions.set(uri, 1);
       void connection.sendNotification('textDocument/didOpen', {

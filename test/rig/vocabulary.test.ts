@@ -28,7 +28,7 @@ const KEYS: Readonly<Record<ContextName, string>> = {
 };
 
 const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
-  rig: 'uses groups accept',
+  rig: 'groups accept',
   digitizer: 'scan-interval settling noise jitter delay-compensated',
   sensor: 'noise',
   source: 'noise spans',

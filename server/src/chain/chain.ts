@@ -55,8 +55,13 @@ export function chainOf(channel: Channel): Chain | undefined {
     levelUnit: scale.unit,
     path,
     rateReachable: exact !== undefined,
-    understood: path.responses.every((stage) => stage.every((response) => response !== undefined)),
+    understood: !lacksDigitizer(channel) && path.responses.every((stage) => stage.every((one) => one !== undefined)),
   };
+}
+
+/** Whether the channel names a digitizer that is not known, and with it what filters stand in its input. */
+function lacksDigitizer({ digitizer, digitizerPlace }: Channel): boolean {
+  return digitizer === undefined && digitizerPlace !== undefined;
 }
 
 /** The filters ahead of a stage; one that was not understood attenuates nothing and is left out. */

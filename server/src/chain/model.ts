@@ -87,7 +87,7 @@ export interface Chain {
   readonly path: SignalPath;
   /** False where the digitizer can't make the rate that is written: what is written is computed with all the same. */
   readonly rateReachable: boolean;
-  /** False where a filter on the way was not understood: what it does is not known, so little is said of what folds. */
+  /** False where a filter, or the digitizer, was not understood: what it does is not known, so little is said of what folds. */
   readonly understood: boolean;
 }
 

@@ -97,8 +97,10 @@ function unplacedOn(view: ChannelView): readonly Said[] {
   if (foldLimit && foldLimit.value.kind !== 'ratio' && scale.foldLimitAssumed)
     consider('`fold-limit`', foldLimit.value);
   if (peak) consider('`peak`', peak.value.high);
-  if (withoutFullScale.length > 0) said.push(noFullScale(withoutFullScale, view));
-  if (withoutSensitivity.length > 0) said.push(noSensitivity(withoutSensitivity, view));
+  // Of a name that stands for nothing that could be read, that has been said.
+  const { digitizer, digitizerPlace, sensor, sensorPlace } = channel;
+  if (withoutFullScale.length > 0 && (digitizer || !digitizerPlace)) said.push(noFullScale(withoutFullScale, view));
+  if (withoutSensitivity.length > 0 && (sensor || !sensorPlace)) said.push(noSensitivity(withoutSensitivity, view));
   return said;
 }
 

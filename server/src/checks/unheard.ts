@@ -1,20 +1,29 @@
 import type { Source } from '../rig/model.ts';
+import type { Brought } from '../rig/used-things.ts';
 import type { RigView, SaidOfRig } from './check.ts';
 import { levelUnplaced } from './level-unplaced.ts';
 
 /**
  * One hint for each source that channels leave out of `hears: all`, because its level is in a quantity that they don't
- * measure: told at the source, as `level-unplaced`, with the number of those channels.
+ * measure: told at the source, as `level-unplaced`, with the number of those channels. One of a used file is told where that file
+ * is named.
  */
-export function unheardSources({ channels }: RigView): readonly SaidOfRig[] {
+export function unheardSources({ environment, channels }: RigView): readonly SaidOfRig[] {
   const counts = new Map<Source, number>();
   for (const { result } of channels) {
-    for (const source of result.channel.unheard) counts.set(source, (counts.get(source) ?? 0) + 1);
+    const { unheard, sensor, sensorPlace } = result.channel;
+    // What a sensor measures that is named and not known, nobody can say.
+    if (sensorPlace && !sensor) continue;
+    for (const source of unheard) counts.set(source, (counts.get(source) ?? 0) + 1);
   }
-  return [...counts].map(([source, count]) => saidOf(source, count));
+  const { joined } = environment.core;
+  return [...counts].map(([source, count]) => {
+    const brought = joined.things.source.get(source.name);
+    return saidOf(source, count, brought?.thing === source ? brought : undefined);
+  });
 }
 
-function saidOf(source: Source, count: number): SaidOfRig {
+function saidOf(source: Source, count: number, brought: Brought | undefined): SaidOfRig {
   const level = source.levels[0]?.value;
   const unit = level?.kind === 'measured' ? level.unit : 'another unit';
   const [who, which] =
@@ -25,7 +34,8 @@ function saidOf(source: Source, count: number): SaidOfRig {
     severity: 'hint',
     thing: `sources/${source.name}`,
     message: `${who} \`${source.name}\`, because its level is in ${unit}, which ${which}. A channel that hears it all the same has to name it in \`hears\`.`,
-    place: source.place,
+    place: brought ? brought.item.place : source.place,
+    related: brought ? [{ place: source.place, message: `\`${source.name}\` is declared here.` }] : [],
     figures: { channels: count },
     excess: count,
   };

@@ -1,9 +1,12 @@
+import { isAbsolute, relative } from 'node:path';
+import type { Finding } from '../checks/finding.ts';
 import { CHECK_NAMES } from '../checks/list.ts';
 import { nearest } from '../quantity/spelling.ts';
-import type { FileReport, ReportedFinding } from '../report/findings-json.ts';
+import type { FileReport, PlaceElsewhere, ReportedFinding } from '../report/findings-json.ts';
 import { findingsJson, summaryOf, totalsOf } from '../report/findings-json.ts';
 import { findingsText, summaryText } from '../report/findings-text.ts';
-import { locatedFindings } from '../workbench/findings.ts';
+import { pathOf } from '../server-used-files.ts';
+import { located, locatedFindings } from '../workbench/findings.ts';
 import { runTotals } from '../workbench/run-totals.ts';
 import type { Workbench } from '../workbench/workbench.ts';
 import type { Command } from './command.ts';
@@ -66,9 +69,10 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
   if (files.length === 0 && exit === 0) io.stderr(`ratewright: ${NO_FILES}\n`);
   const progress = progressOver(files.length, options.flag('quiet'), io);
   const reports: FileReport[] = [];
+  // One for all: what several files use is read once.
+  const workbench = newWorkbench(io);
   for (const [index, path] of files.entries()) {
-    const workbench = newWorkbench(io);
-    const rig = await openRig(workbench, path, io, options.text('stdin-filename') ?? 'stdin.rig.yaml');
+    const rig = await openRig(workbench, path, io, options.text('stdin-filename') ?? 'stdin.rig.yaml', paths);
     progress.step(index + 1);
     if ('fault' in rig) {
       progress.clear();
@@ -76,7 +80,8 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
       exit = 2;
       continue;
     }
-    reports.push(reportOf(rig, workbench, only, options));
+    reports.push(reportOf(rig, workbench, only, options, io));
+    workbench.closeFile(rig.uri);
   }
   progress.clear();
 
@@ -95,24 +100,35 @@ function reportOf(
   workbench: Workbench,
   only: ReadonlySet<string> | undefined,
   options: ParsedOptions,
+  io: CommandIo,
 ): FileReport {
   const findings = locatedFindings(rig.evaluation)
     .filter(({ finding }) => !only || only.has(finding.check))
-    .map(
-      (located): ReportedFinding =>
-        options.flag('remedies')
-          ? {
-              ...located,
-              remedies: workbench.remedies(rig.uri, located.finding, () => false),
-            }
-          : located,
-    );
+    .map((found): ReportedFinding => {
+      const elsewhere = placesElsewhere(found.finding, rig, io);
+      const remedies = options.flag('remedies') && workbench.remedies(rig.uri, found.finding, () => false);
+      return { ...found, ...(elsewhere.length > 0 ? { elsewhere } : {}), ...(remedies ? { remedies } : {}) };
+    });
   return {
     path: rig.path,
     channels: rig.evaluation.channels.length,
     findings,
     totals: runTotals(rig.evaluation),
   };
+}
+
+/** The related places of a finding that stand in used files; their paths are relative where that of the rig is. */
+function placesElsewhere(
+  { related }: Finding,
+  { evaluation, path }: Exclude<OpenedRig, { readonly fault: string }>,
+  { cwd }: CommandIo,
+): readonly PlaceElsewhere[] {
+  return related.flatMap(({ place, message }) => {
+    const found = located(evaluation, place);
+    const full = found?.uri === undefined ? undefined : pathOf(found.uri);
+    if (!found || full === undefined) return [];
+    return [{ path: isAbsolute(path) ? full : relative(cwd, full), range: found.range, message }];
+  });
 }
 
 function checkNames(names: readonly string[] | undefined): ReadonlySet<string> | undefined {

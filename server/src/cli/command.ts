@@ -1,8 +1,8 @@
 import { statSync, writeFileSync } from 'node:fs';
 import { resolve } from 'node:path';
+import { reasonOf } from '../server-read-file.ts';
 import type { CommandIo, ExitCode } from './io.ts';
 import type { ParsedOptions } from './options.ts';
-import { reasonOf } from './read-file.ts';
 import { replaceFile } from './write-file.ts';
 
 /** One command of the command line. */

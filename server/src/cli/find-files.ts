@@ -1,7 +1,7 @@
 import { type Dirent, existsSync, readdirSync, readFileSync, realpathSync, statSync } from 'node:fs';
 import { dirname, join, relative, resolve, sep } from 'node:path';
 import ignore from 'ignore';
-import { reasonOf } from './read-file.ts';
+import { reasonOf } from '../server-read-file.ts';
 
 /** The endings of rig files. */
 const RIG_FILE = /\.rig\.(?:yaml|yml|json)$/;

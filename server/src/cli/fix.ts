@@ -4,6 +4,7 @@ import { REMEDY_NAMES } from '../remedies/list.ts';
 import type { RemedyKind } from '../remedies/remedy.ts';
 import { printable } from '../report/printable.ts';
 import { applyTextEdits } from '../rig/text-edit.ts';
+import { reasonOf } from '../server-read-file.ts';
 import { allFindings } from '../workbench/findings.ts';
 import type { Command } from './command.ts';
 import { deliver } from './command.ts';
@@ -13,7 +14,6 @@ import { graver, UsageError } from './io.ts';
 import { newWorkbench, openRig } from './open-rig.ts';
 import type { FailOn } from './options.ts';
 import { failOn, fails, listOf, parseOptions } from './options.ts';
-import { reasonOf } from './read-file.ts';
 import { unifiedDiff } from './unified-diff.ts';
 import { replaceFile } from './write-file.ts';
 
@@ -62,6 +62,8 @@ interface FixSettings {
   readonly from: FailOn;
   readonly isQuiet: boolean;
   readonly stdinName: string;
+  /** The words of the command line: the folders among them hold files that may be used. */
+  readonly given: readonly string[];
 }
 
 interface Fixed {
@@ -79,6 +81,7 @@ async function runFix(argv: readonly string[], io: CommandIo): Promise<ExitCode>
     from: failOn(options),
     isQuiet: options.flag('quiet'),
     stdinName: options.text('stdin-filename') ?? 'stdin.rig.yaml',
+    given: options.words,
   };
   const paths = options.words.length === 0 ? ['.'] : options.words;
   if (options.text('output') !== undefined && !settings.dryRun && !paths.includes('-'))
@@ -103,7 +106,7 @@ async function runFix(argv: readonly string[], io: CommandIo): Promise<ExitCode>
 
 async function fixFile(path: string, settings: FixSettings, io: CommandIo): Promise<Fixed> {
   const workbench = newWorkbench(io);
-  const rig = await openRig(workbench, path, io, settings.stdinName);
+  const rig = await openRig(workbench, path, io, settings.stdinName, settings.given);
   if ('fault' in rig) {
     io.stderr(`ratewright: ${rig.path} ${rig.fault}\n`);
     return { exit: 2 };
@@ -119,7 +122,7 @@ async function fixFile(path: string, settings: FixSettings, io: CommandIo): Prom
   if (written === 0 && !settings.isQuiet) {
     for (const remedy of applied) io.stderr(`${rig.path}: ${printable(remedy.title)}\n`);
   }
-  workbench.setFile(rig.uri, { text: fixed });
+  workbench.openFile(rig.uri, fixed);
   const exit = graver(written, leftOver(workbench, rig.uri, settings.from));
   return path === '-' ? { exit, result: rig.byteOrderMark + fixed } : { exit };
 }

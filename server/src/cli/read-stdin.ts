@@ -1,6 +1,6 @@
 import { fstatSync } from 'node:fs';
 import type { Readable } from 'node:stream';
-import { MOST_BYTES } from './read-file.ts';
+import { MOST_BYTES } from '../server-read-file.ts';
 
 /**
  * Everything on this process's standard input, as bytes.

@@ -10,6 +10,12 @@ export type ThemeKind = (typeof THEMES)[number];
 /** What the client told of itself when it connected, as far as an answer depends on it. */
 export interface ClientAbilities {
   readonly pullsFindings: boolean;
+  /** Whether it may be asked to pull its findings again. */
+  readonly refreshesFindings: boolean;
+  /** Whether it watches files when it is asked to. */
+  readonly watchesFiles: boolean;
+  /** Whether it tells of folders that are added or taken away. */
+  readonly announcesFolders: boolean;
   readonly announcesSettings: boolean;
   readonly showsMarkdown: boolean;
   /** Whether a hover may hold a picture; otherwise the map is drawn in characters. */
@@ -39,6 +45,9 @@ export function abilitiesOf(params: InitializeParams | undefined): ClientAbiliti
   const versions = edit?.documentChanges === true;
   return {
     pullsFindings: params?.capabilities.textDocument?.diagnostic !== undefined,
+    refreshesFindings: params?.capabilities.workspace?.diagnostics?.refreshSupport === true,
+    watchesFiles: params?.capabilities.workspace?.didChangeWatchedFiles?.dynamicRegistration === true,
+    announcesFolders: params?.capabilities.workspace?.workspaceFolders === true,
     announcesSettings: params?.capabilities.workspace?.didChangeConfiguration?.dynamicRegistration === true,
     showsMarkdown: formats.includes(MarkupKind.Markdown),
     showsPictures: option(options, 'pictures') === true,

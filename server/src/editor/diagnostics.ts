@@ -3,7 +3,7 @@ import { DiagnosticSeverity, DiagnosticTag } from 'vscode-languageserver-types';
 import { MOST_FINDINGS_SENT } from '../rig/limits.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
 import type { LocatedFinding } from '../workbench/findings.ts';
-import { allFindings, gravestFindings } from '../workbench/findings.ts';
+import { allFindings, gravestFindings, located } from '../workbench/findings.ts';
 import { protocolSeverity } from './convert.ts';
 import type { ReferenceLinks } from './reference-links.ts';
 
@@ -34,6 +34,10 @@ function diagnosticOf(
   evaluation: Evaluation,
   links: ReferenceLinks,
 ): Diagnostic {
+  const related = finding.related.flatMap(({ place, message }) => {
+    const found = located(evaluation, place);
+    return found ? [{ location: { uri: found.uri ?? uri, range: found.range }, message }] : [];
+  });
   const unused = finding.check === 'unused-name';
   const href = links.check(finding.check);
   return {
@@ -45,13 +49,6 @@ function diagnosticOf(
     ...(href === undefined ? {} : { codeDescription: { href } }),
     message: finding.message,
     ...(unused ? { tags: [DiagnosticTag.Unnecessary] } : {}),
-    ...(finding.related.length === 0
-      ? {}
-      : {
-          relatedInformation: finding.related.map((related) => ({
-            location: { uri, range: evaluation.snapshot.rangeOf(related.place) },
-            message: related.message,
-          })),
-        }),
+    ...(related.length === 0 ? {} : { relatedInformation: related }),
   };
 }

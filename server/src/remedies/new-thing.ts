@@ -4,9 +4,18 @@ import { columnOf, isFlowEntry, lineEndAfter, setKey, significantEnd, styleAt } 
 import type { NewValue } from './written-value.ts';
 import { pairText } from './written-value.ts';
 
-/** A name that no entry of the section has: the wanted one, or that with a number after it. */
-export function freeName(snapshot: Snapshot, section: NamedSection, wanted: string): string {
-  const taken = new Set<string>();
+/**
+ * A name that no entry of the section has: the wanted one, or that with a number after it.
+ *
+ * @param used names of used files, which it is not to hide either
+ */
+export function freeName(
+  snapshot: Snapshot,
+  section: NamedSection,
+  wanted: string,
+  used: ReadonlySet<string> = new Set(),
+): string {
+  const taken = new Set(used);
   for (const entry of snapshot.entries) if (entry.section === section) taken.add(entry.name);
   if (!taken.has(wanted)) return wanted;
   for (let number = 2; ; number++) {

@@ -69,7 +69,10 @@ function* designs(response: OrderedResponse): Generator<OrderAndEdge> {
   }
 }
 
-/** The filter's own text where this channel alone has it; a new filter, named by this channel, where others share it. */
+/**
+ * The filter's own text where this channel alone has it; a new filter, named by this channel, where others share it or
+ * it stands in a used file, which others may use too.
+ */
 function filterEdits(
   search: Search,
   channel: Channel,
@@ -79,8 +82,9 @@ function filterEdits(
   design: OrderAndEdge,
 ): Edited | undefined {
   const users = usersOf(search, filter);
-  const inFilter = editsInFilter(search, filter, response, design);
-  if (users <= 1) return inFilter && { edits: inFilter };
+  const isOwn = search.context.snapshot.startOf(filter.place.entry) !== undefined;
+  const inFilter = isOwn ? editsInFilter(search, filter, response, design) : undefined;
+  if (users <= 1 && isOwn) return inFilter && { edits: inFilter };
   const edits = newFilter(search, channel, index, filter, response, design);
   if (!edits) return undefined;
   return inFilter ? { edits, shared: { edits: inFilter, channels: users } } : { edits };
@@ -128,11 +132,12 @@ function newFilter(
   response: OrderedResponse,
   design: OrderAndEdge,
 ): readonly TextEdit[] | undefined {
-  const { snapshot } = context;
+  const { snapshot, environment } = context;
   const use = channel.filters[index];
   const names = filterNames(channel.filters);
   if (!use || !names) return undefined;
-  const name = freeName(snapshot, 'filters', `${filter.name}-order-${design.order}`);
+  const taken = environment.core.scope.names.filter.set;
+  const name = freeName(snapshot, 'filters', `${filter.name}-order-${design.order}`, taken);
   const thing = addThing(snapshot, 'filters', name, filterText(filter, response, design));
   if (!thing) return undefined;
   const { entry } = channel.place;

@@ -13,9 +13,18 @@ export interface FileReport {
   readonly totals?: RunStorage | undefined;
 }
 
+/** A related place of a finding that stands in another file. */
+export interface PlaceElsewhere {
+  readonly path: string;
+  readonly range: PositionRange;
+  readonly message: string;
+}
+
 export interface ReportedFinding {
   readonly finding: Finding;
   readonly range: PositionRange;
+  /** Only where there are any. */
+  readonly elsewhere?: readonly PlaceElsewhere[];
   /** Only where they were asked for. */
   readonly remedies?: readonly Remedy[];
 }
@@ -75,7 +84,7 @@ export function findingsJson(files: readonly FileReport[]): string {
   return `${JSON.stringify(report, undefined, 2)}\n`;
 }
 
-function findingJson({ finding, range, remedies }: ReportedFinding): object {
+function findingJson({ finding, range, elsewhere, remedies }: ReportedFinding): object {
   return {
     name: finding.check,
     severity: finding.severity,
@@ -84,6 +93,7 @@ function findingJson({ finding, range, remedies }: ReportedFinding): object {
     ...(finding.about === undefined ? {} : { about: finding.about }),
     message: finding.message,
     range,
+    ...(elsewhere === undefined ? {} : { elsewhere }),
     accepted: false,
     figures: Object.fromEntries(
       Object.entries(finding.figures).map(([name, value]) => [

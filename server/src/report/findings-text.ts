@@ -1,3 +1,4 @@
+import type { PositionRange } from '../rig/place.ts';
 import { type RunStorage, totalsText } from '../workbench/run-totals.ts';
 import type { FileReport, ReportedFinding, Summary } from './findings-json.ts';
 import type { Paint } from './paint.ts';
@@ -5,14 +6,15 @@ import { printable } from './printable.ts';
 
 /**
  * The findings of one file as text: place, severity and check on a line, then what will happen to the data, then the
- * remedies where they were asked for, the preferred one with a star. Lines and characters count from 1 here, as editors show them.
+ * places in other files that matter, then the remedies where they were asked for, the preferred one with a star. Lines
+ * and characters count from 1 here, as editors show them.
  */
 export function findingsText(file: FileReport, paint: Paint): string {
   return file.findings.map((reported) => findingText(file.path, reported, paint)).join('');
 }
 
-function findingText(path: string, { finding, range, remedies }: ReportedFinding, paint: Paint): string {
-  const place = `${printable(path)}:${range.start.line + 1}:${range.start.character + 1}`;
+function findingText(path: string, { finding, range, elsewhere, remedies }: ReportedFinding, paint: Paint): string {
+  const place = placeText(path, range);
   const subject = finding.channel ?? finding.thing;
   const head = [
     paint(place, 'strong'),
@@ -21,6 +23,8 @@ function findingText(path: string, { finding, range, remedies }: ReportedFinding
     ...(subject === undefined || subject === '' ? [] : [paint(`(${printable(subject)})`, 'quiet')]),
   ].join('  ');
   const lines = [head, ...wrapped(finding.message, 96).map((line) => `    ${line}`)];
+  for (const other of elsewhere ?? [])
+    lines.push(`    ${placeText(other.path, other.range)}  ${printable(other.message)}`);
   for (const remedy of remedies ?? []) {
     lines.push(
       ...wrapped(remedy.title, 92).map(
@@ -29,6 +33,10 @@ function findingText(path: string, { finding, range, remedies }: ReportedFinding
     );
   }
   return `${lines.join('\n')}\n\n`;
+}
+
+function placeText(path: string, { start }: PositionRange): string {
+  return `${printable(path)}:${start.line + 1}:${start.character + 1}`;
 }
 
 /**

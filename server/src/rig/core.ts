@@ -2,8 +2,9 @@ import { anchorTable, sameItems } from './anchors.ts';
 import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
 import { type Entry, KIND_OF_SECTION, NAMED_SECTIONS } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
+import type { Epochs } from './epochs.ts';
 import type { Field } from './fields.ts';
-import type { Given, Run, Source } from './model.ts';
+import type { Clock, Digitizer, Filter, Given, Run, Sensor, Source, Thing } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { readClock } from './read-clock.ts';
 import { readDigitizer } from './read-digitizer.ts';
@@ -20,7 +21,16 @@ import {
   type SourceSet,
   startReading,
 } from './reader.ts';
-import type { ThingKind } from './vocabulary-kinds.ts';
+import { hiddenThings } from './used-problems.ts';
+import {
+  type Brought,
+  type ByKind,
+  byKind,
+  type JoinedThings,
+  type NamedKind,
+  NOTHING_JOINED,
+  type UsedFiles,
+} from './used-things.ts';
 
 /** What was read of one entry, and what the reading looked at. */
 export interface EntryReading extends Noted {
@@ -33,6 +43,12 @@ export interface Core {
   /** The entries it was read from, in document order. */
   readonly significant: readonly Entry[];
   readonly checkNames: readonly string[];
+  /** What became of the files that it uses. */
+  readonly used: UsedFiles;
+  /** The first entry of each name, by kind, in document order. */
+  readonly named: ByKind<readonly Entry[]>;
+  /** What comes from used files; a name of the file's own hides it. */
+  readonly joined: JoinedThings;
   readonly scope: Scope;
   readonly readings: ReadonlyMap<Entry, EntryReading>;
   readonly defaultsEntry: Entry | undefined;
@@ -48,24 +64,14 @@ export interface Core {
   readonly mentions: readonly Mention[];
 }
 
-type NamedKind = Exclude<ThingKind, 'channel'>;
-
 interface Sorted {
-  /** The first entry of each name, by kind, in document order. */
-  readonly named: Readonly<Record<NamedKind, readonly Entry[]>>;
+  readonly named: Core['named'];
   readonly topLevel: ReadonlyMap<string, Entry>;
   readonly problems: PlacedProblem[];
 }
 
 function sortSignificant(significant: readonly Entry[]): Sorted {
-  const named: Record<NamedKind, Map<string, Entry>> = {
-    clock: new Map(),
-    digitizer: new Map(),
-    sensor: new Map(),
-    filter: new Map(),
-    source: new Map(),
-    group: new Map(),
-  };
+  const named = byKind(() => new Map<string, Entry>());
   const topLevel = new Map<string, Entry>();
   const problems: PlacedProblem[] = [];
   for (const entry of significant) {
@@ -84,8 +90,7 @@ function sortSignificant(significant: readonly Entry[]): Sorted {
     others.set(entry.name, entry);
     if (isMains) named.source.set(MAINS, entry);
   }
-  const lists = Object.fromEntries(Object.entries(named).map(([kind, entries]) => [kind, [...entries.values()]]));
-  return { named: lists as unknown as Sorted['named'], topLevel, problems };
+  return { named: byKind((kind) => [...named[kind].values()]), topLevel, problems };
 }
 
 function isSection(name: string): boolean {
@@ -101,51 +106,65 @@ function isSection(name: string): boolean {
 export function readCore(
   significant: readonly Entry[],
   checkNames: readonly string[],
-  settingEntries: readonly Entry[],
-  epochOf: (entry: Entry) => number,
+  { settingEntries, epochOf }: Epochs,
+  used: UsedFiles,
   previous: Core | undefined,
 ): Core {
   const { named, topLevel, problems } = sortSignificant(significant);
   const old = previous && sameItems(previous.checkNames, checkNames) ? previous : undefined;
   const things = {
-    clock: new Map(),
-    digitizer: new Map(),
-    sensor: new Map(),
-    filter: new Map(),
+    clock: new Map<string, Clock>(),
+    digitizer: new Map<string, Digitizer>(),
+    sensor: new Map<string, Sensor>(),
+    filter: new Map<string, Filter>(),
     source: new Map<string, Source>(),
   };
-  const noSources: SourceSet = { sources: [], allHeard: new Map() };
-  const base = {
-    names: nameLists(named, old?.scope.names),
+  const base: Scope = {
+    names: nameLists(named, NOTHING_JOINED, undefined),
     things,
     anchors: anchorTable(settingEntries, old?.scope.anchors),
     epochOf,
-    usesOthers: topLevel.has('uses'),
+    knowsAllNames: true,
+    sources: { sources: [], allHeard: new Map() },
     inPlace: new Map(),
   };
-  const earlier: Scope = { ...base, sources: noSources };
   const readings = new Map<Entry, EntryReading>();
   const read = <T>(entry: Entry, scope: Scope, how: (reader: Reader) => T): T => {
-    const reading = readEntry(entry, scope, how, old?.readings.get(entry));
+    // What `uses` gives depends on the files that are used, which no lookup tells.
+    const known = entry === usesEntry && old?.used !== used ? undefined : old?.readings.get(entry);
+    const reading = readEntry(entry, scope, how, known);
     readings.set(entry, reading);
     return reading.value as T;
   };
-  for (const entry of named.clock) things.clock.set(entry.name, read(entry, earlier, readClock));
-  for (const entry of named.filter) things.filter.set(entry.name, read(entry, earlier, readNamedFilter));
-  for (const entry of named.sensor) things.sensor.set(entry.name, read(entry, earlier, readNamedSensor));
-  for (const entry of named.digitizer) things.digitizer.set(entry.name, read(entry, earlier, readDigitizer));
+  const readTop = (entry: Entry, scope: Scope): TopLevel =>
+    read(entry, scope, (reader) => readTopLevel(reader, checkNames, used));
+  const usesEntry = topLevel.get(USES);
+  const joined = (usesEntry && readTop(usesEntry, base).joined) ?? NOTHING_JOINED;
+  const earlier: Scope = {
+    ...base,
+    names: nameLists(named, joined, old?.scope.names),
+    knowsAllNames: joined.isComplete,
+  };
+  const readAll = <T extends Thing>(kind: NamedKind, of: Map<string, T>, how: (reader: Reader) => T): void => {
+    for (const entry of named[kind]) of.set(entry.name, read(entry, earlier, how));
+    addJoined(of, named[kind], joined.things[kind]);
+  };
+  readAll('clock', things.clock, readClock);
+  readAll('filter', things.filter, readNamedFilter);
+  readAll('sensor', things.sensor, readNamedSensor);
+  readAll('digitizer', things.digitizer, readDigitizer);
   for (const entry of named.group) read(entry, earlier, readNamedGroup);
   for (const entry of named.source) {
-    const source = entry.section
-      ? read(entry, earlier, readSource)
-      : read(entry, earlier, (reader) => readTopLevel(reader, checkNames)).mains;
+    const source = entry.section ? read(entry, earlier, readSource) : readTop(entry, earlier).mains;
     if (source) things.source.set(entry.name, source);
   }
-  const scope: Scope = { ...base, sources: sourceSet([...things.source.values()], old?.scope.sources) };
+  addJoined(things.source, named.source, joined.things.source);
+  problems.push(...hiddenThings(named, joined));
+  const scope: Scope = { ...earlier, sources: sourceSet([...things.source.values()], old?.scope.sources) };
   let top: TopLevel = {};
   for (const entry of topLevel.values()) {
-    if (entry.name === MAINS) continue;
-    top = { ...top, ...read(entry, scope, (reader) => readTopLevel(reader, checkNames)) };
+    if (entry.name === MAINS || entry === usesEntry) continue;
+    top = { ...top, ...readTop(entry, scope) };
   }
   if (!topLevel.has('rig')) problems.push(missingRigName(significant[0]));
   const origin: PlacedProblem[] = [];
@@ -162,6 +181,9 @@ export function readCore(
   return {
     significant,
     checkNames,
+    used,
+    named,
+    joined,
     scope,
     readings,
     defaultsEntry: topLevel.get('defaults'),
@@ -176,6 +198,7 @@ export function readCore(
   };
 }
 
+const USES = 'uses';
 const NO_DEFAULTS: ReadonlyMap<string, Field> = new Map();
 const NO_SEVERITIES: ReadonlyMap<string, SeverityChoice> = new Map();
 
@@ -192,20 +215,26 @@ function readEntry<T>(
   return { value, ...notedBy(reader), dependencies: dependenciesOf(reader) };
 }
 
-function nameLists(named: Sorted['named'], old: Scope['names'] | undefined): Scope['names'] {
-  const list = (kind: NamedKind): NameList => {
-    const names = named[kind].map(({ name }) => name);
+/** Adds what used files bring, but for what the file names itself. */
+function addJoined<T extends Thing>(
+  things: Map<string, T>,
+  own: readonly Entry[],
+  brought: ReadonlyMap<string, Brought>,
+): void {
+  if (brought.size === 0) return;
+  const hidden = new Set(own.map(({ name }) => name));
+  // Things are kept by kind, so that this one is of the kind of the others.
+  for (const [name, { thing }] of brought) if (thing && !hidden.has(name)) things.set(name, thing as T);
+}
+
+function nameLists(named: Core['named'], joined: JoinedThings, old: Scope['names'] | undefined): Scope['names'] {
+  return byKind((kind): NameList => {
+    const set = new Set(named[kind].map(({ name }) => name));
+    for (const name of joined.things[kind].keys()) set.add(name);
+    const names = [...set];
     const before = old?.[kind];
-    return before && sameItems(before.names, names) ? before : { names, set: new Set(names) };
-  };
-  return {
-    clock: list('clock'),
-    digitizer: list('digitizer'),
-    sensor: list('sensor'),
-    filter: list('filter'),
-    source: list('source'),
-    group: list('group'),
-  };
+    return before && sameItems(before.names, names) ? before : { names, set };
+  });
 }
 
 function sourceSet(sources: readonly Source[], old: SourceSet | undefined): SourceSet {

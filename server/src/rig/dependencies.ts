@@ -31,6 +31,7 @@ export function dependenciesHold(dependencies: Dependencies, scope: Scope, epoch
 }
 
 function lookupHolds(lookup: Lookup, scope: Scope): boolean {
-  if ('names' in lookup) return lookup.names === scope.names[lookup.kind] && lookup.usesOthers === scope.usesOthers;
+  if ('names' in lookup)
+    return lookup.names === scope.names[lookup.kind] && lookup.knowsAllNames === scope.knowsAllNames;
   return scope.things[lookup.kind].get(lookup.name) === lookup.thing;
 }

@@ -8,12 +8,14 @@ import type { PlacedProblem } from './placed-problem.ts';
 import type { SeverityChoice } from './read-top-level.ts';
 import type { Mention } from './reader.ts';
 import type { Snapshot } from './snapshot.ts';
+import { NO_USED_FILES, type UsedFiles } from './used-things.ts';
 
 export type { SeverityChoice } from './read-top-level.ts';
 export type { Mention } from './reader.ts';
 
 /**
- * A rig file without its channels: everything that they name, inherit, or share.
+ * A rig file without its channels: everything that they name, inherit, or share; the things of used files among it,
+ * behind its own.
  *
  * Environments share whatever an edit leaves alone, object by object: a thing is the same object as before where its
  * text and everything it names are.
@@ -49,19 +51,24 @@ export interface Environment {
  *
  * @param checkNames the names that `checks` may hold
  * @param previous an environment of an earlier text, whose unchanged parts are kept; the answer is the same without
+ * @param used what became of the files that the text uses; the same object as before where all of it is
  */
 export function readEnvironment(
   snapshot: Snapshot,
   checkNames: readonly string[],
   previous?: Environment,
+  used: UsedFiles = NO_USED_FILES,
 ): Environment {
   const sorted = sortEntries(snapshot.entries);
   const { significant } = sorted;
   const old = previous?.core;
   const unchanged =
-    old !== undefined && sameItems(old.significant, significant) && sameItems(old.checkNames, checkNames);
+    old !== undefined &&
+    old.used === used &&
+    sameItems(old.significant, significant) &&
+    sameItems(old.checkNames, checkNames);
   const epochs = epochsOf(snapshot.entries);
-  const core = unchanged ? old : readCore(significant, checkNames, epochs.settingEntries, epochs.epochOf, old);
+  const core = unchanged ? old : readCore(significant, checkNames, epochs, used, old);
   const { things } = core.scope;
   return {
     clocks: things.clock,

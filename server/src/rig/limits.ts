@@ -45,3 +45,6 @@ export const MOST_CANDIDATES_PROVED = 64;
 
 /** The highest order of a filter. */
 export const MOST_FILTER_ORDER = 50;
+
+/** Files that one file may use, those that they use counted in. */
+export const MOST_USED_FILES = 1_000;

@@ -54,10 +54,10 @@ export function nameExists(reader: Reader, name: ReadName, kind: Exclude<ThingKi
 
 /** A name that exists may still stand for nothing that could be read, of which its own entry tells. */
 function noteMissing(reader: Reader, name: string, place: Place, kind: Exclude<ThingKind, 'channel'>): void {
-  const { names: all, usesOthers } = reader.scope;
+  const { names: all, knowsAllNames } = reader.scope;
   const known = all[kind];
-  reader.lookups.push({ kind, name, names: known, usesOthers });
-  if (usesOthers || known.set.has(name) || hasSaidEnough(reader, place.entry)) return;
+  reader.lookups.push({ kind, name, names: known, knowsAllNames });
+  if (!knowsAllNames || known.set.has(name) || hasSaidEnough(reader, place.entry)) return;
   const near = nearestName(known, name);
   const what = KIND_NAMES[kind];
   const message = near

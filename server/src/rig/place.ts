@@ -1,6 +1,9 @@
 import type { Entry } from './entry.ts';
 
-/** A stretch of an entry's text. It stays true through edits that leave the entry alone. */
+/**
+ * A stretch of an entry's text. It stays true through edits that leave the entry alone. An entry is part of one file:
+ * that or, with `uses`, another one, which whoever knows the files can tell by the entry.
+ */
 export interface Place {
   readonly entry: Entry;
   readonly start: number;

@@ -30,5 +30,7 @@ export interface Problem {
   readonly message: string;
   /** What tells this problem from others of its name in one entry: the key, name or unit it is about. */
   readonly about?: string;
+  /** Where it is no more than this, whatever its name usually is. */
+  readonly severity?: 'hint';
   readonly cure?: Cure;
 }

@@ -18,9 +18,11 @@ import type { PlacedProblem } from './placed-problem.ts';
 import { channelOf } from './read-channel.ts';
 import { readRun } from './read-run.ts';
 import { readMains } from './read-source.ts';
+import { readUses } from './read-uses.ts';
 import { placedProblem, type Reader, report } from './reader.ts';
 import type { MapNode } from './tree.ts';
 import { checkValue } from './uncomputed.ts';
+import type { JoinedThings, UsedFiles } from './used-things.ts';
 import { alternative, readChoice, readText, reportWrongKind } from './values.ts';
 import { keyRow, keysOf } from './vocabulary.ts';
 
@@ -29,6 +31,7 @@ export type SeverityChoice = 'off' | 'hint' | 'warning' | 'error';
 /** What one top-level key gave. */
 export interface TopLevel {
   readonly rigName?: Given<string> | undefined;
+  readonly joined?: JoinedThings;
   readonly mains?: Source | undefined;
   readonly defaults?: ReadonlyMap<string, Field>;
   readonly severities?: ReadonlyMap<string, SeverityChoice>;
@@ -38,7 +41,7 @@ export interface TopLevel {
 const SECTIONS: ReadonlySet<string> = new Set(NAMED_SECTIONS);
 
 /** Reads a top-level key that is no named thing: `rig`, `mains`, `defaults`, `checks`, the head of a section, ... */
-export function readTopLevel(reader: Reader, checkNames: readonly string[]): TopLevel {
+export function readTopLevel(reader: Reader, checkNames: readonly string[], used: UsedFiles): TopLevel {
   const { entry } = reader;
   const { key } = entry;
   if (!key) return {};
@@ -67,6 +70,8 @@ export function readTopLevel(reader: Reader, checkNames: readonly string[]): Top
   switch (row.key) {
     case 'rig':
       return { rigName: readText(reader, field) };
+    case 'uses':
+      return { joined: readUses(reader, field, used) };
     case 'mains':
       return { mains: readMains(reader, field) };
     case 'defaults':

@@ -15,7 +15,7 @@ export interface Mention {
   readonly place: Place;
 }
 
-/** The names of one kind of thing in this file; the same object as before where they are the same names. */
+/** The names of one kind of thing in this file and those that it uses; the same object as before where they are the same names. */
 export interface NameList {
   readonly names: readonly string[];
   readonly set: ReadonlySet<string>;
@@ -42,7 +42,7 @@ export interface AllHeard {
   readonly unheard: readonly Source[];
 }
 
-/** The sources of a file; the same object as before where they are the same ones in the same order. */
+/** The sources of a file and those that it uses; the same object as before where they are the same ones in the same order. */
 export interface SourceSet {
   readonly sources: readonly Source[];
   /** Who hears all hears the same as everybody else who measures the same quantity: worked out once for each. */
@@ -56,9 +56,9 @@ export interface Scope {
   readonly anchors: AnchorTable;
   /** How many anchor-setting entries stand before an entry. */
   readonly epochOf: (entry: Entry) => number;
-  /** True where the file names others whose things are not known: a name nobody knows may be one of theirs. */
-  readonly usesOthers: boolean;
-  /** Every readable source, in document order. */
+  /** False where not all files that are used have been read: a name nobody knows may be one of theirs. */
+  readonly knowsAllNames: boolean;
+  /** Every readable source, in document order; those of used files behind them. */
   readonly sources: SourceSet;
   /** Things written in place in text that entries inherit, by their map: kept so that all who inherit share them. */
   readonly inPlace: Map<TreeNode, SharedThing>;
@@ -72,7 +72,7 @@ export type Lookup =
       readonly kind: Exclude<ThingKind, 'channel'>;
       readonly name: string;
       readonly names: NameList;
-      readonly usesOthers: boolean;
+      readonly knowsAllNames: boolean;
     };
 
 /** A reading in progress: where it stands, and what it has found so far. */
@@ -141,6 +141,7 @@ export interface Report {
   readonly place: Place;
   readonly message: string;
   readonly about?: string;
+  readonly severity?: 'hint';
   readonly cure?: Cure | undefined;
   readonly related?: PlacedProblem['related'];
 }
@@ -148,13 +149,14 @@ export interface Report {
 const NOTHING_RELATED: PlacedProblem['related'] = [];
 
 /** A problem at its place. */
-export function placedProblem({ name, place, message, about, cure, related }: Report): PlacedProblem {
+export function placedProblem({ name, place, message, about, severity, cure, related }: Report): PlacedProblem {
   const problem = {
     name,
     start: place.start,
     end: place.end,
     message,
     ...(about === undefined ? {} : { about }),
+    ...(severity === undefined ? {} : { severity }),
     ...(cure === undefined ? {} : { cure }),
   };
   return { problem, place, related: related ?? NOTHING_RELATED };

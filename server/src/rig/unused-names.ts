@@ -12,7 +12,7 @@ const USED_BY_NAME = ['clock', 'digitizer', 'sensor', 'filter', 'group'] as cons
 
 /**
  * Named things that neither a channel nor `defaults` nor another thing names, and sources that no channel hears. A file
- * without channels holds things for others to name: nothing is said of it.
+ * without channels holds things for others to name: nothing is said of it, and neither is anything of used files.
  */
 export function unusedNames(environment: Environment, uses: NameUses): readonly PlacedProblem[] {
   if (uses.channels.length === 0) return [];
@@ -49,15 +49,18 @@ function namedByThings({ core }: Environment): ReadonlySet<string> {
 
 /** Where the names of one kind stand, in document order. */
 function placesOf({ core }: Environment, kind: (typeof USED_BY_NAME)[number]): Iterable<readonly [string, Place]> {
-  if (kind !== 'group') return [...core.scope.things[kind].values()].map(({ name, place }) => [name, place]);
+  if (kind !== 'group')
+    return [...core.scope.things[kind].values()]
+      .filter(({ place }) => core.readings.has(place.entry))
+      .map(({ name, place }) => [name, place]);
   return [...core.readings.keys()]
     .filter(({ section }) => section === 'groups')
     .map((entry) => [entry.name, namePlace(entry)]);
 }
 
 /** Sources that every channel leaves out; those left out for their quantity are told elsewhere. */
-function unheardByAll({ sources }: Environment, { channels }: NameUses): Iterable<Source> {
-  const silent = new Set(sources.values());
+function unheardByAll({ sources, core }: Environment, { channels }: NameUses): Iterable<Source> {
+  const silent = new Set([...sources.values()].filter(({ place }) => core.readings.has(place.entry)));
   let before: readonly object[] | undefined;
   for (const { reading } of channels) {
     if (silent.size === 0) break;

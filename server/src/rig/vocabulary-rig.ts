@@ -37,7 +37,6 @@ export const RIG_ROWS: readonly KeyRow[] = [
     listOf(TEXT),
     '[common/sensors.rig.yaml]',
     'Other rig files, relative to this one, whose named things this one may name. A name of this file hides the same name of a used one.',
-    { computed: false },
   ),
   row(
     'rig',

@@ -8,7 +8,8 @@ import type { Entry } from '../rig/entry.ts';
 import type { Environment } from '../rig/environment.ts';
 import { readEnvironment } from '../rig/environment.ts';
 import type { NameUses } from '../rig/name-uses.ts';
-import type { Snapshot } from '../rig/snapshot.ts';
+import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
+import { editSnapshot } from '../rig/snapshot.ts';
 
 /** One channel as read and judged. */
 export interface JudgedChannel {
@@ -16,15 +17,27 @@ export interface JudgedChannel {
   readonly result: ChannelResult;
 }
 
+/** A file that another one uses, directly or through others. */
+export interface UsedText {
+  readonly uri: string;
+  readonly snapshot: Snapshot;
+}
+
+/** A text as far as it is read before its channels are. */
+export interface ReadText {
+  readonly snapshot: Snapshot;
+  readonly environment: Environment;
+  /** Every file that it uses, however many files lie between: places may stand in these. */
+  readonly usedTexts: readonly UsedText[];
+}
+
 /**
- * Everything that is known of one text: a pure function of it.
+ * Everything that is known of one text: a pure function of it and of those that it uses.
  *
  * An evaluation shares with the one before it whatever an edit has not touched, object by object; a comparison of
  * identities therefore tells what an edit has changed.
  */
-export interface Evaluation {
-  readonly snapshot: Snapshot;
-  readonly environment: Environment;
+export interface Evaluation extends ReadText {
   /** In document order, as `environment.channelEntries`. */
   readonly channels: readonly JudgedChannel[];
   /** What is said of no single channel: named things, names nobody uses, rates that do not go together. */
@@ -33,20 +46,26 @@ export interface Evaluation {
   readonly uses: NameUses;
 }
 
+/** A text after edits, the files that it uses being as they were. */
+export function readEdited({ snapshot, environment, usedTexts }: ReadText, edits: readonly TextEdit[]): ReadText {
+  const edited = editSnapshot(snapshot, edits);
+  const { used } = environment.core;
+  return { snapshot: edited, environment: readEnvironment(edited, CHECK_NAMES, environment, used), usedTexts };
+}
+
 /**
- * Evaluates a snapshot step by step: it yields after each small piece of work, so that the caller may stop between
+ * Evaluates a text step by step: it yields after each small piece of work, so that the caller may stop between
  * two of them, and returns the evaluation. What it yields is the channel that it has just judged, if it has.
  *
  * @param near the entry whose neighbourhood is done first, the one somebody is typing in
  */
 export function* evaluating(
-  snapshot: Snapshot,
+  read: ReadText,
   guard: Guard,
   previous?: Evaluation,
   near?: Entry,
 ): Generator<JudgedChannel | undefined, Evaluation> {
-  const environment = readEnvironment(snapshot, CHECK_NAMES, previous?.environment);
-  yield undefined;
+  const { environment } = read;
   const channels = reuse(environment, previous);
   yield undefined;
   for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
@@ -56,12 +75,12 @@ export function* evaluating(
   }
   const complete = channels as readonly JudgedChannel[];
   const { findings, uses } = yield* judgingRig(environment, complete, guard, previous?.uses);
-  return { snapshot, environment, channels: complete, rigFindings: findings, uses };
+  return { ...read, channels: complete, rigFindings: findings, uses };
 }
 
 /** Evaluates at one go. */
-export function evaluate(snapshot: Snapshot, guard: Guard, previous?: Evaluation): Evaluation {
-  const steps = evaluating(snapshot, guard, previous);
+export function evaluate(read: ReadText, guard: Guard, previous?: Evaluation): Evaluation {
+  const steps = evaluating(read, guard, previous);
   for (;;) {
     const step = steps.next();
     if (step.done) return step.value;

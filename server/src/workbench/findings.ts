@@ -1,13 +1,29 @@
 import type { Finding, Severity } from '../checks/finding.ts';
 import { SEVERITIES } from '../checks/finding.ts';
 import { MOST_SYNTAX_FINDINGS } from '../rig/limits.ts';
-import type { PositionRange } from '../rig/place.ts';
+import type { Place, PositionRange } from '../rig/place.ts';
 import type { Evaluation } from './evaluation.ts';
 
 /** A finding with its lines and characters in the text as it stands. */
 export interface LocatedFinding {
   readonly finding: Finding;
   readonly range: PositionRange;
+}
+
+/** A place in lines and characters, of a used file where `uri` says so, else of the file itself. */
+export interface LocatedPlace {
+  readonly uri: string | undefined;
+  readonly range: PositionRange;
+}
+
+/** Where a place stands in the texts as they are now; `undefined` for one whose text is gone. */
+export function located(
+  { snapshot, usedTexts }: Pick<Evaluation, 'snapshot' | 'usedTexts'>,
+  place: Place,
+): LocatedPlace | undefined {
+  if (snapshot.startOf(place.entry) !== undefined) return { uri: undefined, range: snapshot.rangeOf(place) };
+  const home = usedTexts.find((text) => text.snapshot.startOf(place.entry) !== undefined);
+  return home && { uri: home.uri, range: home.snapshot.rangeOf(place) };
 }
 
 export type SeverityCounts = Readonly<Record<Severity, number>>;
@@ -48,7 +64,7 @@ export function countFindings(evaluation: Evaluation): SeverityCounts {
 
 /** Every finding with its range, ordered by position. */
 export function locatedFindings(evaluation: Evaluation): readonly LocatedFinding[] {
-  return located(evaluation, allFindings(evaluation));
+  return inPlaces(evaluation, allFindings(evaluation));
 }
 
 /** At most `most` of an evaluation's findings, ordered by position; hints are left out first, then warnings. */
@@ -57,7 +73,7 @@ export function gravestFindings(
   all: readonly Finding[],
   most: number,
 ): readonly LocatedFinding[] {
-  if (all.length <= most) return located(evaluation, all);
+  if (all.length <= most) return inPlaces(evaluation, all);
   const chosen: Finding[] = [];
   for (const severity of SEVERITIES) {
     for (const finding of all) {
@@ -65,10 +81,10 @@ export function gravestFindings(
       if (finding.severity === severity) chosen.push(finding);
     }
   }
-  return located(evaluation, chosen);
+  return inPlaces(evaluation, chosen);
 }
 
-function located({ snapshot }: Evaluation, findings: readonly Finding[]): readonly LocatedFinding[] {
+function inPlaces({ snapshot }: Evaluation, findings: readonly Finding[]): readonly LocatedFinding[] {
   return findings.map((finding) => ({ finding, range: snapshot.rangeOf(finding.place) })).sort(byPosition);
 }
 

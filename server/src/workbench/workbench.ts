@@ -4,27 +4,15 @@ import type { FixAllResult } from '../remedies/fix-all.ts';
 import { fixAll } from '../remedies/fix-all.ts';
 import { remediesFor } from '../remedies/list.ts';
 import type { Remedy, RemedyContext, RemedyKind, Trial } from '../remedies/remedy.ts';
-import type { PositionRange } from '../rig/place.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
-import { editSnapshot, readSnapshot } from '../rig/snapshot.ts';
 import type { Evaluation, JudgedChannel } from './evaluation.ts';
-import { evaluate, evaluating } from './evaluation.ts';
+import { evaluate, evaluating, readEdited } from './evaluation.ts';
+import { type FileContent, Files, type TextChange } from './files.ts';
 import { allFindings } from './findings.ts';
+import { readLinked } from './links.ts';
+import { canonicalUri } from './uris.ts';
 
-/** A change as an editor tells it: without a range it replaces the whole text. */
-export interface TextChange {
-  readonly range?: PositionRange;
-  readonly text: string;
-}
-
-/** What a file was found to be. */
-export type FileContent = { readonly text: string } | 'missing' | 'too-large';
-
-interface OpenFile {
-  readonly snapshot: Snapshot;
-  /** Of `snapshot`, or of one before it that the next evaluation can grow out of. */
-  readonly evaluation: Evaluation | undefined;
-}
+export type { FileContent, TextChange } from './files.ts';
 
 /**
  * The one place that is asked: it is told of files and of changes to them, and answers what is known of them.
@@ -32,7 +20,7 @@ interface OpenFile {
  * It reads no file, knows no protocol and no clock. What it answers is a function of the texts it was told.
  */
 export class Workbench {
-  readonly #files = new Map<string, OpenFile>();
+  readonly #files = new Files();
   readonly #faults = new Set<string>();
   readonly #log: (message: string) => void;
   readonly #guard: Guard;
@@ -50,33 +38,57 @@ export class Workbench {
     };
   }
 
-  /** Tells the workbench what a file holds; `missing` and `too-large` forget what it held before. */
+  /** Tells the workbench what the disk holds of a file; where the file is open, what the editor holds counts. */
   setFile(uri: string, content: FileContent): void {
-    if (typeof content === 'string') {
-      this.#files.delete(uri);
-      return;
-    }
-    const previous = this.#files.get(uri)?.evaluation;
-    this.#files.set(uri, { snapshot: readSnapshot(content.text), evaluation: previous });
+    this.#files.tell(uri, content);
+  }
+
+  /** Opens a file with a text that somebody works on, saved or not. */
+  openFile(uri: string, text: string): void {
+    this.#files.open(uri, text);
   }
 
   /** Applies changes one after the other, each to the text that the one before left. Unknown files are ignored. */
   editFile(uri: string, changes: readonly TextChange[]): void {
-    const file = this.#files.get(uri);
-    if (!file) return;
-    let snapshot = file.snapshot;
-    for (const change of changes) snapshot = changed(snapshot, change);
-    this.#files.set(uri, { snapshot, evaluation: file.evaluation });
+    this.#files.edit(uri, changes);
+  }
+
+  /** Closes an open file: what the disk holds counts again, if anybody has told of it. */
+  closeFile(uri: string): void {
+    this.#files.close(uri);
   }
 
   /** Forgets a file. */
   forgetFile(uri: string): void {
-    this.#files.delete(uri);
+    this.#files.forget(uri);
+  }
+
+  /**
+   * Files that others use and of which nobody has told: whoever can reads them and tells with {@link setFile}. There may
+   * be more after that.
+   */
+  filesWanted(): readonly string[] {
+    return this.#files.wanted();
+  }
+
+  /** Files that are known only because others use them. */
+  filesUsed(): readonly string[] {
+    return this.#files.used();
+  }
+
+  /** The files whose findings may be others when a file changes, because they use it. */
+  usersOf(uri: string): readonly string[] {
+    return this.#files.usersOf(uri);
+  }
+
+  /** Forgets what it was told of files that nobody uses any longer. */
+  forgetUnused(): void {
+    this.#files.forgetUnused();
   }
 
   /** The text as it stands, evaluated or not; `undefined` for a file it was never told of. */
   snapshot(uri: string): Snapshot | undefined {
-    return this.#files.get(uri)?.snapshot;
+    return this.#files.snapshotOf(uri);
   }
 
   /**
@@ -84,12 +96,20 @@ export class Workbench {
    * evaluation meanwhile makes the rest worthless but harmless: its result is then not kept.
    */
   *evaluating(uri: string, nearOffset?: number): Generator<unknown, Evaluation | undefined> {
-    const file = this.#files.get(uri);
-    if (!file) return undefined;
-    if (file.evaluation?.snapshot === file.snapshot) return file.evaluation;
-    const near = nearOffset === undefined ? undefined : file.snapshot.entryAt(nearOffset);
-    const evaluation = yield* evaluating(file.snapshot, this.#guard, file.evaluation, near);
-    if (this.#files.get(uri)?.snapshot === file.snapshot) this.#files.set(uri, { snapshot: file.snapshot, evaluation });
+    const key = canonicalUri(uri);
+    const read = readLinked(key, this.#files);
+    if (!read) return undefined;
+    const known = this.#files.evaluationOf(key);
+    if (known?.snapshot === read.snapshot && known.environment === read.environment) {
+      if (known.usedTexts === read.usedTexts) return known;
+      const moved: Evaluation = { ...known, usedTexts: read.usedTexts };
+      this.#files.keepEvaluation(key, moved);
+      return moved;
+    }
+    yield undefined;
+    const near = nearOffset === undefined ? undefined : read.snapshot.entryAt(nearOffset);
+    const evaluation = yield* evaluating(read, this.#guard, known, near);
+    if (this.#files.contentOf(key) === read.snapshot) this.#files.keepEvaluation(key, evaluation);
     return evaluation;
   }
 
@@ -136,9 +156,9 @@ export class Workbench {
 
   /** Whether all that is found in what edits would change may stand; the channels near the edits are judged first. */
   #mayStand(evaluation: Evaluation, edits: readonly TextEdit[], mayStand: (finding: Finding) => boolean): boolean {
-    const snapshot = editSnapshot(evaluation.snapshot, edits);
-    const near = edits[0] && snapshot.entryAt(edits[0].start);
-    const steps = evaluating(snapshot, this.#guard, evaluation, near);
+    const read = readEdited(evaluation, edits);
+    const near = edits[0] && read.snapshot.entryAt(edits[0].start);
+    const steps = evaluating(read, this.#guard, evaluation, near);
     for (;;) {
       const { value, done } = steps.next();
       if (done) return value.rigFindings.every(mayStand);
@@ -147,7 +167,7 @@ export class Workbench {
   }
 
   #after(evaluation: Evaluation, edits: readonly TextEdit[]): Evaluation {
-    return evaluate(editSnapshot(evaluation.snapshot, edits), this.#guard, evaluation);
+    return evaluate(readEdited(evaluation, edits), this.#guard, evaluation);
   }
 
   #report(checkName: string, fault: unknown): void {
@@ -161,11 +181,4 @@ export class Workbench {
 /** The channel of that name, if the file has one. */
 export function channelNamed(evaluation: Evaluation, name: string): JudgedChannel | undefined {
   return evaluation.channels.find((judged) => judged.result.channel.name === name);
-}
-
-function changed(snapshot: Snapshot, change: TextChange): Snapshot {
-  if (!change.range) return editSnapshot(snapshot, [{ start: 0, end: snapshot.length, text: change.text }]);
-  const start = snapshot.offsetAt(change.range.start);
-  const end = snapshot.offsetAt(change.range.end);
-  return editSnapshot(snapshot, [{ start: Math.min(start, end), end: Math.max(start, end), text: change.text }]);
 }

@@ -38,15 +38,15 @@ export const DOCUMENT_PAGES: readonly (CheckPage & { readonly name: ProblemName 
   page(
     'unknown-name',
     'error',
-    'A name that stands for nothing in this file.',
-    'What it should have stood for is missing from the check: a filter that is not found filters nothing, a digitizer that is not found has no full scale.',
+    'A name that stands for nothing in this file and those that it uses, or a used file that is not there.',
+    'What it should have stood for is missing from the check: a filter that is not found filters nothing, a digitizer that is not found has no full scale. While a file that is used can not be read, other names are not reported: they may be its own.',
     'rig: Fan bearing\nfilters:\n  card: { response: rc, order: 1, corner: 8 kHz }\nchannels:\n  bearing:\n    rate: 25.6 kHz\n    band: 10 Hz .. 2 kHz\n    filter: crad\n',
     'rig: Fan bearing\nfilters:\n  card: { response: rc, order: 1, corner: 8 kHz }\nchannels:\n  bearing:\n    rate: 25.6 kHz\n    band: 10 Hz .. 2 kHz\n    filter: card\n',
   ),
   page(
     'duplicate-name',
     'error',
-    'Two things of one kind, or two keys of one map, have the same name.',
+    'Two things of one kind, or two keys of one map, have the same name; a hint where it hides the name of a used file.',
     'Only the first is read. Which of the two was meant is for you to say.',
     'rig: Fan bearing\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 5 kHz }\n  bearing: { rate: 51.2 kHz, band: 10 Hz .. 5 kHz }\n',
     'rig: Fan bearing\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 5 kHz }\n  bearing-2: { rate: 51.2 kHz, band: 10 Hz .. 5 kHz }\n',

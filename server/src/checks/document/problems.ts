@@ -12,7 +12,7 @@ export interface SaidOfDocument extends SaidOfRig {
 export function saidOfProblem({ problem, place, related }: PlacedProblem): SaidOfDocument {
   return {
     check: problem.name,
-    severity: documentSeverity(problem.name),
+    severity: problem.severity ?? documentSeverity(problem.name),
     ...(problem.about === undefined ? {} : { about: problem.about }),
     ...(problem.cure === undefined ? {} : { cure: problem.cure }),
     message: problem.message,

@@ -1,5 +1,5 @@
 import { closeSync, constants, fstatSync, openSync, readFileSync } from 'node:fs';
-import { MOST_CHARACTERS } from '../rig/limits.ts';
+import { MOST_CHARACTERS } from './rig/limits.ts';
 
 /** A file's text without the byte order mark that it may begin with (and the mark, or nothing), or why it can't be had. */
 export type ReadText =
@@ -12,7 +12,8 @@ const BYTE_ORDER_MARK = '\ufeff';
 /** UTF-8 takes at most three bytes for one UTF-16 unit: a file of more bytes than this is over the limit for sure. */
 export const MOST_BYTES = MOST_CHARACTERS * 3;
 
-const TOO_LARGE = `is larger than the ${MOST_CHARACTERS.toLocaleString('en')} characters that are read`;
+/** What is said of a file that is too large. */
+export const TOO_LARGE = `is larger than the ${MOST_CHARACTERS.toLocaleString('en')} characters that are read`;
 
 /** Where pipes can stand among files, opening one waits for its other end unless told not to. */
 const READ_WITHOUT_WAITING = constants.O_RDONLY | (constants.O_NONBLOCK ?? 0);
