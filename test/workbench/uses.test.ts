@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { CHANNEL_CHECKS, RIG_CHECKS } from '../../server/src/checks/list.ts';
 import { MOST_CHARACTERS } from '../../server/src/rig/limits.ts';
 import { locatedFindings } from '../../server/src/workbench/findings.ts';
 import type { FileContent } from '../../server/src/workbench/workbench.ts';
@@ -210,17 +211,29 @@ describe('a used file that can not be read', () => {
     expect(finding).toMatchObject({ check: 'unknown-name', about: 'common/lib.rig.yaml' });
     expect(workbench.filesWanted()).toEqual([]);
   });
+});
 
-  it.each(SAMPLES)('leaves nothing said of $name that is not so with it', ({ text: sample }) => {
-    const sections = /^(clocks|digitizers|sensors|filters|sources):\n(?:(?: .*|#.*)?\n)*/gm;
-    const library = `rig: Library\n${[...sample.matchAll(sections)].map(([section]) => section).join('')}`;
-    const user = `uses: [lib.rig.yaml]\n${sample.replaceAll(sections, '')}`;
-    const said = (disk: Disk): readonly string[] =>
-      foundIn('a.rig.yaml', { 'a.rig.yaml': text(user), ...disk }).filter((line) => !line.includes(' uses '));
-    const whole = said({ 'lib.rig.yaml': text(library) });
-    expect(library.split('\n').length).toBeGreaterThan(5);
-    const alone = foundIn('a.rig.yaml', { 'a.rig.yaml': text(sample) });
-    expect([...whole].sort()).toEqual(alone.filter((line) => !line.startsWith('unused-name')).sort());
-    expect(said({}).filter((line) => !whole.includes(line))).toEqual([]);
+/** Rigs that show what checks find: the samples, and the examples of the checks' own pages. */
+const SHOWN = [
+  ...SAMPLES.map((sample) => [sample.name, sample.text] as const),
+  ...[...CHANNEL_CHECKS, ...RIG_CHECKS].map(({ name, shows }) => [name, shows] as const),
+];
+
+describe('a rig whose named things all stand in a used file', () => {
+  const SECTIONS = /^(clocks|digitizers|sensors|filters|sources|groups):\n(?:(?: .*|#.*)?\n)*/gm;
+
+  it.each(SHOWN)('is found to have the same as in one piece, and nothing that is not so without it: %s', (_, whole) => {
+    const library = `rig: Library\n${[...whole.matchAll(SECTIONS)].map(([section]) => section).join('')}`;
+    const user = `uses: [lib.rig.yaml]\n${whole.replaceAll(SECTIONS, '')}`;
+    const joined = told('a.rig.yaml', { 'a.rig.yaml': text(user), 'lib.rig.yaml': text(library) });
+    const said = (all: readonly string[]): readonly string[] =>
+      all.filter((line) => !/^(unused-name|not-computed) |^\S+ \S+ uses /.test(line)).sort();
+    const found = said(lines(joined, 'a.rig.yaml'));
+    expect(found).toEqual(said(foundIn('a.rig.yaml', { 'a.rig.yaml': text(whole) })));
+    const { snapshot, rigFindings, channels } = joined.evaluation(`${FOLDER}a.rig.yaml`)!;
+    for (const { place } of [...rigFindings, ...channels.flatMap(({ result }) => result.findings)])
+      expect(snapshot.startOf(place.entry)).toBeDefined();
+    const without = said(foundIn('a.rig.yaml', { 'a.rig.yaml': text(user) }));
+    expect(without.filter((line) => !found.includes(line))).toEqual([]);
   });
 });

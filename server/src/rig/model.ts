@@ -9,7 +9,7 @@ import type { Place } from './place.ts';
 
 /** Where a value came from when the channel does not say it itself. */
 export interface Inheritance {
-  readonly from: 'defaults' | 'merge' | 'alias' | 'used-file';
+  readonly from: 'defaults' | 'merge' | 'alias';
   readonly place: Place;
 }
 
