@@ -8,14 +8,15 @@ const SERVER = resolve(import.meta.dirname, '../../server/src');
 const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
   signal: [],
   quantity: [],
-  rig: ['quantity', 'signal'],
+  practices: ['quantity', 'signal'],
+  rig: ['practices', 'quantity', 'signal'],
   chain: ['rig', 'quantity', 'signal'],
-  checks: ['chain', 'rig', 'quantity', 'signal'],
+  checks: ['chain', 'rig', 'practices', 'quantity', 'signal'],
   remedies: ['checks', 'chain', 'rig', 'quantity', 'signal'],
   picture: ['chain', 'quantity', 'signal'],
   workbench: ['remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
-  report: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
-  editor: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'quantity', 'signal'],
+  report: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'practices', 'quantity', 'signal'],
+  editor: ['workbench', 'picture', 'remedies', 'checks', 'chain', 'rig', 'practices', 'quantity', 'signal'],
   cli: [
     'report',
     'editor',
@@ -36,6 +37,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
 const MAY_USE: Readonly<Record<string, readonly string[]>> = {
   signal: ['fft.js'],
   quantity: [],
+  practices: [],
   rig: ['yaml'],
   chain: [],
   checks: [],

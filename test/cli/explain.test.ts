@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { ALL_CHECKS } from '../../server/src/checks/list.ts';
+import { PRACTICES } from '../../server/src/practices/practices.ts';
 import { REMEDIES } from '../../server/src/remedies/list.ts';
 import { CONTEXTS, keysOf } from '../../server/src/rig/vocabulary.ts';
 import { ran } from './ran.ts';
@@ -7,15 +8,17 @@ import { ran } from './ran.ts';
 const KEYS = [...new Set(CONTEXTS.flatMap(({ name }) => keysOf(name).map(({ key }) => key)))];
 
 describe('explain', () => {
-  it('lists every check with its severity, every remedy with its kind, and every key', async () => {
+  it('lists every check with its severity, every remedy with its kind, every practice, and every key', async () => {
     const { code, stdout, stderr } = await ran(['explain']);
     expect([code, stderr]).toEqual([0, '']);
-    const [checks, remedies, keys] = stdout.split('\n\n') as [string, string, string];
+    const [checks, remedies, practices, keys] = stdout.split('\n\n') as [string, string, string, string];
     expect(checks.split('\n')).toHaveLength(1 + ALL_CHECKS.length);
     for (const { name, severity } of ALL_CHECKS)
       expect(checks).toMatch(new RegExp(`^ {2}${name} +${severity} +\\S`, 'm'));
     expect(remedies.split('\n')).toHaveLength(1 + REMEDIES.length);
     for (const { name, kind } of REMEDIES) expect(remedies).toMatch(new RegExp(`^ {2}${name} +${kind} +\\S`, 'm'));
+    expect(practices.split('\n')).toHaveLength(1 + PRACTICES.length);
+    for (const { name } of PRACTICES) expect(practices).toMatch(new RegExp(`^ {2}${name} +\\S`, 'm'));
     expect(ALL_CHECKS.length * REMEDIES.length * KEYS.length).toBeGreaterThan(0);
     for (const key of KEYS) expect(keys).toMatch(new RegExp(`[ ,]${key}(,|$)`, 'm'));
   });
@@ -38,6 +41,18 @@ describe('explain', () => {
       `# ${name}\n\n*${kind}* · ${finds}\n\n${why}\n\nAnswers ${answers.join(', ')}.\n`,
     ]);
   });
+
+  it.each(PRACTICES)(
+    'shows what the practice $name asks for, whose word it is and what is left out',
+    async (practice) => {
+      const { code, stdout } = await ran(['explain', practice.name]);
+      expect(code).toBe(0);
+      expect(stdout).toContain(`# ${practice.name}\n\n${practice.title}.\n`);
+      for (const { name } of practice.requirements) expect(stdout).toContain(` (\`${name}\`)\n`);
+      expect(stdout).toContain('from memory');
+      for (const one of practice.leftOut) expect(stdout).toContain(`\n- ${one}\n`);
+    },
+  );
 
   it.each(KEYS)('shows what the key %s means, in each place that has it', async (key) => {
     const { code, stdout } = await ran(['explain', key]);

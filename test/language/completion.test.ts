@@ -4,6 +4,7 @@ import type { CompletionItem, TextEdit } from 'vscode-languageserver-types';
 import { CompletionItemKind } from 'vscode-languageserver-types';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { completionsAt } from '../../server/src/editor/completion.ts';
+import { PRACTICE_NAMES } from '../../server/src/practices/practices.ts';
 import { generatedRig } from '../bench/rigs.ts';
 import { TextDocument } from '../tools/applied-edits.ts';
 import { runs } from '../tools/runs.ts';
@@ -179,6 +180,18 @@ describe('names and values', () => {
     ['hears: [▮]', 'inverter', 'carrier at 16 kHz'],
   ])('behind `%s` are those that exist', (value, name, detail) => {
     expect(offers(rig(`  a:\n    ${value}`))!.item(name).detail).toBe(detail);
+  });
+
+  it('of practices are offered with what they ask for, in a channel, in its list and for the whole file', () => {
+    const fixtures = ['    follows: ▮', '    follows: [shock-peaks, ▮]', '    follows:\n      - ▮'].map((line) =>
+      rig(`  a:\n${line}`),
+    );
+    for (const fixture of [...fixtures, 'rig: x\nfollows: ▮', 'defaults: { follows: ▮ }']) {
+      const item = offers(fixture)!.item('machine-vibration');
+      expect(item.detail).toBe('a band from 10 Hz to 1 kHz');
+      expect(JSON.stringify(item.documentation)).toMatch(/ISO 20816-1.*from memory.*Left out/);
+    }
+    expect(labels(rig('  a:\n    follows: ▮'))).toEqual(['none', ...PRACTICE_NAMES]);
   });
 
   it('of clocks and of channels are found where they are meant', () => {

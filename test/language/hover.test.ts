@@ -249,6 +249,25 @@ describe('a hover on a word of the vocabulary', () => {
     expect(hover('checks:\n  band-dr▮op: off\n')).toBeNull();
   });
 
+  it.each([
+    ['a channel', 'channels:\n  a:\n    follows: hand-arm-▮vibration\n'],
+    ['the list of a channel', 'channels:\n  a: { follows: [shock-peaks, hand-▮arm-vibration] }\n'],
+    ['the top of the file', 'follows: hand-arm-vibrat▮ion\n'],
+    ['the defaults', 'defaults:\n  follows: hand-arm-vibrat▮ion\n'],
+  ])('over the name of a practice in %s shows its row, its source and what is left out', (_where, fixture) => {
+    const { shown, over } = hover(fixture)!;
+    expect(over).toBe('hand-arm-vibration');
+    expect(shown).toMatch(
+      /^\*\*hand-arm-vibration\*\*\n\nVibration that .+\.\n\nIt asks for:\n\n- a band from 8 Hz to 1 kHz /,
+    );
+    expect(shown).toMatch(/\nSource: ISO 8041-1, .+ \(2017\); from memory\. The standard's own text decides\.\n/);
+    expect(shown).toMatch(/\nLeft out, and so not checked:\n\n- the weightings/);
+  });
+
+  it('over a practice that there is not shows nothing', () => {
+    expect(hover('follows: hand-ar▮m\n')).toBeNull();
+  });
+
   it('over one in `accept` does too, with its page where there is one', () => {
     const accept = 'accept:\n  - finding: band-dr▮oop\n    reason: corrected afterwards\n';
     expect(hover(accept)!.shown).toMatch(/^\*\*band-droop\*\* · warning/);

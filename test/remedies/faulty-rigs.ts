@@ -16,6 +16,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
     peak: fc.constantFrom('', 'peak: 40 g', 'peak: 120 g', 'peak: 4 g'),
     step: fc.constantFrom('', 'then: [{ decimate: 2 }]', 'then: [{ decimate: 4, filter: tidy }]'),
     slip: fc.constantFrom('', 'flatnes: 1 dB', 'filter: crad', 'headroom: 3', 'digitizer: fornt-end'),
+    follows: fc.constantFrom('', '', 'follows: shock-peaks', 'follows: [impact-class-1000, spectrum-work-80-db]'),
     style: fc.constantFrom('block', 'flow', 'defaults', 'alias'),
     lineEnd: fc.constantFrom('\n', '\n', '\r\n'),
   })
@@ -46,6 +47,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
         `band: ${draft.band}`,
         draft.peak,
         draft.step,
+        draft.follows,
       ].filter((key) => key !== '');
     const channels = draft.rates.flatMap((rate, index): string[] => {
       const slip = index === 0 && draft.slip !== '' ? draft.slip : undefined;

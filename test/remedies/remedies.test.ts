@@ -83,6 +83,15 @@ describe('settings', () => {
     );
   });
 
+  it('sample at the lowest rate that a practice asks for, or decimate less', () => {
+    const text = rig(BLOCK.replace('rate: 20 kHz', 'rate: 25 kHz').concat('    follows: shock-peaks\n'));
+    expect(afterwards(text, only(text, 'practice-unmet', 'sample-faster'))).toContain('rate: 40 kHz ');
+    const step = text.replace('rate: 25 kHz', 'rate: 50 kHz').concat('    then: [{ decimate: 3, filter: tidy }]\n');
+    const tidy = 'filters:\n  tidy: { response: kaiser, pass: 0.08 fs, stop: 0.12 fs, stopband: 90 dB }\n';
+    const narrow = step.replace('filters:\n', tidy).replace('4 kHz\n', '2 kHz\n');
+    expect(afterwards(narrow, only(narrow, 'practice-unmet', 'decimate-less'))).toContain('decimate: 2,');
+  });
+
   it('choose a range that is listed', () => {
     const text = rig(BLOCK.replace('rate: 20 kHz', 'rate: 50 kHz').concat('    peak: 0.5 V\n'));
     const remedy = only(text, 'range-wasted', 'choose-range');

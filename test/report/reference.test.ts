@@ -2,6 +2,7 @@ import { dirname, join, normalize } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { parse } from 'yaml';
 import { ALL_CHECKS } from '../../server/src/checks/list.ts';
+import { PRACTICES } from '../../server/src/practices/practices.ts';
 import { REMEDIES } from '../../server/src/remedies/list.ts';
 import { explainedNames, explanationOf } from '../../server/src/report/explain.ts';
 import { referencePages } from '../../server/src/report/reference.ts';
@@ -16,11 +17,12 @@ const blocks = (text: string): readonly string[] =>
   [...text.matchAll(/^```yaml\n([\s\S]*?)^```$/gm)].map(([, block]) => block!);
 
 describe('the reference', () => {
-  it('has an index, the keys, the remedies and a page for each check, and nothing twice', () => {
+  it('has an index, the keys, the remedies, the practices and a page for each check, and nothing twice', () => {
     expect(PAGES.map(({ path }) => path)).toEqual([
       'README.md',
       'keys.md',
       'remedies.md',
+      'practices.md',
       ...ALL_CHECKS.map(({ name }) => `checks/${name}.md`),
     ]);
     expect(referencePages()).toEqual(PAGES);
@@ -97,6 +99,21 @@ describe('the reference', () => {
     }
   });
 
+  it('tells of every practice what it asks for, where that stands written and what is left out', () => {
+    const sections = pageAt('practices.md').split(/^## /m).slice(1);
+    expect(sections.map((section) => section.split('\n')[0])).toEqual(PRACTICES.map(({ name }) => name));
+    expect(pageAt('practices.md')).toContain('its own text decides');
+    for (const [index, { title, requirements, authority, leftOut }] of PRACTICES.entries()) {
+      const section = sections[index]!;
+      expect(section).toContain(`\n\n${title}.\n`);
+      expect(section.match(/^- .* \(`[a-z-]+`\)$/gm)).toHaveLength(requirements.length);
+      expect(section).toContain('from memory');
+      const titles =
+        authority.kind === 'published' ? authority.documents.map((one) => one.subject) : [authority.reason];
+      for (const text of [...titles, ...leftOut]) expect(section).toContain(text);
+    }
+  });
+
   it('tells of every key, in each place that has it, with an example of how it is written', () => {
     const sections = pageAt('keys.md').split(/^## /m).slice(1);
     expect(sections.map((section) => section.split('\n')[0])).toEqual(CONTEXTS.map(({ title }) => title));
@@ -117,7 +134,7 @@ describe('the reference', () => {
 });
 
 describe('explanations', () => {
-  it('there are of every check, every remedy and every key, and of nothing else', () => {
+  it('there are of every check, every remedy, every practice and every key, and of nothing else', () => {
     const names = explainedNames();
     expect(new Set(names).size).toBe(names.length);
     for (const name of names) expect(explanationOf(name)).toMatch(new RegExp(`^# ${name}\n`));

@@ -16,6 +16,7 @@ import { RIGS } from './snapshot-rigs.ts';
 
 /** A rig in which as much as possible hangs on something else. */
 const TANGLED_RIG = `rig: Tangle
+follows: &follows [supply-harmonics-40, shock-peaks, shock-peaks]
 mains: { frequency: 50 Hz, level: 5 mV }
 clocks:
   slow: &clock { frequency: 1 MHz, locked-to: fast }
@@ -52,6 +53,7 @@ channels:
     rate: *rate
     then: [{ decimate: 5, filter: tidy }, { filter: *low }]
     hears: [fan, hum, humm]
+    follows: [supply-harmonics-50, shock-peek]
   five: &rate
     rate: *rate
     sensor: stodd

@@ -69,6 +69,16 @@ describe('a value', () => {
     ['hearing a map of nothing', 'hears: ⟦some⟧', 'wrong-kind', undefined],
     ['a name nobody has', 'hears: [⟦hum⟧]', 'unknown-name', undefined],
     ['a name in a map that nobody has', 'hears: { ⟦hum⟧: none }', 'unknown-name', undefined],
+    [
+      'a practice nobody knows',
+      'follows: ⟦impact-clas-1000⟧',
+      'unknown-name',
+      { kind: 'replace', text: 'impact-class-1000' },
+    ],
+    ['a practice like none', 'follows: [⟦xyzzy⟧]', 'unknown-name', undefined],
+    ['a practice written in place', 'follows: ⟦{ rate: 10 kHz }⟧', 'wrong-kind', undefined],
+    ['a list among practices', 'follows: [⟦[shock-peaks]⟧]', 'wrong-kind', undefined],
+    ['following nothing', '⟦follows⟧:', 'wrong-kind', undefined],
     ['an alias to nowhere', 'gain: ⟦*nowhere⟧', 'unknown-name', undefined],
   ] as const)('is told of %s', (_, keys, name, cure) => {
     expectOneProblem(channelRig(keys), name, cure);

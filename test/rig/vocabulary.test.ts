@@ -5,7 +5,7 @@ import { readRig, saidOf } from './fixture.ts';
 
 /** Every key of the rig file's description, by context. */
 const KEYS: Readonly<Record<ContextName, string>> = {
-  rig: 'rig uses mains clocks digitizers sensors filters sources groups defaults channels run accept checks',
+  rig: 'rig uses mains clocks digitizers sensors filters sources groups defaults channels follows run accept checks',
   clock: 'frequency divide step tolerance locked-to',
   digitizer:
     'clock prescale rates max-rate together sampling scan-interval settling bits full-scale gain ranges gains low-corner noise jitter filter modulator decimation-filter delay-compensated interleave',
@@ -17,7 +17,7 @@ const KEYS: Readonly<Record<ContextName, string>> = {
   mains: 'frequency harmonics level falls tolerance wanted enters',
   group: 'within up-to',
   channel:
-    'sensor digitizer rate gain full-scale filter then band fold-limit undeclared flatness sampling hears peak headroom resolve group pattern pulses spectrum note measures sensitivity rated excitation range resonance q corner low-corner noise',
+    'sensor digitizer rate gain full-scale filter then band fold-limit undeclared flatness sampling hears peak headroom resolve follows group pattern pulses spectrum note measures sensitivity rated excitation range resonance q corner low-corner noise',
   step: 'decimate filter per-turn speed',
   pattern: 'of take',
   pulses: 'per-turn speed duty',

@@ -1,14 +1,11 @@
-import { type Along, alongPiece, greatestPointAlong } from '../signal/cascade.ts';
+import { alongPiece } from '../signal/cascade.ts';
 import { foldThrough } from '../signal/folding.ts';
 import type { Chain } from './model.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
+import { type Sag, sagAlong, sagOver } from './sag.ts';
 
 /** What the filters and the sensor do inside the band. */
-export interface BandResponse {
-  /** The most that the filters take off anywhere in the band, worst tolerance; `Infinity` where nothing is promised. */
-  readonly sagDb: number;
-  /** Where. */
-  readonly sagAtHz: number;
+export interface BandResponse extends Sag {
   /** The most that the sensor alone lifts anywhere in the band; negative where it only takes off. */
   readonly liftDb: number;
   readonly liftAtHz: number;
@@ -34,25 +31,11 @@ export function bandResponseOf(chain: Chain): BandResponse {
     if (isSame) return noted.response;
   }
   const response: BandResponse = {
-    ...(isBandpass ? foldedSag(chain) : nativeSag(chain)),
+    ...(isBandpass ? foldedSag(chain) : sagOver(path, bandLowHz, bandHighHz)),
     liftDb: -path.sensor.leastDb(bandLowHz, bandHighHz),
     liftAtHz: liftedMost(chain),
   };
   return note(path, BANDS, { bandLowHz, bandHighHz, isBandpass, response }).response;
-}
-
-type Sag = Pick<BandResponse, 'sagDb' | 'sagAtHz'>;
-
-/** Every filter meets the band where it is. */
-function nativeSag({ path, bandLowHz, bandHighHz }: Chain): Sag {
-  const lastNyquistHz = path.ratesHz[path.ratesHz.length - 1]! / 2;
-  const lowHz = Math.min(bandLowHz, lastNyquistHz);
-  const highHz = Math.min(bandHighHz, lastNyquistHz);
-  return sagAlong(
-    path.known.flat().map((response) => ({ response, lowHz, highHz, reversed: false })),
-    lowHz,
-    highHz,
-  );
 }
 
 /** Each filter meets the band as folded so far, a piece at a time. */
@@ -63,11 +46,6 @@ function foldedSag({ path, bandLowHz, bandHighHz }: Chain): Sag {
     if (sag.sagDb > worst.sagDb) worst = sag;
   }
   return worst;
-}
-
-function sagAlong(filters: readonly Along[], lowHz: number, highHz: number): Sag {
-  const { attenuationDb, t } = filters.length === 0 ? { attenuationDb: 0, t: 0 } : greatestPointAlong(filters);
-  return { sagDb: attenuationDb, sagAtHz: t >= 1 ? highHz : lowHz + t * (highHz - lowHz) };
 }
 
 /** Where the sensor lifts most: at the resonance where that is in the band, otherwise at one of its ends. */

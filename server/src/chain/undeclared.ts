@@ -54,6 +54,11 @@ export function undeclaredFolds(chain: Chain): readonly (UndeclaredFold | undefi
   });
 }
 
+/** For each stage in turn, the least that is taken off anything that first folds there and ends in the band. */
+export function leastAttenuations(chain: Chain): readonly (Least | undefined)[] {
+  return leastByStage(chain, { constantDb: 0, curve: undefined, entersAtSensor: false });
+}
+
 function boundOf({ channel, scale }: Chain): Bound {
   const undeclared: Undeclared | undefined = channel.undeclared?.value;
   const fullScale: Bound = { constantDb: scale.fullScaleDb, curve: undefined, entersAtSensor: false };

@@ -3,6 +3,7 @@ import { formatHz } from '../quantity/write.ts';
 import { type ChannelView, type Check, SAYS_NOTHING } from './check.ts';
 import { type Standing, standingOn } from './standing.ts';
 import { differenceText } from './wording.ts';
+import { isOwnFilter, worstFilter } from './worst-filter.ts';
 
 export const DEFAULT_FLATNESS_DB = 1;
 const ROUNDING_DB = 1e-9;
@@ -34,11 +35,11 @@ channels:
 `,
   sources: ['Butterworth, On the theory of filter amplifiers, 1930: 10 log10(1 + (f / cutoff)^(2 order)) dB.'],
   run(view) {
-    const { channel, bandResponse } = view;
+    const { channel, chain, bandResponse } = view;
     const { sagDb, sagAtHz } = bandResponse;
     const flatnessDb = channel.flatnessDb?.value ?? DEFAULT_FLATNESS_DB;
     if (sagDb <= flatnessDb + ROUNDING_DB) return SAYS_NOTHING;
-    const worst = worstFilter(view);
+    const worst = worstFilter(chain, chain.bandLowHz, chain.bandHighHz);
     const standing = standingFor(view, worst);
     const use = worst?.use;
     return [
@@ -68,20 +69,7 @@ function sentence({ chain }: ChannelView, sagDb: number, atHz: number, flatnessD
   return `How high the band is recorded up to ${formatHz(chain.bandHighHz)} is not promised by its filters; ${limit}.`;
 }
 
-function worstFilter({ chain }: ChannelView): StageFilter | undefined {
-  let worst: StageFilter | undefined;
-  let worstDb = -Infinity;
-  for (const filter of [...chain.stages.flatMap(({ filters }) => filters), ...chain.after]) {
-    const db = filter.response.greatestDb(chain.bandLowHz, chain.bandHighHz);
-    if (db <= worstDb) continue;
-    worst = filter;
-    worstDb = db;
-  }
-  return worst;
-}
-
 /** At the filter that takes most, where it is the channel's own; otherwise at the band. */
 function standingFor({ channel }: ChannelView, worst: StageFilter | undefined): Standing {
-  const isOwn = worst?.role === 'channel' || worst?.role === 'step';
-  return standingOn(channel, isOwn && worst.use ? worst.use : channel.band);
+  return standingOn(channel, worst?.use && isOwnFilter(worst) ? worst.use : channel.band);
 }

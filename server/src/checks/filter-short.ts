@@ -1,6 +1,6 @@
 import { formatHz } from '../quantity/write.ts';
-import { type ChannelView, type Check, SAYS_NOTHING } from './check.ts';
-import { filtersAhead, type Standing, standingOn, standingOnStage } from './standing.ts';
+import { type Check, SAYS_NOTHING } from './check.ts';
+import { filtersAhead, standingOnFilters } from './standing.ts';
 import { differenceText, levelFigures, levelText, overLimitText, stageText } from './wording.ts';
 
 export const filterShort: Check<'channel'> = {
@@ -46,7 +46,7 @@ channels:
     const { fold, isHint } = shortfall;
     const { stage, level, atHz, attenuationDb, undeclaredDb } = fold;
     const excess = level - chain.foldLimit;
-    const standing = standingFor(view, stage);
+    const standing = standingOnFilters(chain, stage);
     const where = stageText(chain, stage);
     return [
       {
@@ -64,10 +64,4 @@ channels:
 
 function attenuationText(db: number): string {
   return db < 0.05 ? 'nothing is taken off it' : `only ${differenceText(db)} is taken off it`;
-}
-
-/** At the channel's own filter ahead of the stage, or at the rate where it has none of its own. */
-function standingFor({ chain, channel }: ChannelView, stage: number): Standing {
-  const own = chain.stages[stage - 1]!.filters.find(({ role }) => role === 'channel' || role === 'step');
-  return own?.use ? standingOn(channel, own.use) : standingOnStage(chain, stage);
 }

@@ -17,6 +17,7 @@ import { linkShort } from './link-short.ts';
 import { noFilter } from './no-filter.ts';
 import { onNyquist } from './on-nyquist.ts';
 import { patternImage } from './pattern-image.ts';
+import { practiceUnmet } from './practice-unmet.ts';
 import { pulseMissed } from './pulse-missed.ts';
 import { rangeWasted } from './range-wasted.ts';
 import { rateOverConverter } from './rate-over-converter.ts';
@@ -55,6 +56,7 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   linesTooCoarse,
   windowLeaks,
   pulseMissed,
+  practiceUnmet,
 ];
 
 /** What is asked of a channel that is a pulse train: it is read for its edges, and nothing in it folds or sags. */

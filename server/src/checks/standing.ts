@@ -2,6 +2,7 @@ import type { Chain } from '../chain/model.ts';
 import type { Channel, Inheritance } from '../rig/model.ts';
 import type { Place } from '../rig/place.ts';
 import type { RelatedPlace } from './finding.ts';
+import { isOwnFilter } from './worst-filter.ts';
 
 /** Where a finding stands, and where else the reader should look because of that. */
 export interface Standing {
@@ -34,6 +35,12 @@ export function standingOn(channel: Channel, value: Placed | undefined): Standin
 export function standingOnStage({ channel, stages }: Chain, stage: number): Standing {
   const step = stages[stage - 1]?.step;
   return standingOn(channel, step ? step.factor : channel.rateHz);
+}
+
+/** At the channel's own filter ahead of a stage (from 1), or at the stage's rate where it has none of its own. */
+export function standingOnFilters(chain: Chain, stage: number): Standing {
+  const own = chain.stages[stage - 1]!.filters.find(isOwnFilter);
+  return own?.use ? standingOn(chain.channel, own.use) : standingOnStage(chain, stage);
 }
 
 /** The filters ahead of a stage (from 1) that the file names, each with a word on it. */

@@ -8,11 +8,11 @@ import { parseOptions } from './options.ts';
 
 export const explain: Command = {
   name: 'explain',
-  summary: 'show the reference page of a check, a remedy or a key',
+  summary: 'show the reference page of a check, a remedy, a practice or a key',
   help: `Usage: ratewright explain [NAME]
 
-Shows what a check finds and why it matters, what a remedy does, or what a key of the
-rig file means. Without a NAME it lists them all.
+Shows what a check finds and why it matters, what a remedy does, what a practice asks
+for, or what a key of the rig file means. Without a NAME it lists them all.
 
   -o, --output FILE         write the page to FILE
 `,

@@ -1,5 +1,8 @@
 import { CompletionItemKind } from 'vscode-languageserver-types';
 import { CHECK_NAMES } from '../checks/list.ts';
+import type { Practice } from '../practices/model.ts';
+import { PRACTICES } from '../practices/practices.ts';
+import { demandText, practiceMarkdown } from '../practices/words.ts';
 import type { Dimension } from '../quantity/dimension.ts';
 import { unitsOf } from '../quantity/unit.ts';
 import { dimensionOf } from '../rig/levels.ts';
@@ -78,11 +81,22 @@ function draftsFor(
       return namesOf(evaluation, kind.of);
     case 'check-name':
       return namesOf(evaluation, 'check');
+    case 'practice-name':
+      return PRACTICES.map(practiceDraft);
     case 'quantity':
       return unitDrafts(unitSymbols(kind, evaluation, channel), cursor);
     default:
       return [];
   }
+}
+
+function practiceDraft(practice: Practice): Draft {
+  return {
+    word: practice.name,
+    kind: CompletionItemKind.Reference,
+    detail: practice.requirements.map(demandText).join('; ').replaceAll('`', ''),
+    doc: practiceMarkdown(practice),
+  };
 }
 
 function namesOf(evaluation: Evaluation, of: ThingKind | 'check'): readonly Draft[] {

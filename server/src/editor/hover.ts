@@ -1,6 +1,8 @@
 import type { Hover } from 'vscode-languageserver-types';
 import { MarkupKind } from 'vscode-languageserver-types';
 import { ALL_CHECKS } from '../checks/list.ts';
+import { practiceNamed } from '../practices/practices.ts';
+import { practiceMarkdown } from '../practices/words.ts';
 import type { Entry } from '../rig/entry.ts';
 import type { Position } from '../rig/place.ts';
 import { keyRow } from '../rig/vocabulary.ts';
@@ -120,6 +122,10 @@ function nameMarkdown(
     if (kind.kind === 'choice') {
       const value = kind.values.find(({ name }) => name === text);
       if (value) return `**${codeMarkdown(value.name)}**\n\n${value.doc}`;
+    }
+    if (kind.kind === 'practice-name') {
+      const practice = practiceNamed(text);
+      if (practice) return `**${practice.name}**\n\n${practiceMarkdown(practice)}`;
     }
     if (kind.kind === 'check-name' || names === 'check') return checkMarkdown(text, abilities);
   }

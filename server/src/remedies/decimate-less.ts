@@ -23,6 +23,7 @@ export const decimateLess: RemedyDefinition = {
     'step-without-filter',
     'on-nyquist',
     'band-droop',
+    'practice-unmet',
   ],
   search: (search) => stepsOfFinding(search).flatMap((placed) => decimatedLess(search, placed)),
 };

@@ -23,6 +23,7 @@ export const sampleFaster: RemedyDefinition = {
     'pattern-image',
     'interleave-image',
     'band-droop',
+    'practice-unmet',
   ],
   search: searchFaster,
 };

@@ -31,6 +31,7 @@ import {
   NOTHING_JOINED,
   type UsedFiles,
 } from './used-things.ts';
+import { withFollows } from './with-follows.ts';
 
 /** What was read of one entry, and what the reading looked at. */
 export interface EntryReading extends Noted {
@@ -187,7 +188,7 @@ export function readCore(
     scope,
     readings,
     defaultsEntry: topLevel.get('defaults'),
-    defaults: top.defaults ?? NO_DEFAULTS,
+    defaults: withFollows(top.defaults ?? NO_DEFAULTS, top.follows),
     severities: top.severities ?? NO_SEVERITIES,
     rigName: top.rigName,
     run: top.run,

@@ -1,3 +1,4 @@
+import type { Practice } from '../practices/model.ts';
 import type { Quantity } from '../quantity/quantity.ts';
 import type { FilterShape } from '../signal/filter-spec.ts';
 import type { Interleave } from '../signal/interleave.ts';
@@ -272,6 +273,15 @@ export interface Run {
   readonly sampleBits: Given<number> | undefined;
 }
 
+/** A practice that a channel follows, and where that is said. */
+export interface FollowedPractice {
+  readonly practice: Practice;
+  readonly place: Place;
+  readonly inherited?: Inheritance;
+  /** The supply that its periods are counted by: the source `mains`, heard or not, where the practice needs it. */
+  readonly mains: Source | undefined;
+}
+
 /**
  * A channel with everything it names resolved and everything it inherits filled in.
  *
@@ -312,4 +322,6 @@ export interface Channel extends Thing {
   /** The smallest step that must be seen. */
   readonly resolve: Given<Level> | undefined;
   readonly spectrum: Given<Spectrum> | undefined;
+  /** Each practice once. */
+  readonly follows: readonly FollowedPractice[];
 }

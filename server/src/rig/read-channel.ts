@@ -16,6 +16,7 @@ import type { Channel, Given, Level, Limit, Peak, Sensor, Undeclared } from './m
 import { findThing } from './names.ts';
 import type { Place } from './place.ts';
 import { readFrequencyRange, readFullScale, readValue } from './quantities.ts';
+import { readFollows } from './read-follows.ts';
 import { readPulses } from './read-pulses.ts';
 import { readSensor, SENSOR_KEYS } from './read-sensor.ts';
 import { readSpectrum } from './read-spectrum.ts';
@@ -73,6 +74,7 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
     headroomDb: readValue(reader, byKey.get('headroom')),
     resolve: resolveField && readChannelLevel(reader, resolveField, sensor?.thing),
     spectrum: readSpectrum(reader, byKey.get('spectrum')),
+    follows: readFollows(reader, byKey.get('follows')),
   };
 }
 

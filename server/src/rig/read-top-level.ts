@@ -16,6 +16,7 @@ import {
 import type { Given, Run, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { channelOf } from './read-channel.ts';
+import { readFollows } from './read-follows.ts';
 import { readRun } from './read-run.ts';
 import { readMains } from './read-source.ts';
 import { readUses } from './read-uses.ts';
@@ -34,6 +35,8 @@ export interface TopLevel {
   readonly joined?: JoinedThings;
   readonly mains?: Source | undefined;
   readonly defaults?: ReadonlyMap<string, Field>;
+  /** What channels take over that have no `follows` of their own, nor one from `defaults`. */
+  readonly follows?: Field;
   readonly severities?: ReadonlyMap<string, SeverityChoice>;
   readonly run?: Run | undefined;
 }
@@ -78,6 +81,8 @@ export function readTopLevel(reader: Reader, checkNames: readonly string[], used
       return readMap(reader, field, readDefaults);
     case 'run':
       return readMap(reader, field, (_, one, node) => ({ run: readRun(reader, one, node) }));
+    case 'follows':
+      return { follows: readFollowsOfAll(reader, field) };
     case 'checks':
       return readMap(reader, field, (_, one, node) => readSeverities(reader, one, node, checkNames));
     default:
@@ -119,6 +124,12 @@ function readDefaults(reader: Reader, field: Field, node: MapNode): TopLevel {
   }
   channelOf(reader, own);
   return { defaults: own.byKey };
+}
+
+/** What all channels follow, as a field that they take over; its names are looked up here, once. */
+function readFollowsOfAll(reader: Reader, field: Field): Field {
+  readFollows(reader, field);
+  return { ...field, inherited: { from: 'defaults', place: placeOf(field.entry, field.node) } };
 }
 
 function readSeverities(reader: Reader, field: Field, node: MapNode, checkNames: readonly string[]): TopLevel {

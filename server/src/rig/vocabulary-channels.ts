@@ -14,6 +14,7 @@ import {
   nameOf,
   number,
   POSITIVE,
+  PRACTICE,
   quantity,
   RANGE_ONLY,
   RATE,
@@ -131,6 +132,14 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     measuredQuantity(['voltage', 'dbfs'], { bounds: {} }),
     '0.01 g',
     'The smallest step that must be seen.',
+  ),
+  row(
+    ['channel', 'rig'],
+    'follows',
+    either(NONE, PRACTICE, listOf(PRACTICE)),
+    'impact-class-1000',
+    'The practices that it has to meet, by their names in the table of practices: one, a list, or `none`. At the top of the file, what every channel follows that says nothing else and has nothing else from `defaults`.',
+    { default: 'none' },
   ),
   row('channel', 'group', nameOf('group'), 'tower', 'The group whose phases are compared.', { computed: false }),
   row(

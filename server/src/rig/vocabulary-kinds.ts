@@ -86,6 +86,8 @@ export type ValueKind =
   | { readonly kind: 'date' }
   /** The name of a check. */
   | { readonly kind: 'check-name' }
+  /** The name of a practice that channels may follow. */
+  | { readonly kind: 'practice-name' }
   /** A range of whole numbers, `1..128`. */
   | { readonly kind: 'number-range'; readonly bounds: Bounds }
   /** Named things, each a map of its context. */
@@ -211,6 +213,7 @@ export function either(...of: readonly ValueKind[]): ValueKind {
 
 export const TEXT: ValueKind = { kind: 'text' };
 export const TRUTH: ValueKind = { kind: 'truth' };
+export const PRACTICE: ValueKind = { kind: 'practice-name' };
 export const FREQUENCY = quantity('frequency', 'Hz');
 export const RATE = quantity(['rate', 'frequency'], 'Hz');
 export const TIME = quantity('time', 's');
