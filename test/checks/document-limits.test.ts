@@ -60,14 +60,8 @@ describe('keys that are not computed', () => {
   });
 
   it('are the same finding wherever the first of them stands', () => {
-    const one = only(
-      `rig: R\n${channels(`a: { ${OK}, then: [{ per-turn: 64 }] }`, `b: { ${OK} }`)}`,
-      'not-computed',
-    );
-    const other = only(
-      `rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, then: [{ per-turn: 64 }] }`)}`,
-      'not-computed',
-    );
+    const one = only(`rig: R\n${channels(`a: { ${OK}, then: [{ per-turn: 64 }] }`, `b: { ${OK} }`)}`, 'not-computed');
+    const other = only(`rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, then: [{ per-turn: 64 }] }`)}`, 'not-computed');
     expect([one.channel, one.thing, one.about]).toEqual([other.channel, other.thing, other.about]);
   });
 });
