@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { parseDocument } from 'yaml';
 import { channels, line, lines, OK } from './document-rig.ts';
-import { findingsOf, found, only } from './judged.ts';
+import { findingsOf } from './judged.ts';
 
 describe('more than is read', () => {
   const AFTER = `b: { ${OK}, rati: 1 }`;
@@ -42,27 +42,6 @@ describe('more than is read', () => {
   it('costs nobody else what it inherits', () => {
     const text = `x-f: &f { response: rc, order: 1, corner: 1 GHz }\n${channels(`a: { ${OK}, filter: [${'*f, '.repeat(20_000)}] }`, `b: { ${OK}, filter: *f }`)}`;
     expect(lines(text)).toEqual(['a: too-much `*f`']);
-  });
-});
-
-describe('keys that are not computed', () => {
-  const keys = (text: string): readonly (string | undefined)[] =>
-    found(`rig: R\n${text}`, 'not-computed').map(({ about }) => about);
-
-  it('are told once for each key of a file, whoever has it', () => {
-    const two = channels(
-      `a: { ${OK}, then: [{ per-turn: 64 }], noise: 1 uV/rtHz }`,
-      `b: { ${OK}, then: [{ per-turn: 64 }] }`,
-    );
-    expect(keys(two)).toEqual(['per-turn', 'noise']);
-    const sensor = `sensors: { s: { noise: 1 uV/rtHz } }\ndefaults: { then: [{ per-turn: 64 }], sensor: s }\n`;
-    expect(keys(sensor + two)).toEqual(['noise', 'per-turn']);
-  });
-
-  it('are the same finding wherever the first of them stands', () => {
-    const one = only(`rig: R\n${channels(`a: { ${OK}, then: [{ per-turn: 64 }] }`, `b: { ${OK} }`)}`, 'not-computed');
-    const other = only(`rig: R\n${channels(`a: { ${OK} }`, `b: { ${OK}, then: [{ per-turn: 64 }] }`)}`, 'not-computed');
-    expect([one.channel, one.thing, one.about]).toEqual([other.channel, other.thing, other.about]);
   });
 });
 

@@ -73,14 +73,6 @@ describe('the rest of the document', () => {
     expect(underlined(finding)).toBe('1000');
   });
 
-  it('says once that a key is not computed, for each key', () => {
-    const channel = 'rate: 1000 Hz, band: 1 Hz .. 10 Hz, undeclared: -90 dBFS, then: [{ per-turn: 64 }]';
-    const text = `rig: Test\nchannels:\n  a: { ${channel} }\n  b: { ${channel}, group: g }\ngroups: { g: { within: 1 deg } }\n`;
-    const about = found(text, 'not-computed').map((finding) => finding.about);
-    expect(about.filter((key) => key === 'per-turn')).toHaveLength(1);
-    expect(new Set(about).size).toBe(about.length);
-  });
-
   it('knows names that channels, things and defaults use', () => {
     const text = `rig: Test
 clocks: { c: { frequency: 1 MHz } }

@@ -236,10 +236,6 @@ describe('a hover on a word of the vocabulary', () => {
     expect(fan('presc▮ale: 256').over).toBe('prescale');
   });
 
-  it('over a key that is not computed yet says so', () => {
-    expect(hover('channels:\n  a:\n    then: [{ per-t▮urn: 64 }]\n')!.shown).toContain('does not compute it yet');
-  });
-
   it('over a name in `checks` tells what the check finds and why it matters', () => {
     const { shown, over } = hover('checks:\n  band-▮droop: hint\n')!;
     expect(over).toBe('band-droop');

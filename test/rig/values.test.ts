@@ -183,12 +183,6 @@ describe('a channel', () => {
     expect(complete('rig: R\nchannels:\n  a: { rate: 1 kHz, pulses: { per-turn: 60, speed: 600 rpm } }\n')).toBe(true);
   });
 
-  it('keeps to the steps before one that is not computed', () => {
-    const rig = readRig(channelRig('then: [{ decimate: 2 }, { per-turn: 64, speed: 600 rpm }, { decimate: 2 }]'));
-    expect(rig.readings[0]!.channel.steps).toHaveLength(1);
-    expect(saidOf(rig)).toEqual(['not-computed: per-turn', 'not-computed: speed']);
-  });
-
   it('that stands for several says that this is not computed', () => {
     const rig = readRig('rig: R\nchannels:\n  "strain-{01..64}": { rate: 1 kHz, band: 1..2 Hz }\n');
     expect(saidOf(rig)).toEqual(['not-computed: "strain-{01..64}"']);
@@ -241,13 +235,6 @@ describe('a whole file', () => {
       ['thin-margin', 'error'],
       ['fold-in-band', 'off'],
     ]);
-  });
-
-  it('says of a key that is not computed just once', () => {
-    const rig = readRig(
-      'rig: R\nchannels:\n  a: { rate: 1 kHz, band: 1..2 Hz, then: [{ per-turn: 64 }] }\n  b: { rate: 1 kHz, band: 1..2 Hz, then: [{ per-turn: 64 }] }\n',
-    );
-    expect(saidOf(rig)).toEqual(['not-computed: per-turn']);
   });
 
   it('says nothing of unknown names while others may know them', () => {

@@ -34,7 +34,6 @@ const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
   source: 'noise spans',
   group: KEYS.group,
   channel: 'group noise',
-  step: 'per-turn speed',
   acceptance: KEYS.acceptance,
 };
 
@@ -68,7 +67,7 @@ function besides(context: ContextName, key: string): string {
   if (context === 'sensor') return key === 'rated' ? 'excitation: 10 V, range: 500 N, ' : '';
   if (context === 'spectrum') return ['lines', 'resolution', 'record'].includes(key) ? '' : 'lines: 800, ';
   if (context === 'run') return RUN_FRAMES.get(key) ?? '';
-  if (context === 'step') return key === 'speed' ? 'per-turn: 64, ' : '';
+  if (context === 'step') return key === 'speed' ? 'per-turn: 64, ' : key === 'per-turn' ? 'speed: 600 rpm, ' : '';
   const others = keysOf(context).filter((row) => row.required && row.key !== key);
   return others.map((row) => `${row.key}: ${row.example}, `).join('');
 }

@@ -11,8 +11,8 @@ export interface Stage {
   readonly inputRateHz: number | undefined;
   /** Everything between the stage before (or the sensor) and this sampling, worst case and nominal. */
   readonly filters: readonly StageFilter[];
-  readonly kind: 'converter' | 'modulator' | 'modulator-decimation' | 'decimate';
-  readonly step: Extract<Step, { kind: 'decimate' }> | undefined;
+  readonly kind: 'converter' | 'modulator' | 'modulator-decimation' | 'decimate' | 'per-turn';
+  readonly step: Extract<Step, { kind: 'decimate' | 'per-turn' }> | undefined;
 }
 
 export interface StageFilter {

@@ -1,4 +1,4 @@
-import type { Channel, Run } from '../rig/model.ts';
+import type { Channel, Run, Step } from '../rig/model.ts';
 import {
   bytesOfDuration,
   bytesOfRecords,
@@ -58,8 +58,15 @@ function streamOf({ channel, chain }: StoredChannel, { sampleBits }: Run): Store
 }
 
 /** What is not checked, for want of a band, say, is stored all the same. */
-function keptRateOf({ rateHz, steps }: Channel, chain: Chain | undefined): number | undefined {
-  if (chain) return chain.ratesHz[chain.ratesHz.length - 1];
-  if (!rateHz) return undefined;
-  return steps.reduce((hz, step) => (step.kind === 'decimate' ? hz / step.factor.value : hz), rateHz.value);
+function keptRateOf({ rateHz, steps, pattern }: Channel, chain: Chain | undefined): number | undefined {
+  const sampledHz = chain?.rateHz ?? rateHz?.value;
+  if (sampledHz === undefined) return undefined;
+  const kept = pattern ? pattern.value.taken.length / pattern.value.slots : 1;
+  return steps.reduce(rateBehind, sampledHz * kept);
+}
+
+/** A record that follows a shaft is as large as the shaft is fast: at its highest speed. */
+function rateBehind(hz: number, step: Step): number {
+  if (step.kind === 'decimate') return hz / step.factor.value;
+  return step.kind === 'per-turn' ? step.perTurn.value * step.speed.value.highHz : hz;
 }

@@ -14,8 +14,8 @@ export interface PlannedFilter {
 
 export interface PlannedStage {
   readonly kind: Stage['kind'];
-  readonly step: Extract<Step, { kind: 'decimate' }> | undefined;
-  /** Of the rate before it; 1 for the first stage. */
+  readonly step: Extract<Step, { kind: 'decimate' | 'per-turn' }> | undefined;
+  /** Of the rate before it; 1 for the first stage. Not whole where a shaft decides the rate. */
   readonly factor: number;
   readonly filters: readonly PlannedFilter[];
 }
@@ -29,7 +29,7 @@ export interface Plan {
 }
 
 /** What a channel's text says is done to its signal. */
-export function planOf(channel: Channel): Plan {
+export function planOf(channel: Channel, channelRateHz: number): Plan {
   const { digitizer } = channel;
   const oversampling = Math.max(digitizer?.modulatorMultiple?.value ?? 1, 1);
   const analogue: PlannedFilter[] = planned(channel.filters, 'channel');
@@ -44,13 +44,28 @@ export function planOf(channel: Channel): Plan {
     stages.push({ kind: 'modulator-decimation', step: undefined, factor: oversampling, filters });
   }
   let waiting: PlannedFilter[] = [];
+  let rateHz = channelRateHz;
   for (const step of channel.steps) {
     waiting.push(...planned(step.filters, 'step'));
-    if (step.kind !== 'decimate' || step.factor.value === 1) continue;
-    stages.push({ kind: 'decimate', step, factor: step.factor.value, filters: waiting });
+    const factor = factorOf(step, rateHz);
+    if (step.kind === 'filter' || factor === 1) continue;
+    stages.push({ kind: step.kind, step, factor, filters: waiting });
+    rateHz /= factor;
     waiting = [];
   }
   return { oversampling, stages, after: waiting };
+}
+
+/** By how much a step lowers the rate; one that resamples to shaft angle is taken at the top of its speed. */
+function factorOf(step: Step, inputRateHz: number): number {
+  switch (step.kind) {
+    case 'decimate':
+      return step.factor.value;
+    case 'per-turn':
+      return inputRateHz / (step.perTurn.value * step.speed.value.highHz);
+    case 'filter':
+      return 1;
+  }
 }
 
 function planned(uses: readonly FilterUse[], role: StageFilter['role']): PlannedFilter[] {
@@ -131,7 +146,8 @@ function makePath(channel: Channel, plan: Plan, rateHz: number): SignalPath {
   const responses: (readonly (Response | undefined)[])[] = [];
   let inputRateHz = rateHz * plan.oversampling;
   for (const { kind, factor, filters } of plan.stages) {
-    const fractionOfHz = kind === 'modulator-decimation' ? rateHz : inputRateHz;
+    const isInOrders = kind === 'per-turn';
+    const fractionOfHz = kind === 'modulator-decimation' ? rateHz : isInOrders ? inputRateHz / factor : inputRateHz;
     responses.push(
       filters.map(({ use, role }) => {
         if (role === 'low-corner') return lowCornerResponse(digitizer?.lowCornerHz?.value ?? 0);

@@ -34,7 +34,8 @@ export function standingOn(channel: Channel, value: Placed | undefined): Standin
 /** Where a finding about the rate of a stage (from 1) stands: the rate itself, or the factor of a step. */
 export function standingOnStage({ channel, stages }: Chain, stage: number): Standing {
   const step = stages[stage - 1]?.step;
-  return standingOn(channel, step ? step.factor : channel.rateHz);
+  if (step) return standingOn(channel, step.kind === 'decimate' ? step.factor : step.perTurn);
+  return standingOn(channel, channel.rateHz);
 }
 
 /** At the channel's own filter ahead of a stage (from 1), or at the stage's rate where it has none of its own. */

@@ -65,7 +65,7 @@ function saidOfStage(view: ChannelView, index: number): readonly Said[] {
   return [
     {
       stage,
-      message: `Keeping every ${ordinal(step?.factor.value ?? 1)} sample without a filter folds everything above ${formatHz(rateHz / 2)} (half of ${rateText(rateHz)}) below it. Of ${what} at ${formatHz(atHz)} up to ${levelText(level, chain)} arrives in the band, ${overLimitText(level, chain)}.`,
+      message: `Keeping every ${ordinal(step?.kind === 'decimate' ? step.factor.value : 1)} sample without a filter folds everything above ${formatHz(rateHz / 2)} (half of ${rateText(rateHz)}) below it. Of ${what} at ${formatHz(atHz)} up to ${levelText(level, chain)} arrives in the band, ${overLimitText(level, chain)}.`,
       place: standing.place,
       related: standing.related,
       figures: { atHz, ...levelFigures(level, chain), stage },

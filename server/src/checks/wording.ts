@@ -1,6 +1,7 @@
 import type { Chain } from '../chain/model.ts';
 import { findUnit, ownUnit } from '../quantity/unit.ts';
 import { formatHz, formatQuantity } from '../quantity/write.ts';
+import type { Step } from '../rig/model.ts';
 import { ratioOf } from '../signal/decibel.ts';
 
 /** Significant digits of a difference in decibels, and of levels that are not in decibels. */
@@ -90,6 +91,14 @@ export function stageText({ stages }: Chain, stage: number): string {
     case 'modulator-decimation':
       return `where the converter decimates to ${rateText(rateHz)}`;
     case 'decimate':
-      return `where every ${ordinal(step?.factor.value ?? 1)} sample is kept (${rateText(rateHz)})`;
+      return `where every ${ordinal(step?.kind === 'decimate' ? step.factor.value : 1)} sample is kept (${rateText(rateHz)})`;
+    case 'per-turn':
+      return step?.kind === 'per-turn' ? perTurnText(step, rateHz) : '';
   }
+}
+
+/** At which speed it is, since that decides the rate. */
+function perTurnText({ perTurn }: Extract<Step, { kind: 'per-turn' }>, rateHz: number): string {
+  const speedRpm = Number(((60 * rateHz) / perTurn.value).toPrecision(5));
+  return `where it is resampled to ${perTurn.value} samples a turn (${rateText(rateHz)} at ${speedRpm} rpm)`;
 }

@@ -66,10 +66,18 @@ function sharedStep(search: Search, { index, step }: PlacedStep, key: string, va
   return channels > 1 ? { edits, channels } : undefined;
 }
 
+function textAt({ entry, start, end }: Given<unknown>['place']): string {
+  return entry.text.slice(start, end);
+}
+
 /** A step as it would be written; `undefined` where it has a filter without a name. */
 function stepText(step: Step, changes: ReadonlyMap<string, NewValue>): NewValue | undefined {
   const pairs = new Map<string, NewValue>();
   if (step.kind === 'decimate') pairs.set('decimate', String(step.factor.value));
+  if (step.kind === 'per-turn') {
+    pairs.set('per-turn', String(step.perTurn.value));
+    pairs.set('speed', textAt(step.speed.place));
+  }
   if (step.filters.length > 0 && !changes.has('filter')) {
     const names = filterNames(step.filters);
     if (!names) return undefined;

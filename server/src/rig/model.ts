@@ -231,7 +231,16 @@ export type Step =
       readonly filters: readonly FilterUse[];
       readonly place: Place;
     }
-  | { readonly kind: 'filter'; readonly filters: readonly FilterUse[]; readonly place: Place };
+  | { readonly kind: 'filter'; readonly filters: readonly FilterUse[]; readonly place: Place }
+  | {
+      /** Resampling to shaft angle; `fs` in its filters is the rate that it leaves, so that they are in orders. */
+      readonly kind: 'per-turn';
+      readonly perTurn: Given<number>;
+      /** In turns per second. */
+      readonly speed: Given<FrequencyRange>;
+      readonly filters: readonly FilterUse[];
+      readonly place: Place;
+    };
 
 export type Limit = { readonly kind: 'ratio'; readonly ratio: number } | Level;
 

@@ -1,15 +1,21 @@
-import { type Field, type Fields, itemsOf, placeOf, readFieldsOf, reportMissingKey } from './fields.ts';
+import {
+  type Field,
+  type Fields,
+  itemsOf,
+  placeOf,
+  readFieldsOf,
+  reportMissingKey,
+  reportMissingKeys,
+} from './fields.ts';
 import { readFilterUses } from './filter-uses.ts';
 import type { FilterUse, Step } from './model.ts';
+import { readFrequencyRange } from './quantities.ts';
 import type { Reader } from './reader.ts';
 import { checkUncomputed } from './uncomputed.ts';
 import { readNumber, reportValue, reportWrongKind } from './values.ts';
 import { keyRow } from './vocabulary.ts';
 
-/**
- * The digital steps of a channel, in order. What comes behind a step that this version does not compute is left out:
- * its rates are not known.
- */
+/** The digital steps of a channel, in order. */
 export function readSteps(reader: Reader, field: Field | undefined): readonly Step[] {
   if (!field || field.node.kind === 'empty') return [];
   if (field.node.kind !== 'list') {
@@ -17,7 +23,6 @@ export function readSteps(reader: Reader, field: Field | undefined): readonly St
     return [];
   }
   const steps: Step[] = [];
-  let computed = true;
   for (const item of itemsOf(reader, field, field.node.items, field.kind)) {
     if (item.node.kind !== 'map') {
       reportWrongKind(reader, item);
@@ -26,8 +31,7 @@ export function readSteps(reader: Reader, field: Field | undefined): readonly St
     const fields = readFieldsOf(reader, 'step', item, item.node);
     checkUncomputed(reader, fields);
     const step = readStep(reader, fields, item);
-    computed &&= !fields.byKey.has('per-turn');
-    if (step && computed) steps.push(step);
+    if (step) steps.push(step);
   }
   return steps;
 }
@@ -41,7 +45,13 @@ function readStep(reader: Reader, fields: Fields, item: Field): Step | undefined
     const factor = readNumber(reader, decimate);
     return factor && { kind: 'decimate', factor, filters, place };
   }
-  if (fields.byKey.has('per-turn')) return undefined;
+  const perTurn = fields.byKey.get('per-turn');
+  if (perTurn) {
+    const count = readNumber(reader, perTurn);
+    reportMissingKeys(reader, fields, ['speed']);
+    const speed = readFrequencyRange(reader, fields.byKey.get('speed'));
+    return count && speed && { kind: 'per-turn', perTurn: count, speed, filters, place };
+  }
   if (!filterField) {
     reportMissingKey(reader, fields, 'decimate', keyRow('step', 'decimate')?.example);
     return undefined;

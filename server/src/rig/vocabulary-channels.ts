@@ -172,10 +172,20 @@ const STEP_ROWS: readonly KeyRow[] = [
   row('step', 'filter', FILTERS, 'tidy', 'The digital filters of this step, ahead of its decimation.', {
     default: 'none',
   }),
-  row('step', 'per-turn', integer({ low: 1 }), '64', 'Resamples to so many samples for each turn of a shaft.', {
-    computed: false,
-  }),
-  row('step', 'speed', SPEED, '600..3000 rpm', "The shaft's speed.", { computed: false }),
+  row(
+    'step',
+    'per-turn',
+    integer({ low: 1 }),
+    '64',
+    'Resamples to so many samples for each turn of a shaft. In its filters `fs` is the rate that it leaves, so that they are in orders.',
+  ),
+  row(
+    'step',
+    'speed',
+    SPEED,
+    '600..3000 rpm',
+    "The shaft's speed. A rotating source of the same speed is taken to turn with it.",
+  ),
 ];
 
 const PULSES_ROWS: readonly KeyRow[] = [
