@@ -4,7 +4,7 @@ import type { FoldedPiece } from '../signal/folding.ts';
 import { mismatchRatio } from '../signal/interleave.ts';
 import { patternImages } from '../signal/pattern.ts';
 import { coincidenceOf, foldShifted, partnerOf, shiftHzOf } from '../signal/shifted-folding.ts';
-import { componentsOf } from './components.ts';
+import { type Component, componentsOf } from './components.ts';
 import type { Chain } from './model.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
 import { strongestOf } from './strongest.ts';
@@ -112,8 +112,7 @@ export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
           const part = landing(piece, chain);
           if (!part) continue;
           const strongest = strongestOf(chain.path, piece, levels.entry === 'sensor', part.from, part.to);
-          const isTone = component.lowHz === component.highHz;
-          const added = isTone ? rule.partnerGain(component.lowHz, chain.ratesHz[0]!) : 0;
+          const added = coincidingGain(rule, component, chain);
           const level = componentDb + decibels(rule.ratioAt(strongest.atHz) + added) - strongest.attenuationDb;
           if (!(level > chain.foldLimit)) continue;
           found.push({
@@ -134,6 +133,15 @@ export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
     }
   }
   return found;
+}
+
+/** What a second image adds where a single tone may stand at a place where two of its own images coincide. */
+function coincidingGain(rule: ImageRule, { lowHz, highHz, nominalHz }: Component, { ratesHz }: Chain): number {
+  if (nominalHz === undefined) return 0;
+  const halfSpacingHz = ratesHz[0]! / (2 * rule.turns);
+  const nearestHz = Math.round(nominalHz / halfSpacingHz) * halfSpacingHz;
+  const isWithin = nearestHz >= lowHz * (1 - 1e-9) && nearestHz <= highHz * (1 + 1e-9);
+  return isWithin ? rule.partnerGain(nearestHz, ratesHz[0]!) : 0;
 }
 
 const NOTHING: readonly never[] = [];

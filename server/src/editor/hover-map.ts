@@ -5,6 +5,7 @@ import { aliasMapModel } from '../picture/alias-map-model.ts';
 import { aliasMapSvg } from '../picture/alias-map-svg.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { JudgedChannel } from '../workbench/evaluation.ts';
+import { windowsText } from '../workbench/rate-words.ts';
 import type { ClientAbilities } from './client-abilities.ts';
 import {
   codeMarkdown,
@@ -40,8 +41,9 @@ export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): 
 function headline(chain: Chain, judged: JudgedChannel): string {
   const last = chain.stages.at(-1)!;
   const counts = judged.result.findings.length;
+  const windows = windowsText(chain);
   const verdict = counts === 0 ? 'clean' : counts === 1 ? '1 finding' : `${counts} findings`;
-  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}`;
+  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}${windows === undefined ? '' : `\n\n${windows}`}`;
 }
 
 function bandText({ isBandpass, bandHighHz, recordedBand }: Chain): string {

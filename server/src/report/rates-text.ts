@@ -1,6 +1,6 @@
 import { formatHz } from '../quantity/write.ts';
 import type { JudgedChannel } from '../workbench/evaluation.ts';
-import { verdictText } from '../workbench/rate-words.ts';
+import { verdictText, windowsText } from '../workbench/rate-words.ts';
 import type { RateVerdict } from '../workbench/rates.ts';
 import type { Paint } from './paint.ts';
 import { printable } from './printable.ts';
@@ -21,5 +21,7 @@ export function ratesText(judged: JudgedChannel, rates: readonly RateVerdict[], 
     const ink = rated.errors > 0 ? 'error' : rated.warnings > 0 ? 'warning' : 'strong';
     return `${mark} ${rate.padStart(rateWidth)}  ${margin.padStart(marginWidth)}  ${paint(verdict, ink)}`;
   });
-  return `${printable(judged.result.channel.name)}\n\n${paint(head, 'quiet')}\n${lines.join('\n')}\n`;
+  const windows = judged.result.chain && windowsText(judged.result.chain);
+  const about = windows === undefined ? '' : `${windows}\n\n`;
+  return `${printable(judged.result.channel.name)}\n\n${about}${paint(head, 'quiet')}\n${lines.join('\n')}\n`;
 }
