@@ -1,7 +1,7 @@
 import { arrivalsOf } from '../chain/arrivals.ts';
 import type { Arrival } from '../chain/model.ts';
 import type { ChannelResult } from '../checks/channel-result.ts';
-import { formatHz, formatQuantity } from '../quantity/write.ts';
+import { formatHz } from '../quantity/write.ts';
 import type { Search } from './search.ts';
 
 /**
@@ -47,8 +47,4 @@ export function dataCost(before: number, after: number): string {
 /** Three significant digits, no more. */
 export function formatNumber(value: number): string {
   return String(Number(value.toPrecision(3)));
-}
-
-export function formatDb(db: number): string {
-  return formatQuantity(Number(db.toFixed(1)), 'decibel');
 }

@@ -1,4 +1,5 @@
 import type { Finding } from '../checks/finding.ts';
+import { MOST_CANDIDATES_PROVED } from '../rig/limits.ts';
 import { addFilter } from './add-filter.ts';
 import { addMissingKey } from './add-missing-key.ts';
 import { chooseRange } from './choose-range.ts';
@@ -41,9 +42,6 @@ export const REMEDIES: readonly RemedyPage[] = DEFINITIONS;
 
 export const REMEDY_NAMES: readonly string[] = DEFINITIONS.map(({ name }) => name);
 
-/** How many candidates are proved for one finding, each by checking the edited text again. */
-const MOST_PROOFS = 64;
-
 const TITLE_BEGINS: Readonly<Record<RemedyKind, string>> = {
   text: '',
   setting: '',
@@ -64,7 +62,7 @@ export function remediesFor(context: RemedyContext, before: readonly Finding[], 
   const seen = new Set<string>();
   let proofs = 0;
   for (const candidate of candidatesFor(context)) {
-    if (context.isCancelled() || proofs >= MOST_PROOFS) break;
+    if (context.isCancelled() || proofs >= MOST_CANDIDATES_PROVED) break;
     const twin = JSON.stringify(candidate.edits);
     if (seen.has(twin)) continue;
     seen.add(twin);

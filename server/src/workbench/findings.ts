@@ -55,13 +55,6 @@ function withFewSyntaxFindings(all: readonly Finding[]): readonly Finding[] {
   return [...all.filter((finding) => !out.has(finding)), summary];
 }
 
-/** How many findings of each severity there are. */
-export function countFindings(evaluation: Evaluation): SeverityCounts {
-  const counts = { error: 0, warning: 0, hint: 0 };
-  for (const finding of allFindings(evaluation)) counts[finding.severity]++;
-  return counts;
-}
-
 /** Every finding with its range, ordered by position. */
 export function locatedFindings(evaluation: Evaluation): readonly LocatedFinding[] {
   return inPlaces(evaluation, allFindings(evaluation));
