@@ -1,13 +1,10 @@
-import { triggeredRecords } from '../chain/run-storage.ts';
+import { mostAverages } from '../chain/run-averages.ts';
 import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
 import { formatQuantity } from '../quantity/write.ts';
 import type { Channel, Given, Run } from '../rig/model.ts';
-import { averagesThatFit, totalTimeS } from '../signal/spectrum-plan.ts';
+import { totalTimeS } from '../signal/spectrum-plan.ts';
 import { type Check, type RigView, SAYS_NOTHING, type SaidOfRig } from './check.ts';
 import { standingOn } from './standing.ts';
-
-/** Relative. */
-const ROUNDING = 1e-9;
 
 export const recordTooLong: Check<'rig'> = {
   name: 'record-too-long',
@@ -49,37 +46,39 @@ channels:
 };
 
 function overlong(channel: Channel, spectrum: ChannelSpectrum, run: Run): SaidOfRig | undefined {
-  const triggered = triggeredRecords(run);
-  if (triggered) return overTriggered(channel, spectrum, run);
-  const { durationS } = run;
-  if (!durationS) return undefined;
+  const most = mostAverages(spectrum, run);
+  if (most === undefined || spectrum.settings.averages <= most) return undefined;
+  const { durationS, records, recordS } = run;
+  if (records && recordS) return overTriggered(channel, spectrum, most, records.value, recordS);
+  return durationS && overDuration(channel, spectrum, most, durationS);
+}
+
+function overDuration(channel: Channel, spectrum: ChannelSpectrum, most: number, durationS: Given<number>): SaidOfRig {
   const { settings, record } = spectrum;
   const totalS = totalTimeS(record.recordS, settings.overlap, settings.averages);
-  if (totalS <= durationS.value * (1 + ROUNDING)) return undefined;
   const time = timeText(durationS.value);
   const what =
     settings.averages === 1
       ? `A record of ${timeText(record.recordS)} will not fit in the ${time} that are recorded.`
       : `${settings.averages} averages will not fit in the ${time} that are recorded: with records of ${timeText(record.recordS)} they take ${timeText(totalS)}.`;
-  const isAveraged = record.recordS <= durationS.value * (1 + ROUNDING);
-  return saidOf(channel, spectrum, isAveraged, what, durationS, { totalS, recordedS: durationS.value });
+  return saidOf(channel, spectrum, most > 0, what, durationS, { totalS, recordedS: durationS.value });
 }
 
-function overTriggered(channel: Channel, spectrum: ChannelSpectrum, run: Run): SaidOfRig | undefined {
-  const { records, recordS } = run;
-  if (!records || !recordS) return undefined;
+function overTriggered(
+  channel: Channel,
+  spectrum: ChannelSpectrum,
+  most: number,
+  records: number,
+  recordS: Given<number>,
+): SaidOfRig {
   const { settings, record } = spectrum;
-  const each = averagesThatFit(record.recordS, settings.overlap, recordS.value);
-  const most = each * records.value;
-  if (settings.averages <= most) return undefined;
   const time = timeText(recordS.value);
   const what =
-    each === 0
+    most === 0
       ? `A record of ${timeText(record.recordS)} will not fit in the ${time} of a triggered record.`
-      : `${settings.averages} averages will not fit in ${records.value} triggered records of ${time}: at ${timeText(record.recordS)} each, ${most} do.`;
-  const neededS = (recordS.value * settings.averages) / Math.max(most, 1);
-  const totalS = each === 0 ? record.recordS : neededS;
-  return saidOf(channel, spectrum, each > 0, what, recordS, { totalS, recordedS: recordS.value });
+      : `${settings.averages} averages will not fit in ${records} triggered records of ${time}: at ${timeText(record.recordS)} each, ${most} do.`;
+  const totalS = most === 0 ? record.recordS : (recordS.value * settings.averages) / most;
+  return saidOf(channel, spectrum, most > 0, what, recordS, { totalS, recordedS: recordS.value });
 }
 
 /** It is the averages that are too many, or else the record itself that is too long. */

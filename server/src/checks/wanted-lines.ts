@@ -131,8 +131,8 @@ function closestSideband(source: Extract<Source, { type: 'modulated' }>, chain: 
   return undefined;
 }
 
-/** Where what sweeps is looked for: as it is, below the Nyquist frequency of the record. */
-function bandOf({ bandLowHz, bandHighHz, ratesHz }: Chain): FrequencyRange {
+/** Where what sweeps is looked for, in true frequency: a band that is not folded on purpose ends with the record. */
+function bandOf({ bandLowHz, bandHighHz, isBandpass, ratesHz }: Chain): FrequencyRange {
   const nyquistHz = ratesHz[ratesHz.length - 1]! / 2;
-  return { lowHz: bandLowHz, highHz: Math.min(bandHighHz, nyquistHz) };
+  return { lowHz: bandLowHz, highHz: isBandpass ? bandHighHz : Math.min(bandHighHz, nyquistHz) };
 }

@@ -150,12 +150,12 @@ function reachBins({ settings, record }: ChannelSpectrum, belowDb: number): numb
 }
 
 function coverOf(arrival: Arrival, bins: number, chain: Chain, { settings, record }: ChannelSpectrum): Covered {
-  const { bandLowHz, bandHighHz } = chain;
+  const { lowHz, highHz } = chain.recordedBand;
   const hz = recordedAtHz(arrival, chain);
   const reachHz = bins * record.resolutionHz;
   const ownHz = windowFigures(settings.window).bandwidth6DbBins * record.resolutionHz;
-  const below = Math.min(reachHz, hz - bandLowHz) - ownHz;
-  const above = Math.min(reachHz, bandHighHz - hz) - ownHz;
-  const part = (Math.max(below, 0) + Math.max(above, 0)) / (bandHighHz - bandLowHz);
+  const below = Math.min(reachHz, hz - lowHz) - ownHz;
+  const above = Math.min(reachHz, highHz - hz) - ownHz;
+  const part = (Math.max(below, 0) + Math.max(above, 0)) / (highHz - lowHz);
   return { arrival, hz, reachHz, part };
 }

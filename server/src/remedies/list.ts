@@ -2,11 +2,14 @@ import type { Finding } from '../checks/finding.ts';
 import { MOST_CANDIDATES_PROVED } from '../rig/limits.ts';
 import { addFilter } from './add-filter.ts';
 import { addMissingKey } from './add-missing-key.ts';
+import { anotherWindow } from './another-window.ts';
 import { chooseRange } from './choose-range.ts';
 import { correctSpelling } from './correct-spelling.ts';
 import { decimateLess } from './decimate-less.ts';
 import type { Proposal, RemedyDefinition, RemedyPage } from './definition.ts';
+import { fewerAverages } from './fewer-averages.ts';
 import { filterTheStep } from './filter-the-step.ts';
+import { longerRecord } from './longer-record.ts';
 import { narrowBand } from './narrow-band.ts';
 import { mayStandWithout, noWorseThan } from './proof.ts';
 import type { Candidate, Remedy, RemedyContext, RemedyKind, Trial } from './remedy.ts';
@@ -30,6 +33,9 @@ const DEFINITIONS: readonly RemedyDefinition[] = [
   sampleElsewhere,
   decimateLess,
   chooseRange,
+  longerRecord,
+  anotherWindow,
+  fewerAverages,
   steeperFilter,
   addFilter,
   narrowBand,
