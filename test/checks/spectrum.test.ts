@@ -118,6 +118,21 @@ describe('lines-too-coarse', () => {
     expect(mesh('carrier: 300 Hz .. 600 Hz, modulation: 12 Hz, sidebands: 0')).toEqual([]);
   });
 
+  it('looks into a band that is folded on purpose', () => {
+    // 2.1 .. 2.4 kHz at 2560 Hz is recorded upside down, from 160 to 460 Hz.
+    const bandpass = (source: string) =>
+      found(
+        rig(`  s: { ${source}, wanted: true }\n`, '{ record: 1 ms }').replace(
+          'band: 10 Hz .. 1 kHz',
+          'sampling: bandpass\n    band: 2.1 kHz .. 2.4 kHz',
+        ),
+        'lines-too-coarse',
+      ).map(({ figures }) => figures['distanceHz']);
+    expect(bandpass('carrier: 2.2 kHz, modulation: 12 Hz')).toEqual([12]);
+    expect(bandpass('carrier: 2.2 kHz .. 2.3 kHz, modulation: 12 Hz')).toEqual([12]);
+    expect(bandpass('carrier: 200 Hz, modulation: 12 Hz')).toEqual([]);
+  });
+
   it('counts lines at the rate of the last stage', () => {
     // 400 lines at 2560 Hz are 2.5 Hz apart, and at a quarter of that 0.625 Hz.
     const text = rig('', '{ lines: 400, separate: 4 Hz }').replace('10 Hz .. 1 kHz', '10 Hz .. 100 Hz');

@@ -40,6 +40,11 @@ describe('disk-short', () => {
     expect(only(bare, 'disk-short').figures['bytes']).toBe(3000);
   });
 
+  it('counts the slots that a pattern takes', () => {
+    const burst = '  a: { digitizer: d, rate: 10 kHz, pattern: { of: 10, take: [0, 1, 2, 3] } }\n';
+    expect(only(rig('{ duration: 1 s, disk: 1 B }', burst), 'disk-short').figures['bytes']).toBe(12_000);
+  });
+
   it('counts triggered records by their whole samples, however long the run lasts', () => {
     // 200 records of 0.10005 s: 1000 samples of 3 bytes and 100 of 2 bytes each.
     const finding = only(rig('{ duration: 8 h, records: 200, record: 100.05 ms, disk: 600 kB }', TWO), 'disk-short');

@@ -18,6 +18,18 @@ export const faultyRig: fc.Arbitrary<string> = fc
     slip: fc.constantFrom('', 'flatnes: 1 dB', 'filter: crad', 'headroom: 3', 'digitizer: fornt-end'),
     follows: fc.constantFrom('', '', 'follows: shock-peaks', 'follows: [impact-class-1000, spectrum-work-80-db]'),
     style: fc.constantFrom('block', 'flow', 'defaults', 'alias'),
+    spectrum: fc.constantFrom(
+      '',
+      '',
+      'spectrum: { lines: 100, separate: 40 Hz }',
+      "spectrum: { record: '0.01 s', averages: 300, overlap: 50 % }",
+      'spectrum: { resolution: 50Hz, window: rectangle, averages: 4 }',
+    ),
+    run: fc.constantFrom(
+      '',
+      'run: { duration: 1 s, disk: 100 kB }',
+      'run: { duration: 10 min, records: 3, record: 200 ms, link: 1 kB/s }',
+    ),
     lineEnd: fc.constantFrom('\n', '\n', '\r\n'),
   })
   .map((draft) => {
@@ -48,6 +60,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
         draft.peak,
         draft.step,
         draft.follows,
+        draft.spectrum,
       ].filter((key) => key !== '');
     const channels = draft.rates.flatMap((rate, index): string[] => {
       const slip = index === 0 && draft.slip !== '' ? draft.slip : undefined;
@@ -61,14 +74,15 @@ export const faultyRig: fc.Arbitrary<string> = fc
         case 'defaults':
           return [
             `  ch-${index}:   # position ${index}`,
-            ...all
-              .filter((key) => !key.startsWith('rate') && !key.startsWith('filter: card'))
-              .map((key) => `    ${key}`),
+            ...all.filter((key) => !/^(rate|filter: card|spectrum)/.test(key)).map((key) => `    ${key}`),
           ];
         default:
           return [`  ch-${index}:`, ...all.map((key) => `    ${key}`), `    # end of ${index}`];
       }
     });
-    const defaults = draft.style === 'defaults' ? ['defaults:', `  rate: ${draft.rates[0]}`, '  filter: card'] : [];
-    return [...head, ...defaults, 'channels:', ...channels, ''].join(draft.lineEnd);
+    const defaults =
+      draft.style === 'defaults'
+        ? ['defaults:', `  rate: ${draft.rates[0]}`, '  filter: card', `  ${draft.spectrum}`]
+        : [];
+    return [...head, draft.run, ...defaults, 'channels:', ...channels, ''].join(draft.lineEnd);
   });

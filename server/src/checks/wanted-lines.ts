@@ -44,11 +44,11 @@ export function closestWanted({ channel, chain, arrivals }: ChannelView): Wanted
   return closest;
 }
 
-/** Of lines that stand still. */
+/** Of lines that stand still; one that lands in the band by folding belongs to the fold checks. */
 function closestStanding(arrivals: readonly Arrival[], { ratesHz }: Chain): WantedPair | undefined {
   const lines: WantedLine[] = [];
-  for (const { source, component, nominalHz, inBand } of arrivals) {
-    if (!source.wanted || nominalHz === undefined || !inBand) continue;
+  for (const { source, component, nominalHz, inBand, folded } of arrivals) {
+    if (!source.wanted || nominalHz === undefined || !inBand || folded) continue;
     lines.push({ source, component, hz: ratesHz.reduce(foldHz, nominalHz) });
   }
   lines.sort((one, other) => one.hz - other.hz);
