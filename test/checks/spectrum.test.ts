@@ -133,6 +133,20 @@ describe('lines-too-coarse', () => {
     expect(bandpass('carrier: 200 Hz, modulation: 12 Hz')).toEqual([]);
   });
 
+  it('counts orders where the record follows the shaft, whatever its speed', () => {
+    // 2.56 x 25 = 64 samples of 64 a turn are one turn: lines one order apart, a Hann window asks for two.
+    const orders = (order: number, lines: number) =>
+      found(
+        rig(
+          `  one: { order: 4, speed: 600..3000 rpm, wanted: true }\n  two: { order: ${order}, speed: 600..3000 rpm, wanted: true }\n`,
+          `{ lines: ${lines} }`,
+          '    then: [{ per-turn: 64, speed: 600..3000 rpm }]\n',
+        ).replace('10 Hz .. 1 kHz', '10 Hz .. 100 Hz'),
+        'lines-too-coarse',
+      ).length;
+    expect([orders(5, 25), orders(6, 25), orders(5, 50)]).toEqual([1, 0, 0]);
+  });
+
   it('counts lines at the rate of the last stage', () => {
     // 400 lines at 2560 Hz are 2.5 Hz apart, and at a quarter of that 0.625 Hz.
     const text = rig('', '{ lines: 400, separate: 4 Hz }').replace('10 Hz .. 1 kHz', '10 Hz .. 100 Hz');

@@ -31,8 +31,9 @@ export interface WantedPair {
  * What sweeps over a range is one line at any time. Its distance from others is known only where they move with it:
  * harmonics of one source, orders of one shaft (sources with the same range of speed), a carrier and its sidebands.
  */
-export function closestWanted({ channel, chain, arrivals }: ChannelView): WantedPair | undefined {
-  const wanted = channel.heard.filter(({ source }) => source.wanted).map(({ source }) => source);
+export function closestWanted({ chain, arrivals }: ChannelView): WantedPair | undefined {
+  // A chain that follows a shaft is at one speed, and so is what turns with it there.
+  const wanted = chain.channel.heard.filter(({ source }) => source.wanted).map(({ source }) => source);
   if (wanted.length === 0) return undefined;
   let closest: WantedPair | undefined;
   const consider = (pair: WantedPair | undefined): void => {
