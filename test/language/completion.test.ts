@@ -201,7 +201,9 @@ describe('names and values', () => {
     expect(labels('clocks:\n  bare: {}\n  other: { locked-to: ▮ }')).toContain('bare');
     expect(labels('digitizers:\n  bare: {}\nchannels:\n  a: { digitizer: ▮')).toContain('bare');
     expect(labels('sensors:\n  bare: {}\nchannels:\n  a: { sensor: ▮')).toContain('bare');
-    expect(labels('groups:\n  tower: {}\nchannels:\n  a: { group: ▮')).toEqual([]);
+    expect(labels('groups:\n  bare: {}\nchannels:\n  a: { group: ▮')).toContain('bare');
+    const grouped = 'groups:\n  tower: { within: 2 deg, up-to: 1 kHz }\nchannels:\n  a: { group: ▮';
+    expect(offers(grouped)!.item('tower').detail).toBe('within 2 deg up to 1 kHz');
   });
 
   it('are the words of a choice, with what each means', () => {

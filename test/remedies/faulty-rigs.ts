@@ -30,6 +30,15 @@ export const faultyRig: fc.Arbitrary<string> = fc
       'run: { duration: 1 s, disk: 100 kB }',
       'run: { duration: 10 min, records: 3, record: 200 ms, link: 1 kB/s }',
     ),
+    scan: fc.constantFrom(
+      '',
+      '',
+      ', sampling: scanned',
+      ', sampling: scanned, max-rate: 30 kHz',
+      ', sampling: scanned, settling: 6 us',
+      ', sampling: scanned, scan-interval: 40 us, settling: 6 us',
+    ),
+    group: fc.constantFrom('', '', 'group: pair'),
     lineEnd: fc.constantFrom('\n', '\n', '\r\n'),
   })
   .map((draft) => {
@@ -40,7 +49,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
       'clocks:',
       '  chassis: { frequency: 13.1072 MHz, divide: 1..512 }',
       'digitizers:',
-      '  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V, ranges: [±10 V, ±1 V] }',
+      `  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V, ranges: [±10 V, ±1 V]${draft.scan} }`,
       'filters:',
       `  card: { response: ${draft.response}, order: ${draft.order}${ripple}, cutoff: ${draft.cutoff} }   # the card's own`,
       '  tidy: { response: kaiser, pass: 0.1 fs, stop: 0.15 fs, stopband: 70 dB }',
@@ -49,6 +58,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
       'sources:',
       '  blade: { order: 9, speed: 600..3000 rpm, harmonics: 3, level: 1 g, falls: 6 dB/oct, wanted: true }',
       `  inverter: { carrier: ${draft.carrier}, modulation: 50 Hz${draft.level} }`,
+      ...(draft.group === '' ? [] : ['groups:', '  pair: { within: 2 deg, up-to: 100 Hz }']),
     ];
     const keys = (rate: string): string[] =>
       [
@@ -61,6 +71,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
         draft.step,
         draft.follows,
         draft.spectrum,
+        draft.group,
       ].filter((key) => key !== '');
     const channels = draft.rates.flatMap((rate, index): string[] => {
       const slip = index === 0 && draft.slip !== '' ? draft.slip : undefined;

@@ -188,3 +188,54 @@ describe('corrections of the text', () => {
     expect(afterwards(text, remedy)).toContain('    filter: card\n    band: ');
   });
 });
+
+describe('rates of a scan', () => {
+  const scan = (digitizer: string, channels: string, defaults = '') => `rig: R
+digitizers:
+  d: { full-scale: ±10 V, rates: [1 kHz, 2 kHz, 5 kHz, 10 kHz, 20 kHz], sampling: scanned, ${digitizer} }
+groups:
+  g: { within: 1 deg, up-to: 40 Hz }
+defaults: { digitizer: d, band: 1 Hz .. 100 Hz, undeclared: -90 dBFS${defaults} }
+channels:
+${channels}`;
+  const titles = (text: string, check: string) => offered(text, check).map(({ title }) => title);
+  const OWN = '  a: { rate: 10 kHz }\n  b: { rate: 2 kHz }\n  c: { rate: 2 kHz }\n';
+  const INHERITED = '  a: {}\n  b: {}\n  c: {}\n';
+
+  it('that are too much together fall at the fastest channel, or at all that share one', () => {
+    const own = scan('max-rate: 9.5 kHz', OWN);
+    const remedy = only(own, 'rate-over-converter', 'sample-elsewhere');
+    expect(remedy.title).toBe('Sample at 5 kHz: the scan fits the converter (data x0.5)');
+    expect(afterwards(own, remedy)).toContain('  a: { rate: 5 kHz }');
+    // 3 x 10 kHz: one of them can't fall far enough for 20 kHz, all of them can to 5 kHz each.
+    const inherited = scan('max-rate: 20 kHz', INHERITED, ', rate: 10 kHz');
+    expect(titles(inherited, 'rate-over-converter')).toEqual([
+      'Sample at 5 kHz for all 3 channels: the scan fits the converter (data x0.5)',
+    ]);
+  });
+
+  it('that leave no time to settle fall', () => {
+    // 0.1 % are 6.9 time constants: three channels at 5 kHz have 66.7 us each, 6.67 of 10 us; at 2 kHz 16.7.
+    const inherited = scan('settling: 10 us', INHERITED, ', rate: 5 kHz');
+    expect(titles(inherited, 'settling-short')).toEqual([
+      'Sample at 2 kHz for all 3 channels: the input has time to settle (data x0.4)',
+    ]);
+    const own = scan('settling: 10 us', OWN.replace('10 kHz', '5 kHz'));
+    expect(findingLines(own).some((line) => line.startsWith('settling-short'))).toBe(true);
+  });
+
+  it('that are too slow for a group rise', () => {
+    // Two thirds of the sample period at 40 Hz: 1.92 degrees at 5 kHz, 0.96 at 10 kHz.
+    const text = scan('bits: 16', INHERITED, ', rate: 5 kHz, group: g');
+    expect(titles(text, 'scan-skew')).toContain(
+      'Sample at 10 kHz for all 3 channels: the group is sampled close enough together (data x2)',
+    );
+  });
+
+  it('cure nothing where the interval is given', () => {
+    expect(titles(scan('scan-interval: 1 us, settling: 1 us', INHERITED, ', rate: 5 kHz'), 'settling-short')).toEqual(
+      [],
+    );
+    expect(titles(scan('scan-interval: 60 us', INHERITED, ', rate: 5 kHz, group: g'), 'scan-skew')).toEqual([]);
+  });
+});

@@ -283,7 +283,7 @@ describe('a digitizer', () => {
     const rig = readRig(
       thingRig(
         'digitizers',
-        'clock: c\nprescale: 256\nrates: [2 kHz, 1 kHz]\nranges: [±10 V, 0..5 V]\ngains: [1, 10]\nmodulator: 64 fs\ndecimation-filter: { response: moving-average, length: 64 }\ntogether: same',
+        'clock: c\nprescale: 256\nrates: [2 kHz, 1 kHz]\nranges: [±10 V, 0..5 V]\ngains: [1, 10]\nmodulator: 64 fs\ndecimation-filter: { response: moving-average, length: 64 }\ntogether: same\nsampling: scanned\nscan-interval: 2.5 us\nsettling: 400 ns\ndelay-compensated: true',
         'clocks:\n  c: { frequency: 1 MHz }\n',
       ),
     );
@@ -297,6 +297,10 @@ describe('a digitizer', () => {
       modulatorMultiple: { value: 64 },
       decimationFilter: { filter: { response: { response: 'moving-average', length: 64 } } },
       together: { value: 'same' },
+      sampling: { value: 'scanned' },
+      scanIntervalS: { value: expect.closeTo(2.5e-6, 15) },
+      settlingS: { value: expect.closeTo(400e-9, 15) },
+      delayCompensated: true,
     });
   });
 
@@ -312,10 +316,55 @@ describe('a digitizer', () => {
     ['gains that are no list', 'gains: ⟦10⟧', 'wrong-kind'],
     ['bits that nobody has', 'bits: ⟦65⟧', 'out-of-range'],
     ['an unknown clock', 'clock: ⟦c⟧', 'unknown-name'],
+    ['a way of sampling that does not exist', 'sampling: ⟦scaned⟧', 'wrong-kind'],
+    ['a scan interval of nothing', 'scan-interval: ⟦0 us⟧', 'out-of-range'],
+    ['a scan interval that is a frequency', 'scan-interval: 400 ⟦kHz⟧', 'unit-mismatch'],
+    ['a settling time without a unit', 'settling: ⟦4e-7⟧', 'unit-missing'],
+    ['a compensated delay that is no truth', 'delay-compensated: ⟦yes⟧', 'wrong-kind'],
     ['a modulator without a unit', 'modulator: ⟦64⟧', 'unit-missing'],
     ['a digital filter at its input', 'filter: ⟦{ response: moving-average, length: 4 }⟧', 'wrong-kind'],
   ])('is told of %s', (_, keys, name) => {
     expectOneProblem(thingRig('digitizers', keys), name);
+  });
+});
+
+describe('a group', () => {
+  const group = (keys: string) => readRig(thingRig('groups', keys)).environment.groups.get('x');
+
+  it('allows an angle or a time, up to a frequency', () => {
+    expect(group('within: 2 deg\nup-to: 2 kHz')).toMatchObject({
+      within: { value: { kind: 'angle', degrees: 2 } },
+      upToHz: { value: 2000 },
+    });
+    expect(group('within: 0.1 rad\nup-to: 2 kHz')?.within?.value).toEqual({
+      kind: 'angle',
+      degrees: expect.closeTo(18 / Math.PI, 12),
+    });
+    expect(group('within: 10 us\nup-to: 2 kHz')?.within?.value).toEqual({
+      kind: 'time',
+      seconds: expect.closeTo(10e-6, 15),
+    });
+  });
+
+  it.each([
+    ['nothing that it allows', 'rig: R\ngroups:\n  ⟦x⟧: { up-to: 1 kHz }\n', 'missing-key'],
+    ['no frequency', 'rig: R\ngroups:\n  ⟦x⟧: { within: 1 deg }\n', 'missing-key'],
+    ['an angle without a unit', thingRig('groups', 'within: ⟦2⟧\nup-to: 1 kHz'), 'unit-missing'],
+    ['a limit that is a level', thingRig('groups', 'within: 2 ⟦dB⟧\nup-to: 1 kHz'), 'unit-mismatch'],
+    ['a limit of nothing', thingRig('groups', 'within: ⟦0 deg⟧\nup-to: 1 kHz'), 'out-of-range'],
+    ['a range of frequencies', thingRig('groups', 'within: 2 deg\nup-to: ⟦1 .. 2 kHz⟧'), 'wrong-kind'],
+    ['a key of another thing', thingRig('groups', 'within: 2 deg\nup-to: 1 kHz\n⟦rate⟧: 1 kHz'), 'unknown-key'],
+    ['an unknown group', channelRig('group: ⟦tower⟧'), 'unknown-name'],
+  ])('is told of %s', (_, text, name) => {
+    expectOneProblem(text, name);
+  });
+
+  it('is named by channels, which do not depend on what it allows', () => {
+    const rig = readRig(channelRig('group: x', 'groups:\n  x: { within: 2 deg, up-to: 1 kHz }\n'));
+    expect(saidOf(rig)).toEqual([]);
+    expect(rig.readings[0]!.channel.group).toMatchObject({ value: 'x' });
+    expect(rig.problems).toEqual([]);
+    expect(textAt(rig.readings[0]!.channel.group!.place)).toBe('x');
   });
 });
 

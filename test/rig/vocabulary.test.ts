@@ -28,12 +28,11 @@ const KEYS: Readonly<Record<ContextName, string>> = {
 };
 
 const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
-  rig: 'groups accept',
-  digitizer: 'scan-interval settling noise jitter delay-compensated',
+  rig: 'accept',
+  digitizer: 'noise jitter',
   sensor: 'noise',
   source: 'noise spans',
-  group: KEYS.group,
-  channel: 'group noise',
+  channel: 'noise',
   acceptance: KEYS.acceptance,
 };
 

@@ -7,7 +7,38 @@ import { EXTRACT_FAN, SAMPLES } from '../tools/samples.ts';
 import { describeFindings, evaluated, strictWorkbench } from './describe-findings.ts';
 
 const URI = 'file:///edited.rig.yaml';
-const TEXTS = [...SAMPLES.map(({ text }) => text), EXTRACT_FAN, generatedRig(3, 'flow'), generatedRig(3, 'json')];
+
+/** Whatever is folded over several channels because of time: a scan, a group, clocks that drift. */
+const TIMED = `rig: Timed
+clocks:
+  near: { frequency: 10 MHz, tolerance: 10 ppm }
+  far: { frequency: 10 MHz, tolerance: 10 ppm }
+digitizers:
+  scanner: { clock: near, sampling: scanned, settling: 20 us, max-rate: 25 kHz, bits: 16, full-scale: ±10 V }
+  box: { clock: far, bits: 16, full-scale: ±10 V }
+filters:
+  one: { response: rc, order: 1, corner: 1 kHz }
+  other: { response: rc, order: 1, corner: 1.1 kHz }
+groups:
+  tower: { within: 0.1 deg, up-to: 100 Hz }
+run: { duration: 8 h }
+defaults: { rate: 10 kHz, band: 1 Hz .. 100 Hz, group: tower, filter: one }
+channels:
+  base: { digitizer: scanner }
+  middle:
+    digitizer: scanner
+    filter: other
+  top:
+    digitizer: box
+    rate: 20 kHz
+`;
+const TEXTS = [
+  ...SAMPLES.map(({ text }) => text),
+  EXTRACT_FAN,
+  TIMED,
+  generatedRig(3, 'flow'),
+  generatedRig(3, 'json'),
+];
 const EDITS_A_RUN = 20;
 
 describe('after edits', () => {
@@ -51,6 +82,21 @@ describe('after edits', () => {
     },
     600_000,
   );
+
+  it('an edit of what a group allows judges no channel again, one of a member that one alone', () => {
+    const workbench = strictWorkbench();
+    workbench.setFile(URI, { text: TIMED });
+    const before = workbench.evaluation(URI)!;
+    const skewOf = (evaluation: typeof before) => evaluation.rigFindings.filter(({ check }) => check === 'scan-skew');
+    expect(skewOf(before)).toHaveLength(1);
+    workbench.editFile(URI, [{ text: TIMED.replace('0.1 deg', '10 deg') }]);
+    const allowed = workbench.evaluation(URI)!;
+    expect(skewOf(allowed)).toEqual([]);
+    expect(allowed.channels.map((channel, index) => channel === before.channels[index])).toEqual([true, true, true]);
+    workbench.editFile(URI, [{ text: TIMED.replace('rate: 20 kHz', 'rate: 40 kHz') }]);
+    const faster = workbench.evaluation(URI)!;
+    expect(faster.channels.map((channel, index) => channel === before.channels[index])).toEqual([true, true, false]);
+  });
 
   it('a change that comes while an evaluation is under way leaves the evaluation of the new text', () => {
     const workbench = strictWorkbench();

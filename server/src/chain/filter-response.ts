@@ -2,7 +2,7 @@ import type { Filter, FilterFrequencies, FilterFrequency, FilterResponse } from 
 import { analogueResponse } from '../signal/analogue.ts';
 import { singlePolesCutoff } from '../signal/butterworth.ts';
 import { digitalResponse } from '../signal/digital.ts';
-import type { CurveFilter, PoleFilter, StepFilter } from '../signal/filter-spec.ts';
+import type { AnalogueFilter, CurveFilter, DigitalFilter, PoleFilter, StepFilter } from '../signal/filter-spec.ts';
 import type { Response } from '../signal/response.ts';
 
 /** The rates that a digital filter works between. */
@@ -26,22 +26,35 @@ const MOST_KEPT = 64;
 
 /** The response of a filter ahead of the converter; `undefined` for one that was not understood or is digital only. */
 export function analogueResponseOf(filter: Filter, rateHz: number): Response | undefined {
-  const { response, tolerance } = filter;
-  if (!response) return undefined;
-  return kept(filter, isOfRate(response) ? `${rateHz}` : '', () => {
-    const spec = specOf(response, rateHz, 1);
-    return isStepFilter(spec) ? undefined : analogueResponse({ ...spec, tolerance });
+  if (!filter.response) return undefined;
+  return kept(filter, isOfRate(filter.response) ? `${rateHz}` : '', () => {
+    const spec = analogueSpecOf(filter, rateHz);
+    return spec && analogueResponse(spec);
   });
+}
+
+/** What such a filter is, in bare numbers. */
+export function analogueSpecOf({ response, tolerance }: Filter, rateHz: number): AnalogueFilter | undefined {
+  const spec = response && specOf(response, rateHz, 1);
+  return spec === undefined || isStepFilter(spec) ? undefined : { ...spec, tolerance };
 }
 
 /** The response of a filter after the converter; `undefined` for one that was not understood. */
 export function digitalResponseOf(filter: Filter, place: DigitalPlace): Response | undefined {
-  const { response, tolerance, passes } = filter;
-  if (!response) return undefined;
+  if (!filter.response) return undefined;
   const { fractionOfHz, inputRateHz, decimation } = place;
-  return kept(filter, `${fractionOfHz} ${inputRateHz} ${decimation}`, () =>
-    digitalResponse({ ...specOf(response, fractionOfHz, decimation), tolerance, passes }, inputRateHz),
-  );
+  return kept(filter, `${fractionOfHz} ${inputRateHz} ${decimation}`, () => {
+    const spec = digitalSpecOf(filter, place);
+    return spec && digitalResponse(spec, inputRateHz);
+  });
+}
+
+/** What such a filter is, in bare numbers. */
+export function digitalSpecOf(
+  { response, tolerance, passes }: Filter,
+  { fractionOfHz, decimation }: DigitalPlace,
+): DigitalFilter | undefined {
+  return response && { ...specOf(response, fractionOfHz, decimation), tolerance, passes };
 }
 
 function kept(filter: Filter, key: string, compile: () => Response | undefined): Response | undefined {

@@ -1,7 +1,8 @@
-import type { Channel, Filter, FilterUse, Sensor, Step } from '../rig/model.ts';
+import type { Channel, Digitizer, Filter, FilterUse, Sensor, Step } from '../rig/model.ts';
 import { analogueResponse } from '../signal/analogue.ts';
+import type { AnalogueFilter } from '../signal/filter-spec.ts';
 import type { Response } from '../signal/response.ts';
-import { sensorResponse } from '../signal/sensor-response.ts';
+import { type SensorResponse, sensorResponse } from '../signal/sensor-response.ts';
 import { analogueResponseOf, digitalResponseOf } from './filter-response.ts';
 import type { SignalPath, Stage, StageFilter } from './model.ts';
 import { forgetNotes, keepNotes } from './path-notes.ts';
@@ -150,7 +151,7 @@ function makePath(channel: Channel, plan: Plan, rateHz: number): SignalPath {
     const fractionOfHz = kind === 'modulator-decimation' ? rateHz : isInOrders ? inputRateHz / factor : inputRateHz;
     responses.push(
       filters.map(({ use, role }) => {
-        if (role === 'low-corner') return lowCornerResponse(digitizer?.lowCornerHz?.value ?? 0);
+        if (role === 'low-corner') return analogueResponse(couplingOf(digitizer));
         if (!use?.filter) return undefined;
         const isDigital = role === 'step' || role === 'decimation';
         if (!isDigital) return analogueResponseOf(use.filter, rateHz);
@@ -170,28 +171,30 @@ function makePath(channel: Channel, plan: Plan, rateHz: number): SignalPath {
     ratesHz,
     responses,
     known: responses.map((stage) => stage.filter((response) => response !== undefined)),
-    sensor: sensorResponseOf(sensor),
+    sensor: sensorResponse(sensorSpecOf(sensor)),
     sensorIsFlat: !sensor?.resonanceHz && !sensor?.cornerHz && !sensor?.lowCornerHz,
     clockTolerance: digitizer?.clock?.thing?.tolerance ?? 0,
   };
 }
 
 /** Only integrators and combs are built around the rate change. */
-function decimationAt(filter: Filter, factor: number): number {
+export function decimationAt(filter: Filter, factor: number): number {
   return filter.response?.response === 'cic' ? factor : 1;
 }
 
 /** The digitizer's AC coupling, a first-order high-pass. */
-function lowCornerResponse(cornerHz: number): Response {
+export function couplingOf(digitizer: Digitizer | undefined): AnalogueFilter {
+  const cornerHz = digitizer?.lowCornerHz?.value ?? 0;
   const corner = { lowHz: cornerHz, highHz: cornerHz };
-  return analogueResponse({ response: 'rc', order: 1, shape: 'high-pass', cornerHz: corner, tolerance: 0 });
+  return { response: 'rc', order: 1, shape: 'high-pass', cornerHz: corner, tolerance: 0 };
 }
 
-function sensorResponseOf(sensor: Sensor | undefined): Response {
-  return sensorResponse({
+/** A sensor in bare numbers. */
+export function sensorSpecOf(sensor: Sensor | undefined): SensorResponse {
+  return {
     q: sensor?.q ?? 1,
     ...(sensor?.resonanceHz ? { resonanceHz: sensor.resonanceHz.value } : {}),
     ...(sensor?.cornerHz ? { cornerHz: sensor.cornerHz.value } : {}),
     ...(sensor?.lowCornerHz ? { lowCornerHz: sensor.lowCornerHz.value } : {}),
-  });
+  };
 }

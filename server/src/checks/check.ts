@@ -88,6 +88,9 @@ export interface Check<Kind extends 'channel' | 'rig'> extends CheckPage {
     : (rig: RigView) => readonly SaidOfRig[];
 }
 
+/** A fold over many channels, said in the name of a check. */
+export type RigFold = Pick<Check<'rig'>, 'name' | 'severity' | 'run'>;
+
 /** A channel as read and judged: what checks over many channels fold. */
 export interface ChannelSummary {
   readonly reading: ChannelReading;

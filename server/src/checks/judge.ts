@@ -12,7 +12,7 @@ import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
 import { saidOfProblem, saidOfThing } from './document/problems.ts';
 import { type Finding, identityOf, SEVERITIES, type Severity } from './finding.ts';
-import { CHANNEL_CHECKS, PULSE_CHECKS, RIG_CHECKS } from './list.ts';
+import { CHANNEL_CHECKS, PULSE_CHECKS, RIG_FOLDS } from './list.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
 import { viewOf } from './view.ts';
 
@@ -119,7 +119,7 @@ export function* judgingRig(
   const uses = guard('unused-name', () => nameUses(channels, before), NO_USES);
   guard('unused-name', () => unusedNames(environment, uses), SAYS_NOTHING).forEach(addProblem);
   yield undefined;
-  for (const { name, severity, run } of RIG_CHECKS) {
+  for (const { name, severity, run } of RIG_FOLDS) {
     const said = guard(name, () => run(rig), SAYS_NOTHING);
     add(name, severity, said);
     yield undefined;

@@ -1,8 +1,9 @@
 import { bandDroop } from './band-droop.ts';
 import { bandOverNyquist } from './band-over-nyquist.ts';
 import { bandpassStraddles } from './bandpass-straddles.ts';
-import type { Check, CheckPage } from './check.ts';
+import type { Check, CheckPage, RigFold } from './check.ts';
 import { clips } from './clips.ts';
+import { clockDrift } from './clock-drift.ts';
 import { diskShort } from './disk-short.ts';
 import { DOCUMENT_PAGES } from './document/pages.ts';
 import { filterShort } from './filter-short.ts';
@@ -17,6 +18,7 @@ import { linkShort } from './link-short.ts';
 import { noFilter } from './no-filter.ts';
 import { onNyquist } from './on-nyquist.ts';
 import { patternImage } from './pattern-image.ts';
+import { phaseMismatch } from './phase-mismatch.ts';
 import { practiceUnmet } from './practice-unmet.ts';
 import { pulseMissed } from './pulse-missed.ts';
 import { rangeWasted } from './range-wasted.ts';
@@ -25,6 +27,9 @@ import { rateUnreachable } from './rate-unreachable.ts';
 import { ratesConflict } from './rates-conflict.ts';
 import { recordTooLong } from './record-too-long.ts';
 import { resonanceInBand } from './resonance-in-band.ts';
+import { scanSkew } from './scan-skew.ts';
+import { scannedRates } from './scanned-rates.ts';
+import { settlingShort } from './settling-short.ts';
 import { stepWithoutFilter } from './step-without-filter.ts';
 import { thinMargin } from './thin-margin.ts';
 import { windowLeaks } from './window-leaks.ts';
@@ -70,7 +75,19 @@ export const PULSE_CHECKS: readonly Check<'channel'>[] = [
 ];
 
 /** The checks over many channels. */
-export const RIG_CHECKS: readonly Check<'rig'>[] = [ratesConflict, recordTooLong, diskShort, linkShort];
+export const RIG_CHECKS: readonly Check<'rig'>[] = [
+  ratesConflict,
+  scanSkew,
+  settlingShort,
+  phaseMismatch,
+  clockDrift,
+  recordTooLong,
+  diskShort,
+  linkShort,
+];
+
+/** Everything that is folded over many channels: those checks, and what a check of one channel says of several. */
+export const RIG_FOLDS: readonly RigFold[] = [...RIG_CHECKS, scannedRates];
 
 /** Every check, as its reference page shows it. */
 export const ALL_CHECKS: readonly CheckPage[] = [...RIG_CHECKS, ...CHANNEL_CHECKS, ...DOCUMENT_PAGES];

@@ -9,7 +9,8 @@ export const rateOverConverter: Check<'channel'> = {
   name: 'rate-over-converter',
   kind: 'channel',
   severity: 'error',
-  finds: "The rate is above the digitizer's `max-rate`.",
+  finds:
+    "The rate is above the digitizer's `max-rate`; for a scanned digitizer, the sum of the rates of all its channels.",
   why: 'Above its greatest rate a converter does not start, drops samples, or does not settle between them.',
   shows: `rig: Fan bearing
 digitizers:
@@ -32,7 +33,9 @@ channels:
   sources: ["The digitizer's data sheet, as the rig file gives it."],
   run({ chain, channel }) {
     const most = channel.digitizer?.maxRateHz;
-    if (!most || chain.rateHz <= most.value * (1 + ROUNDING)) return SAYS_NOTHING;
+    // The one of a scanned digitizer is for all its channels together.
+    if (!most || channel.digitizer?.sampling?.value === 'scanned' || chain.rateHz <= most.value * (1 + ROUNDING))
+      return SAYS_NOTHING;
     const standing = standingOn(channel, channel.rateHz);
     return [
       {

@@ -8,6 +8,7 @@ import { formatHz } from '../quantity/write.ts';
 import type { Filter } from '../rig/model.ts';
 import type { Evaluation, JudgedChannel } from '../workbench/evaluation.ts';
 import type { ClientAbilities } from './client-abilities.ts';
+import { filterDelayWords } from './delay-words.ts';
 import {
   codeMarkdown,
   drawingMarkdown,
@@ -33,7 +34,9 @@ export function filterMarkdown(
   const place = firstPlace(filter, channel ? [channel] : evaluation.channels);
   if (!place) return `${words}\n\nNo channel uses it.`;
   const head = `${words} · in ${codeMarkdown(place.chain.channel.name)}`;
-  const table = tableMarkdown(['at', 'what', 'takes off'], rowsOf(place));
+  const delay = filterDelayWords(place);
+  const rows = tableMarkdown(['at', 'what', 'takes off'], rowsOf(place));
+  const table = delay === undefined ? rows : `${rows}\n\n${delay}`;
   const curve = filterCurveModel(place, arrivalsOf(place.chain));
   const picture = abilities.showsPictures
     ? pictureMarkdown(filterCurveSvg(curve, abilities.theme), `${curve.title}. ${curve.description}`)

@@ -7,6 +7,7 @@ import { formatHz } from '../quantity/write.ts';
 import type { JudgedChannel } from '../workbench/evaluation.ts';
 import { windowsText } from '../workbench/rate-words.ts';
 import type { ClientAbilities } from './client-abilities.ts';
+import { chainDelayWords } from './delay-words.ts';
 import {
   codeMarkdown,
   drawingMarkdown,
@@ -42,8 +43,9 @@ function headline(chain: Chain, judged: JudgedChannel): string {
   const last = chain.stages.at(-1)!;
   const counts = judged.result.findings.length;
   const windows = windowsText(chain);
+  const delay = chainDelayWords(chain);
   const verdict = counts === 0 ? 'clean' : counts === 1 ? '1 finding' : `${counts} findings`;
-  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}${windows === undefined ? '' : `\n\n${windows}`}`;
+  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}${delay === undefined ? '' : ` · ${delay}`}${windows === undefined ? '' : `\n\n${windows}`}`;
 }
 
 function bandText({ isBandpass, bandHighHz, recordedBand }: Chain): string {

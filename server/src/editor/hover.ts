@@ -11,6 +11,7 @@ import type { ClientAbilities } from './client-abilities.ts';
 import { protocolRange } from './convert.ts';
 import { expectedAt } from './expectation.ts';
 import { filterMarkdown } from './hover-filter.ts';
+import { groupMarkdown } from './hover-group.ts';
 import { mapMarkdown } from './hover-map.ts';
 import { sourceMarkdown } from './hover-source.ts';
 import { spectrumIsMeant, spectrumMarkdown } from './hover-spectrum.ts';
@@ -64,7 +65,7 @@ function markdownFor(
   return spectrum === undefined || named === undefined ? (spectrum ?? named) : `${spectrum}\n\n${named}`;
 }
 
-/** What stands behind an entry's own name: a channel's map, a filter's curve, where a source lands. */
+/** What stands behind an entry's own name: a channel's map, a filter's curve, how far a group is apart, where a source lands. */
 function entryMarkdown(
   evaluation: Evaluation,
   entry: Entry,
@@ -74,6 +75,8 @@ function entryMarkdown(
   if (channel) return mapMarkdown(channel, abilities);
   const filter = entry.section === 'filters' ? evaluation.environment.filters.get(entry.name) : undefined;
   if (filter) return filterMarkdown(filter, evaluation, undefined, abilities);
+  const group = entry.section === 'groups' ? evaluation.environment.groups.get(entry.name) : undefined;
+  if (group) return groupMarkdown(group, evaluation);
   const isSource = entry.section === 'sources' || (entry.section === undefined && entry.name === 'mains');
   const source = isSource ? evaluation.environment.sources.get(entry.name) : undefined;
   return source && sourceMarkdown(source, evaluation);
@@ -114,6 +117,10 @@ function nameMarkdown(
     if (names === 'filter') {
       const filter = evaluation.environment.filters.get(text);
       if (filter) return filterMarkdown(filter, evaluation, channel, abilities);
+    }
+    if (names === 'group') {
+      const group = evaluation.environment.groups.get(text);
+      if (group) return groupMarkdown(group, evaluation);
     }
     if (names === 'source') {
       const source = evaluation.environment.sources.get(text);

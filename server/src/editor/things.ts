@@ -1,5 +1,5 @@
-import { formatHz } from '../quantity/write.ts';
-import type { Filter, Source } from '../rig/model.ts';
+import { formatHz, formatQuantity } from '../quantity/write.ts';
+import type { Filter, Group, Source } from '../rig/model.ts';
 import type { ThingKind } from '../rig/vocabulary-kinds.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
 
@@ -34,7 +34,7 @@ export function thingsOf({ environment, channels }: Evaluation, kind: ThingKind)
     case 'channel':
       return channels.map(({ result }) => ({ name: result.channel.name, detail: 'channel' }));
     case 'group':
-      return [];
+      return [...environment.groups.values()].map((group) => ({ name: group.name, detail: groupWords(group) }));
   }
 }
 
@@ -55,6 +55,16 @@ export function sourceWords(source: Source): string {
     case 'modulated':
       return `carrier ${span(source.carrier.value)}${harmonics}`;
   }
+}
+
+/** A group in a few words: `within 2 deg up to 1 kHz`. */
+export function groupWords({ within, upToHz }: Group): string {
+  if (!within || !upToHz) return 'group';
+  const limit =
+    within.value.kind === 'time'
+      ? formatQuantity(within.value.seconds, 'time')
+      : formatQuantity(within.value.degrees, 'angle');
+  return `within ${limit} up to ${formatHz(upToHz.value)}`;
 }
 
 function span({ lowHz, highHz }: { readonly lowHz: number; readonly highHz: number }): string {

@@ -4,6 +4,7 @@ import type { Channel } from '../rig/model.ts';
 import type { Proposal, RemedyDefinition } from './definition.ts';
 import { dataCost, outcomeOf } from './describe.ts';
 import { rateEdits, ratesAbove, ratesBelow, sampledAt } from './rates.ts';
+import { isOfScan, scanProposals } from './scan-rates.ts';
 import type { Search } from './search.ts';
 import { firstCured } from './search.ts';
 
@@ -21,6 +22,7 @@ export const sampleElsewhere: RemedyDefinition = {
     'rates-conflict',
     'rate-over-converter',
     'bandpass-straddles',
+    'settling-short',
     'fold-in-band',
     'fold-unlevelled',
     'on-nyquist',
@@ -38,6 +40,7 @@ function searchElsewhere(search: Search): readonly Proposal[] {
   const today = channel?.rateHz?.value;
   if (!channel || today === undefined) return [];
   if (context.finding.check === 'rates-conflict') return neighbourRates(search, channel, today);
+  if (isOfScan(search)) return scanProposals(search, ratesBelow(channel, today));
   const found = firstCured(search, nearestFirst(channel, today), (hz) => sampledAt(channel, hz));
   if (found?.after.chain?.recordedBand.mirrored) {
     // The right way up is worth a rate that is a little further off.

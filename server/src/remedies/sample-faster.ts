@@ -2,6 +2,7 @@ import { formatHz } from '../quantity/write.ts';
 import type { Proposal, RemedyDefinition } from './definition.ts';
 import { dataCost, outcomeOf } from './describe.ts';
 import { rateEdits, ratesAbove, sampledAt } from './rates.ts';
+import { isOfScan, scanProposals } from './scan-rates.ts';
 import type { Search } from './search.ts';
 import { firstCured } from './search.ts';
 
@@ -24,6 +25,7 @@ export const sampleFaster: RemedyDefinition = {
     'interleave-image',
     'band-droop',
     'practice-unmet',
+    'scan-skew',
   ],
   search: searchFaster,
 };
@@ -32,6 +34,7 @@ function searchFaster(search: Search): readonly Proposal[] {
   const { channel } = search;
   const today = channel?.rateHz?.value;
   if (!channel || today === undefined) return [];
+  if (isOfScan(search)) return scanProposals(search, ratesAbove(channel, today));
   const found = firstCured(search, ratesAbove(channel, today), (hz) => sampledAt(channel, hz));
   const edited = found && rateEdits(search, found.value);
   if (!found || !edited) return [];

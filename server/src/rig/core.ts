@@ -4,11 +4,12 @@ import { type Entry, KIND_OF_SECTION, NAMED_SECTIONS } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import type { Epochs } from './epochs.ts';
 import type { Field } from './fields.ts';
-import type { Clock, Digitizer, Filter, Given, Run, Sensor, Source, Thing } from './model.ts';
+import type { Clock, Digitizer, Filter, Given, Group, Run, Sensor, Source, Thing } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { readClock } from './read-clock.ts';
 import { readDigitizer } from './read-digitizer.ts';
-import { readNamedFilter, readNamedGroup, readNamedSensor } from './read-named.ts';
+import { readGroup } from './read-group.ts';
+import { readNamedFilter, readNamedSensor } from './read-named.ts';
 import { MAINS, readSource } from './read-source.ts';
 import { missingRigName, readTopLevel, type SeverityChoice, type TopLevel } from './read-top-level.ts';
 import {
@@ -119,6 +120,7 @@ export function readCore(
     sensor: new Map<string, Sensor>(),
     filter: new Map<string, Filter>(),
     source: new Map<string, Source>(),
+    group: new Map<string, Group>(),
   };
   const base: Scope = {
     names: nameLists(named, NOTHING_JOINED, undefined),
@@ -154,7 +156,7 @@ export function readCore(
   readAll('filter', things.filter, readNamedFilter);
   readAll('sensor', things.sensor, readNamedSensor);
   readAll('digitizer', things.digitizer, readDigitizer);
-  for (const entry of named.group) read(entry, earlier, readNamedGroup);
+  readAll('group', things.group, readGroup);
   for (const entry of named.source) {
     const source = entry.section ? read(entry, earlier, readSource) : readTop(entry, earlier).mains;
     if (source) things.source.set(entry.name, source);

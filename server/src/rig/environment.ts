@@ -3,7 +3,7 @@ import { type Core, readCore } from './core.ts';
 import type { Entry } from './entry.ts';
 import { duplicateName, yamlProblem } from './entry-problems.ts';
 import { epochsOf } from './epochs.ts';
-import type { Clock, Digitizer, Filter, Given, Run, Sensor, Source } from './model.ts';
+import type { Clock, Digitizer, Filter, Given, Group, Run, Sensor, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import type { SeverityChoice } from './read-top-level.ts';
 import type { Mention } from './reader.ts';
@@ -27,6 +27,7 @@ export interface Environment {
   readonly filters: ReadonlyMap<string, Filter>;
   /** Those that could be read, `mains` included, in document order. */
   readonly sources: ReadonlyMap<string, Source>;
+  readonly groups: ReadonlyMap<string, Group>;
   /** The top-level entry `defaults`. */
   readonly defaults: Entry | undefined;
   readonly severities: ReadonlyMap<string, SeverityChoice>;
@@ -76,6 +77,7 @@ export function readEnvironment(
     sensors: things.sensor,
     filters: things.filter,
     sources: things.source,
+    groups: things.group,
     defaults: core.defaultsEntry,
     severities: core.severities,
     rigName: core.rigName,

@@ -19,7 +19,7 @@ export function exportsOf(core: Core): Exports {
 }
 
 function exportedOf({ named, joined, scope }: Core, kind: NamedKind): ReadonlyMap<string, Exported> {
-  const things: ReadonlyMap<string, Thing> = kind === 'group' ? new Map() : scope.things[kind];
+  const things: ReadonlyMap<string, Thing> = scope.things[kind];
   const exported = new Map<string, Exported>();
   const hidden = new Set<string>();
   for (const entry of named[kind]) {

@@ -62,6 +62,11 @@ export interface Digitizer extends Thing {
   readonly rates: Given<ListedRates> | undefined;
   readonly maxRateHz: Given<number> | undefined;
   readonly together: Given<'free' | 'same' | 'sub-multiples'>;
+  readonly sampling: Given<'simultaneous' | 'scanned'> | undefined;
+  /** From one channel's conversion to the next one's; `undefined` where the scan is spread over the sample period. */
+  readonly scanIntervalS: Given<number> | undefined;
+  /** Time constant of the input after the switch has moved on. */
+  readonly settlingS: Given<number> | undefined;
   readonly bits: Given<number> | undefined;
   readonly fullScale: Given<FullScale> | undefined;
   readonly gain: Given<number> | undefined;
@@ -73,6 +78,8 @@ export interface Digitizer extends Thing {
   readonly modulatorMultiple: Given<number> | undefined;
   readonly decimationFilter: FilterUse | undefined;
   readonly interleave: Given<Interleave> | undefined;
+  /** True where the delay of digital filters is taken out of the time stamps. */
+  readonly delayCompensated: boolean;
 }
 
 export type ListedRates =
@@ -196,6 +203,19 @@ interface SourceBase extends Thing {
   readonly enters: 'sensor' | 'wiring';
   /** True where the text says it. Otherwise volts enter at the sensor of a channel that measures a voltage. */
   readonly entersSaid: boolean;
+}
+
+/** How far apart the members of a group may be: at any frequency, in degrees; or in time. */
+export type PhaseLimit =
+  | { readonly kind: 'angle'; readonly degrees: number }
+  | { readonly kind: 'time'; readonly seconds: number };
+
+/** Channels whose phase is compared. */
+export interface Group extends Thing {
+  readonly kind: 'group';
+  readonly within: Given<PhaseLimit> | undefined;
+  /** The highest frequency at which it matters. */
+  readonly upToHz: Given<number> | undefined;
 }
 
 export interface FrequencyRange {
@@ -333,4 +353,6 @@ export interface Channel extends Thing {
   readonly spectrum: Given<Spectrum> | undefined;
   /** Each practice once. */
   readonly follows: readonly FollowedPractice[];
+  /** The name of its group: what the group allows concerns no channel by itself. */
+  readonly group: Given<string> | undefined;
 }

@@ -17,6 +17,7 @@ import { findThing } from './names.ts';
 import type { Place } from './place.ts';
 import { readFrequencyRange, readFullScale, readValue } from './quantities.ts';
 import { readFollows } from './read-follows.ts';
+import { readGroupName } from './read-group.ts';
 import { readPulses } from './read-pulses.ts';
 import { readSensor, SENSOR_KEYS } from './read-sensor.ts';
 import { readSpectrum } from './read-spectrum.ts';
@@ -75,6 +76,7 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
     resolve: resolveField && readChannelLevel(reader, resolveField, sensor?.thing),
     spectrum: readSpectrum(reader, byKey.get('spectrum')),
     follows: readFollows(reader, byKey.get('follows')),
+    group: readGroupName(reader, byKey.get('group')),
   };
 }
 

@@ -6,7 +6,16 @@ import { readEnds, readFullScale, readValue } from './quantities.ts';
 import { readInterleave } from './read-uneven.ts';
 import type { Reader } from './reader.ts';
 import { checkUncomputed } from './uncomputed.ts';
-import { alternative, given, readChoice, readNumber, readNumbers, reportWrongKind, scalarOf } from './values.ts';
+import {
+  alternative,
+  given,
+  readChoice,
+  readNumber,
+  readNumbers,
+  readTruth,
+  reportWrongKind,
+  scalarOf,
+} from './values.ts';
 
 /** Reads an entry of `digitizers`. Clocks and filters must have been read. */
 export function readDigitizer(reader: Reader): Digitizer {
@@ -14,7 +23,6 @@ export function readDigitizer(reader: Reader): Digitizer {
   const field = (key: string): Field | undefined => fields.byKey.get(key);
   const place = namePlace(reader.entry);
   const decimation = field('decimation-filter');
-  readChoice(reader, field('sampling'));
   checkUncomputed(reader, fields);
   return {
     kind: 'digitizer',
@@ -25,6 +33,9 @@ export function readDigitizer(reader: Reader): Digitizer {
     rates: readRates(reader, field('rates')),
     maxRateHz: readValue(reader, field('max-rate')),
     together: readChoice<'free' | 'same' | 'sub-multiples'>(reader, field('together')) ?? { value: 'free', place },
+    sampling: readChoice<'simultaneous' | 'scanned'>(reader, field('sampling')),
+    scanIntervalS: readValue(reader, field('scan-interval')),
+    settlingS: readValue(reader, field('settling')),
     bits: readNumber(reader, field('bits')),
     fullScale: readFullScale(reader, field('full-scale')),
     gain: readNumber(reader, field('gain')),
@@ -35,6 +46,7 @@ export function readDigitizer(reader: Reader): Digitizer {
     modulatorMultiple: readValue(reader, field('modulator')),
     interleave: readInterleave(reader, field('interleave')),
     decimationFilter: decimation && hasValue(decimation) ? readFilterUse(reader, decimation, 'digital') : undefined,
+    delayCompensated: readTruth(reader, field('delay-compensated'))?.value ?? false,
   };
 }
 

@@ -3,7 +3,7 @@ import type { Filter, Sensor } from './model.ts';
 import { readFilter } from './read-filter.ts';
 import { readSensor } from './read-sensor.ts';
 import type { Reader } from './reader.ts';
-import { checkFields, checkUncomputed } from './uncomputed.ts';
+import { checkUncomputed } from './uncomputed.ts';
 
 /** Reads an entry of `filters`. */
 export function readNamedFilter(reader: Reader): Filter {
@@ -15,10 +15,4 @@ export function readNamedSensor(reader: Reader): Sensor {
   const fields = readEntryFields(reader, 'sensor');
   checkUncomputed(reader, fields);
   return readSensor(reader, fields, reader.entry.name, namePlace(reader.entry));
-}
-
-/** Checks an entry of `groups`, of which nothing is computed yet. */
-export function readNamedGroup(reader: Reader): undefined {
-  checkFields(reader, readEntryFields(reader, 'group'));
-  return undefined;
 }

@@ -1,7 +1,7 @@
 import type { AnchorTable } from './anchors.ts';
 import type { Entry } from './entry.ts';
 import { MOST_ENTRY_PROBLEMS, MOST_INHERITED_PROBLEMS } from './limits.ts';
-import type { Clock, Digitizer, Filter, HeardSource, Sensor, Source } from './model.ts';
+import type { Clock, Digitizer, Filter, Group, HeardSource, Sensor, Source } from './model.ts';
 import type { Place } from './place.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import type { Cure, ProblemName } from './problem.ts';
@@ -28,6 +28,7 @@ export interface Things {
   readonly sensor: ReadonlyMap<string, Sensor>;
   readonly filter: ReadonlyMap<string, Filter>;
   readonly source: ReadonlyMap<string, Source>;
+  readonly group: ReadonlyMap<string, Group>;
 }
 
 /** A thing written in place of a name in text that many entries inherit: read once, whatever was said of it with it. */

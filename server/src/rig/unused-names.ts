@@ -1,6 +1,6 @@
 import { KIND_OF_SECTION } from './entry.ts';
 import type { Environment } from './environment.ts';
-import { clipped, namePlace } from './fields.ts';
+import { clipped } from './fields.ts';
 import type { Source } from './model.ts';
 import type { NameUses } from './name-uses.ts';
 import type { Place } from './place.ts';
@@ -20,7 +20,8 @@ export function unusedNames(environment: Environment, uses: NameUses): readonly 
   const said: PlacedProblem[] = [];
   for (const kind of USED_BY_NAME) {
     const byChannels = uses.counts.get(kind);
-    for (const [name, place] of placesOf(environment, kind)) {
+    for (const { name, place } of environment.core.scope.things[kind].values()) {
+      if (!environment.core.readings.has(place.entry)) continue;
       if (byChannels?.has(name) || byThings.has(`${kind} ${name}`)) continue;
       said.push(unused(place, `Nothing names the ${kind} \`${clipped(name)}\`, so it has no part in any channel.`));
     }
@@ -45,17 +46,6 @@ function namedByThings({ core }: Environment): ReadonlySet<string> {
     }
   }
   return named;
-}
-
-/** Where the names of one kind stand, in document order. */
-function placesOf({ core }: Environment, kind: (typeof USED_BY_NAME)[number]): Iterable<readonly [string, Place]> {
-  if (kind !== 'group')
-    return [...core.scope.things[kind].values()]
-      .filter(({ place }) => core.readings.has(place.entry))
-      .map(({ name, place }) => [name, place]);
-  return [...core.readings.keys()]
-    .filter(({ section }) => section === 'groups')
-    .map((entry) => [entry.name, namePlace(entry)]);
 }
 
 /** Sources that every channel leaves out; those left out for their quantity are told elsewhere. */

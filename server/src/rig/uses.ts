@@ -35,7 +35,7 @@ function readPaths(entry: Entry, entries: readonly Entry[]): readonly string[] {
   const { settingEntries, epochOf } = epochsOf(entries);
   const scope: Scope = {
     names: byKind(() => ({ names: [], set: new Set() })),
-    things: { clock: new Map(), digitizer: new Map(), sensor: new Map(), filter: new Map(), source: new Map() },
+    things: byKind(() => new Map()),
     anchors: anchorTable(settingEntries, undefined),
     epochOf,
     knowsAllNames: false,

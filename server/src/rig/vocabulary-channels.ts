@@ -141,7 +141,7 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     'The practices that it has to meet, by their names in the table of practices: one, a list, or `none`. At the top of the file, what every channel follows that says nothing else and has nothing else from `defaults`.',
     { default: 'none' },
   ),
-  row('channel', 'group', nameOf('group'), 'tower', 'The group whose phases are compared.', { computed: false }),
+  row('channel', 'group', nameOf('group'), 'tower', 'The group whose phases are compared.'),
   row(
     'channel',
     'pattern',

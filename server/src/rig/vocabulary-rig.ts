@@ -87,7 +87,6 @@ export const RIG_ROWS: readonly KeyRow[] = [
     section('group'),
     '{ tower: { within: 2 deg, up-to: 100 Hz } }',
     'Groups of channels whose phase is compared.',
-    { computed: false },
   ),
   row(
     'rig',
@@ -127,11 +126,10 @@ export const RIG_ROWS: readonly KeyRow[] = [
     quantity(['angle', 'time'], 'deg'),
     '2 deg',
     'How far the phases of the group may differ: an angle, or a time.',
-    { required: true, computed: false },
+    { required: true },
   ),
   row('group', 'up-to', FREQUENCY, '2 kHz', 'The highest frequency at which the phase matters.', {
     required: true,
-    computed: false,
   }),
 
   row('run', 'duration', TIME, '8 h', 'How long is recorded; with `records`, how long the run lasts.'),

@@ -108,24 +108,18 @@ const DIGITIZER_ROWS: readonly KeyRow[] = [
   row(
     'digitizer',
     'sampling',
-    choice(
-      {
-        simultaneous: 'All channels are sampled at the same instant.',
-        scanned: 'One converter takes the channels in turn.',
-      },
-      ['scanned'],
-    ),
+    choice({
+      simultaneous: 'All channels are sampled at the same instant.',
+      scanned: 'One converter takes the channels in turn, in the order in which they stand in the file.',
+    }),
     'simultaneous',
     'Whether the channels are sampled at once or in turn.',
     { default: 'simultaneous' },
   ),
   row('digitizer', 'scan-interval', TIME, '2.5 us', "The time from one channel's conversion to the next one's.", {
     default: 'spread evenly over the sample period',
-    computed: false,
   }),
-  row('digitizer', 'settling', TIME, '400 ns', 'The time constant of the input after the switch has moved on.', {
-    computed: false,
-  }),
+  row('digitizer', 'settling', TIME, '400 ns', 'The time constant of the input after the switch has moved on.'),
   row('digitizer', 'bits', integer({ low: 1, high: 64 }), '24', 'The number of bits of the converter.'),
   row(
     'digitizer',
@@ -181,7 +175,7 @@ const DIGITIZER_ROWS: readonly KeyRow[] = [
     TRUTH,
     'true',
     'Whether the delay of digital filters is taken out of the time stamps.',
-    { computed: false },
+    { default: 'false' },
   ),
   row(
     'digitizer',
