@@ -40,12 +40,15 @@ defaults: &usual
   flatness: 0.5 dB
   fold-limit: 40
   hears: { drive: 10 mV }
+  spectrum: &lines { lines: 800, window: hann, separate: 4 }
+run: { duration: 1 h, records: 9, record: 4 s, sample-size: 4 B }
 channels:
   one: &one
     sensor: stud
     rate: &rate 10 kHz
     band: 10 Hz .. 1 kHz
     peak: 40 g
+    spectrum: { <<: *lines, averages: 16 }
   two: { <<: *one, sensor: gauge, peak: 300 ue, hears: all }
   three: *one
   four:

@@ -32,10 +32,30 @@ channels:
     digitizer: box
     rate: 20 kHz
 `;
+
+/** Spectra and a run with something wrong in each. */
+const SPECTRA = `rig: Spectra
+run: { duration: 2 s, disk: 10 kB, link: 1 kB/s }
+digitizers: { d: { bits: 24, full-scale: ±10 V } }
+sources:
+  tone: { frequency: 500 Hz, level: 5 V, harmonics: 2, wanted: true }
+  hum: { frequency: 2056 Hz, level: 1 V }
+  shaft: { order: 1, speed: 600..3000 rpm, harmonics: 3, level: 1 mV, wanted: true }
+defaults: { digitizer: d, rate: 2560 Hz, band: 0 Hz .. 1 kHz, spectrum: { lines: 100, averages: 99 } }
+channels:
+  a: { resolve: 1 mV }
+  b:
+    spectrum:
+      record: 250 ms
+      window: rectangle
+      separate: 3 Hz
+  c: { then: [{ decimate: 2 }], spectrum: { resolution: 10 Hz, overlap: 50 %, averages: 40 } }
+`;
 const TEXTS = [
   ...SAMPLES.map(({ text }) => text),
   EXTRACT_FAN,
   TIMED,
+  SPECTRA,
   generatedRig(3, 'flow'),
   generatedRig(3, 'json'),
 ];

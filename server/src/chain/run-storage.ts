@@ -36,11 +36,11 @@ export function triggeredRecords({ records, recordS }: Run): TriggeredRecords | 
 }
 
 /** The bytes of all channels together, samples at the rate of each one's last stage. */
-export function runStorage(run: Run, channels: Iterable<StoredChannel>): RunStorage {
+export function runStorage(run: Run, channels: readonly { readonly result: StoredChannel }[]): RunStorage {
   const streams: StoredStream[] = [];
   let channelsLeftOut = 0;
-  for (const one of channels) {
-    const stream = streamOf(one, run);
+  for (const { result } of channels) {
+    const stream = streamOf(result, run);
     if (stream) streams.push(stream);
     else channelsLeftOut++;
   }
@@ -62,7 +62,7 @@ function keptRateOf({ rateHz, steps, pattern }: Channel, chain: Chain | undefine
   const sampledHz = chain?.rateHz ?? rateHz?.value;
   if (sampledHz === undefined) return undefined;
   const kept = pattern ? pattern.value.taken.length / pattern.value.slots : 1;
-  return steps.reduce(rateBehind, sampledHz * kept);
+  return steps.length === 0 ? sampledHz * kept : steps.reduce(rateBehind, sampledHz * kept);
 }
 
 /** A record that follows a shaft is as large as the shaft is fast: at its highest speed. */

@@ -1,7 +1,7 @@
-import { runStorage, triggeredRecords } from '../chain/run-storage.ts';
+import { triggeredRecords } from '../chain/run-storage.ts';
 import { formatQuantity } from '../quantity/write.ts';
 import { type Check, SAYS_NOTHING } from './check.ts';
-import { bytesText, channelsText, resultsOf } from './run-wording.ts';
+import { bytesText, channelsText, storageOf } from './rig-storage.ts';
 
 /** Relative. */
 const ROUNDING = 1e-9;
@@ -36,10 +36,11 @@ channels:
     undeclared: -80 dBFS
 `,
   sources: ['Arithmetic: rate x bits / 8 x time, summed over the channels. 1 kB is 1000 B.'],
-  run: ({ environment: { run }, channels }) => {
+  run: (rig) => {
+    const { run } = rig.environment;
     const disk = run?.diskBytes;
     if (!run || !disk) return SAYS_NOTHING;
-    const storage = runStorage(run, resultsOf(channels));
+    const storage = storageOf(rig, run);
     const { bytes } = storage;
     if (bytes === undefined || bytes <= disk.value * (1 + ROUNDING)) return SAYS_NOTHING;
     const triggered = triggeredRecords(run);

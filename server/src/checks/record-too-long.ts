@@ -1,7 +1,7 @@
 import { mostAverages } from '../chain/run-averages.ts';
 import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
 import { formatQuantity } from '../quantity/write.ts';
-import type { Channel, Given, Run } from '../rig/model.ts';
+import type { Channel, Given, Run, Spectrum } from '../rig/model.ts';
 import { totalTimeS } from '../signal/spectrum-plan.ts';
 import { type Check, type RigView, SAYS_NOTHING, type SaidOfRig } from './check.ts';
 import { standingOn } from './standing.ts';
@@ -34,12 +34,17 @@ channels:
   run: ({ environment: { run }, channels }: RigView) => {
     if (!run) return SAYS_NOTHING;
     const said: SaidOfRig[] = [];
+    // Most channels have one spectrum and one rate from the defaults: what fits for one fits for the next.
+    let fitting: { readonly spectrum: Spectrum; readonly rateHz: number } | undefined;
     for (const { result } of channels) {
       const { channel, chain } = result;
       if (!channel.spectrum || !chain) continue;
+      const rateHz = chain.ratesHz[chain.ratesHz.length - 1]!;
+      if (fitting?.spectrum === channel.spectrum.value && fitting.rateHz === rateHz) continue;
       const spectrum = spectrumOf(chain);
       const one = spectrum && overlong(channel, spectrum, run);
       if (one) said.push(one);
+      else fitting = { spectrum: channel.spectrum.value, rateHz };
     }
     return said;
   },

@@ -1,4 +1,4 @@
-import { type RunStorage, runStorage, type StoredChannel } from '../chain/run-storage.ts';
+import { type RunStorage, runStorage } from '../chain/run-storage.ts';
 import { formatQuantity } from '../quantity/write.ts';
 import type { Evaluation } from './evaluation.ts';
 
@@ -6,11 +6,7 @@ export type { RunStorage } from '../chain/run-storage.ts';
 
 /** What the run of a file makes of data; `undefined` for a file without `run`. */
 export function runTotals({ environment, channels }: Evaluation): RunStorage | undefined {
-  return environment.run && runStorage(environment.run, storedChannels(channels));
-}
-
-function* storedChannels(channels: Evaluation['channels']): Generator<StoredChannel> {
-  for (const { result } of channels) yield result;
+  return environment.run && runStorage(environment.run, channels);
 }
 
 /** Totals in a few words: `76.8 kB/s, 2.212 GB in all`, and how many channels are not among them, if any. */

@@ -1,10 +1,18 @@
-import type { RunStorage } from '../chain/run-storage.ts';
+import { type RunStorage, runStorage } from '../chain/run-storage.ts';
 import { formatQuantity } from '../quantity/write.ts';
-import type { ChannelResult } from './channel-result.ts';
-import type { ChannelSummary } from './check.ts';
+import type { Run } from '../rig/model.ts';
+import type { RigView } from './check.ts';
 
-export function* resultsOf(channels: readonly ChannelSummary[]): Generator<ChannelResult> {
-  for (const { result } of channels) yield result;
+/** What has been added up already: two checks ask for the same sums, one after the other. */
+const sums = new WeakMap<RigView, RunStorage>();
+
+/** What the run of a rig makes of data, all channels together. */
+export function storageOf(rig: RigView, run: Run): RunStorage {
+  const known = sums.get(rig);
+  if (known) return known;
+  const storage = runStorage(run, rig.channels);
+  sums.set(rig, storage);
+  return storage;
 }
 
 /** Whose data it is: `64 channels`, `64 of 70 channels` where the rest is not known. */
