@@ -17,6 +17,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
     step: fc.constantFrom('', 'then: [{ decimate: 2 }]', 'then: [{ decimate: 4, filter: tidy }]'),
     slip: fc.constantFrom('', 'flatnes: 1 dB', 'filter: crad', 'headroom: 3', 'digitizer: fornt-end'),
     follows: fc.constantFrom('', '', 'follows: shock-peaks', 'follows: [impact-class-1000, spectrum-work-80-db]'),
+    noise: fc.constantFrom('', '', 'sources', 'converter'),
     style: fc.constantFrom('block', 'flow', 'defaults', 'alias'),
     spectrum: fc.constantFrom(
       '',
@@ -43,21 +44,25 @@ export const faultyRig: fc.Arbitrary<string> = fc
   })
   .map((draft) => {
     const ripple = draft.response === 'chebyshev' ? ', ripple: 0.5 dB' : '';
+    const converter = draft.noise === 'converter' ? 'bits: 10, noise: 2 mV, jitter: 1 us' : 'bits: 24';
+    const sensorNoise = draft.noise === 'sources' ? ', noise: 30 ug/rtHz' : '';
+    const hiss = draft.noise === 'sources' ? ['  hiss: { noise: 300 uV/rtHz, spans: 3 kHz .. 40 kHz }'] : [];
     const head = [
       '# faulty on purpose',
       'rig: Faulty',
       'clocks:',
       '  chassis: { frequency: 13.1072 MHz, divide: 1..512 }',
       'digitizers:',
-      `  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V, ranges: [±10 V, ±1 V]${draft.scan} }`,
+      `  front-end: { clock: chassis, prescale: 256, ${converter}, full-scale: ±10 V, ranges: [±10 V, ±1 V]${draft.scan} }`,
       'filters:',
       `  card: { response: ${draft.response}, order: ${draft.order}${ripple}, cutoff: ${draft.cutoff} }   # the card's own`,
       '  tidy: { response: kaiser, pass: 0.1 fs, stop: 0.15 fs, stopband: 70 dB }',
       'sensors:',
-      '  stud: { measures: acceleration, sensitivity: 100 mV/g, resonance: 30 kHz, range: 100 g }',
+      `  stud: { measures: acceleration, sensitivity: 100 mV/g, resonance: 30 kHz, range: 100 g${sensorNoise} }`,
       'sources:',
       '  blade: { order: 9, speed: 600..3000 rpm, harmonics: 3, level: 1 g, falls: 6 dB/oct, wanted: true }',
       `  inverter: { carrier: ${draft.carrier}, modulation: 50 Hz${draft.level} }`,
+      ...hiss,
       ...(draft.group === '' ? [] : ['groups:', '  pair: { within: 2 deg, up-to: 100 Hz }']),
     ];
     const keys = (rate: string): string[] =>
@@ -68,6 +73,7 @@ export const faultyRig: fc.Arbitrary<string> = fc
         'filter: card',
         `band: ${draft.band}`,
         draft.peak,
+        draft.noise === 'converter' ? 'resolve: 50 mg' : '',
         draft.step,
         draft.follows,
         draft.spectrum,

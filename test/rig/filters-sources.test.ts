@@ -232,12 +232,6 @@ describe('a source', () => {
     const rig = readRig(thingRig('sources', 'frequency: 5 Hz\nharmonics: 1e9'));
     expect(rig.environment.sources.get('x')?.harmonics).toBe(1000);
   });
-
-  it('that is broadband is known and left out', () => {
-    const rig = readRig(thingRig('sources', 'noise: 10 uV/rtHz\nspans: 10 Hz .. 40 kHz'));
-    expect(saidOf(rig)).toEqual(['not-computed: noise', 'not-computed: spans']);
-    expect(rig.environment.sources.size).toBe(0);
-  });
 });
 
 describe('what a channel hears', () => {

@@ -29,10 +29,6 @@ const KEYS: Readonly<Record<ContextName, string>> = {
 
 const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
   rig: 'accept',
-  digitizer: 'noise jitter',
-  sensor: 'noise',
-  source: 'noise spans',
-  channel: 'noise',
   acceptance: KEYS.acceptance,
 };
 

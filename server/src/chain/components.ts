@@ -24,16 +24,26 @@ export const MOST_COMPONENTS = 4096;
  */
 const expanded = new WeakMap<Source, readonly Component[]>();
 
-/** Everything that a source consists of: harmonics and sidebands, each a point or a range of true frequency. */
+/**
+ * Everything that a source consists of: harmonics and sidebands, each a point or a range of true frequency. Noise has
+ * no components.
+ */
 export function componentsOf(source: Source): readonly Component[] {
   const known = expanded.get(source);
   if (known) return known;
-  const components = bounded(source, source.type === 'modulated' ? modulated(source) : harmonics(source));
+  const components = bounded(source, linesOf(source));
   expanded.set(source, components);
   return components;
 }
 
-function* harmonics(source: Exclude<Source, { type: 'modulated' }>): Generator<Component> {
+type SimpleSource = Exclude<Source, { type: 'modulated' | 'broadband' }>;
+
+function linesOf(source: Source): Iterable<Component> {
+  if (source.type === 'broadband') return [];
+  return source.type === 'modulated' ? modulated(source) : harmonics(source);
+}
+
+function* harmonics(source: SimpleSource): Generator<Component> {
   const fundamental = fundamentalOf(source);
   for (let multiple = 1; multiple <= source.harmonics; multiple++) {
     const label = multiple === 1 ? 'fundamental' : `harmonic ${multiple}`;
@@ -41,7 +51,7 @@ function* harmonics(source: Exclude<Source, { type: 'modulated' }>): Generator<C
   }
 }
 
-function fundamentalOf(source: Exclude<Source, { type: 'modulated' }>): FrequencyRange {
+function fundamentalOf(source: SimpleSource): FrequencyRange {
   return source.type === 'tone' ? source.frequency.value : scaled(source.speed.value, source.order);
 }
 

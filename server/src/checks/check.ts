@@ -1,6 +1,7 @@
 import type { BandResponse } from '../chain/band-response.ts';
 import type { ImageArrival } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import type { NoiseBudget } from '../chain/noise.ts';
 import type { ChannelSpectrum } from '../chain/spectrum.ts';
 import type { UndeclaredFold } from '../chain/undeclared.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
@@ -54,6 +55,8 @@ export interface ChannelView {
   readonly input: InputRange | undefined;
   /** How the record is turned into a spectrum, where that is said. */
   readonly spectrum: ChannelSpectrum | undefined;
+  /** The noise in the band; `undefined` where the channel declares none. */
+  readonly noise: NoiseBudget | undefined;
 }
 
 /** What a check says; channel and check name are filled in by the list that runs it, and the severity where it is the usual one. */

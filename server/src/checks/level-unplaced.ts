@@ -49,6 +49,9 @@ channels:
   },
 };
 
+/** Any voltage. */
+const VOLTS: Level = { kind: 'volts', peakV: 1 };
+
 function isPlaced(heard: HeardSource, { channel, chain }: ChannelView): boolean {
   const levels = levelsOf(heard);
   const first = levels[0];
@@ -90,15 +93,17 @@ function unplacedOn(view: ChannelView): readonly Said[] {
     if (level && consider(`\`${heard.source.name}\``, level) === 'elsewhere')
       said.push(otherQuantity(heard, view, level));
   }
-  const { undeclared, foldLimit, peak } = channel;
+  const { undeclared, foldLimit, peak, resolve, sensor, sensorPlace, digitizer, digitizerPlace } = channel;
   const bound = undeclared?.value;
   if (bound?.kind === 'level') consider('`undeclared`', bound.level);
   if (bound?.kind === 'points' && bound.points[0]) consider('`undeclared`', bound.points[0].level);
   if (foldLimit && foldLimit.value.kind !== 'ratio' && scale.foldLimitAssumed)
     consider('`fold-limit`', foldLimit.value);
   if (peak) consider('`peak`', peak.value.high);
+  if (resolve) consider('`resolve`', resolve.value);
+  if (sensor?.noise) consider('the `noise` of the sensor', sensor.noise.value);
+  if (digitizer?.noise) consider('the `noise` of the digitizer', VOLTS);
   // Of a name that stands for nothing that could be read, that has been said.
-  const { digitizer, digitizerPlace, sensor, sensorPlace } = channel;
   if (withoutFullScale.length > 0 && (digitizer || !digitizerPlace)) said.push(noFullScale(withoutFullScale, view));
   if (withoutSensitivity.length > 0 && (sensor || !sensorPlace)) said.push(noSensitivity(withoutSensitivity, view));
   return said;

@@ -12,10 +12,12 @@ import { foldInBand } from './fold-in-band.ts';
 import { foldUnlevelled } from './fold-unlevelled.ts';
 import { headroomThin } from './headroom-thin.ts';
 import { interleaveImage } from './interleave-image.ts';
+import { jitterLimited } from './jitter-limited.ts';
 import { levelUnplaced } from './level-unplaced.ts';
 import { linesTooCoarse } from './lines-too-coarse.ts';
 import { linkShort } from './link-short.ts';
 import { noFilter } from './no-filter.ts';
+import { noiseFolds } from './noise-folds.ts';
 import { onNyquist } from './on-nyquist.ts';
 import { patternImage } from './pattern-image.ts';
 import { phaseMismatch } from './phase-mismatch.ts';
@@ -30,6 +32,7 @@ import { resonanceInBand } from './resonance-in-band.ts';
 import { scanSkew } from './scan-skew.ts';
 import { scannedRates } from './scanned-rates.ts';
 import { settlingShort } from './settling-short.ts';
+import { stepTooCoarse } from './step-too-coarse.ts';
 import { stepWithoutFilter } from './step-without-filter.ts';
 import { thinMargin } from './thin-margin.ts';
 import { windowLeaks } from './window-leaks.ts';
@@ -52,10 +55,13 @@ export const CHANNEL_CHECKS: readonly Check<'channel'>[] = [
   foldHides,
   patternImage,
   interleaveImage,
+  noiseFolds,
   bandDroop,
   clips,
   headroomThin,
   rangeWasted,
+  stepTooCoarse,
+  jitterLimited,
   resonanceInBand,
   levelUnplaced,
   linesTooCoarse,

@@ -3,6 +3,7 @@ import { type BandResponse, bandResponseOf } from '../chain/band-response.ts';
 import { chainOf } from '../chain/chain.ts';
 import { type ImageArrival, imageArrivalsOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import { type NoiseBudget, noiseBudgetOf } from '../chain/noise.ts';
 import { type ChannelSpectrum, spectrumOf } from '../chain/spectrum.ts';
 import { type UndeclaredFold, undeclaredFolds } from '../chain/undeclared.ts';
 import type { Channel } from '../rig/model.ts';
@@ -27,6 +28,7 @@ class View implements ChannelView {
   #shortfall: { readonly of: Shortfall | undefined } | undefined;
   #spectrum: { readonly of: ChannelSpectrum | undefined } | undefined;
   #input: { readonly of: InputRange | undefined } | undefined;
+  #noise: { readonly of: NoiseBudget | undefined } | undefined;
 
   constructor(channel: Channel, chain: Chain) {
     this.channel = channel;
@@ -67,5 +69,10 @@ class View implements ChannelView {
     if (!this.channel.spectrum) return undefined;
     this.#spectrum ??= { of: spectrumOf(this.chain) };
     return this.#spectrum.of;
+  }
+
+  get noise(): NoiseBudget | undefined {
+    this.#noise ??= { of: noiseBudgetOf(this.chain) };
+    return this.#noise.of;
   }
 }

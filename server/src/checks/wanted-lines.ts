@@ -73,7 +73,7 @@ interface Family {
 function familiesOf(wanted: readonly Source[]): Iterable<Family> {
   const families = new Map<string, Family>();
   for (const source of wanted) {
-    if (source.type === 'modulated') continue;
+    if (source.type === 'modulated' || source.type === 'broadband') continue;
     const isShaft = source.type === 'rotating';
     const base = isShaft ? source.speed.value : source.frequency.value;
     if (base.lowHz === base.highHz) continue;

@@ -8,6 +8,7 @@ import type { JudgedChannel } from '../workbench/evaluation.ts';
 import { windowsText } from '../workbench/rate-words.ts';
 import type { ClientAbilities } from './client-abilities.ts';
 import { chainDelayWords } from './delay-words.ts';
+import { noiseMarkdown } from './hover-noise.ts';
 import {
   codeMarkdown,
   drawingMarkdown,
@@ -29,7 +30,7 @@ export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): 
   if (!chain) return `${name} has no alias map yet: ${findings[0]?.message ?? 'its rate or its band is missing.'}`;
   const arrivals = arrivalsOf(chain);
   const head = headline(chain, judged);
-  const table = arrivalsTable(chain, arrivals);
+  const table = [arrivalsTable(chain, arrivals), noiseMarkdown(chain) ?? ''].filter((part) => part !== '').join('\n\n');
   const room = MOST_HOVER_CHARACTERS - head.length - table.length - 100;
   const model = aliasMapModel(chain, arrivals);
   const picture = abilities.showsPictures
@@ -55,7 +56,7 @@ function bandText({ isBandpass, bandHighHz, recordedBand }: Chain): string {
 }
 
 function arrivalsTable(chain: Chain, arrivals: readonly Arrival[]): string {
-  if (arrivals.length === 0) return 'Nothing is declared that this channel hears.';
+  if (arrivals.length === 0) return nothingArrives(chain);
   const unit = chain.levelUnit === 'dbfs' ? 'dBFS' : 'dB';
   const ordered = [...arrivals].sort(byWeight);
   const rows = ordered
@@ -75,6 +76,12 @@ function arrivalsTable(chain: Chain, arrivals: readonly Arrival[]): string {
   return ordered.length > MOST_ROWS
     ? `${table}\n\n${ordered.length - MOST_ROWS} more, all quieter or outside the band.`
     : table;
+}
+
+function nothingArrives({ channel }: Chain): string {
+  return channel.heard.length === 0
+    ? 'Nothing is declared that this channel hears.'
+    : 'Nothing but noise is declared that this channel hears.';
 }
 
 function againstLimit(arrival: Arrival, chain: Chain): string {

@@ -3,6 +3,7 @@ import type { Arrival } from '../chain/model.ts';
 import type { Source } from '../rig/model.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
 import { spanText } from './hover-map.ts';
+import { noiseSourceMarkdown } from './hover-noise.ts';
 import { codeMarkdown, tableMarkdown } from './picture-markdown.ts';
 import { sourceWords } from './things.ts';
 
@@ -20,6 +21,8 @@ interface Landing {
 
 /** Where a source lands in every channel that hears it, the worst first. */
 export function sourceMarkdown(source: Source, evaluation: Evaluation): string {
+  const head = `**${codeMarkdown(source.name)}** · ${sourceWords(source)} · enters at the ${source.enters}`;
+  if (source.type === 'broadband') return `${head}\n\n${noiseSourceMarkdown(source, evaluation)}`;
   const hearing = evaluation.channels.filter(
     ({ result }) => result.chain && result.channel.heard.some((heard) => heard.source === source),
   );
@@ -34,7 +37,6 @@ export function sourceMarkdown(source: Source, evaluation: Evaluation): string {
     const unit = chain.levelUnit === 'dbfs' ? 'dBFS' : 'dB';
     return worst ? [{ channel: result.channel.name, worst, unit, excess: worst.level - chain.foldLimit }] : [];
   });
-  const head = `**${codeMarkdown(source.name)}** · ${sourceWords(source)} · enters at the ${source.enters}`;
   if (landings.length === 0) return `${head}\n\nNo channel hears it.`;
   landings.sort((a, b) => (isGraver(a.worst, b.worst) ? -1 : isGraver(b.worst, a.worst) ? 1 : 0));
   const rows = landings

@@ -54,6 +54,8 @@ export function sourceWords(source: Source): string {
       return `order ${source.order} of a shaft${harmonics}`;
     case 'modulated':
       return `carrier ${span(source.carrier.value)}${harmonics}`;
+    case 'broadband':
+      return `noise ${span(source.spans.value)}`;
   }
 }
 

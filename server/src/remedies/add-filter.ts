@@ -26,7 +26,7 @@ export const addFilter: RemedyDefinition = {
   finds:
     'An analogue low-pass that fits between the band and what folds: a butterworth of the lowest order, or an elliptic where none is steep enough.',
   why: 'What has been sampled can not be told from what belongs there, so it has to be taken off before. It is a remedy only if the filter is built into the rig.',
-  answers: ['no-filter', 'fold-in-band', 'fold-unlevelled', 'filter-short', 'thin-margin', 'on-nyquist'],
+  answers: ['no-filter', 'fold-in-band', 'fold-unlevelled', 'filter-short', 'thin-margin', 'on-nyquist', 'noise-folds'],
   search: searchFilter,
 };
 

@@ -24,6 +24,7 @@ export const decimateLess: RemedyDefinition = {
     'on-nyquist',
     'band-droop',
     'practice-unmet',
+    'noise-folds',
   ],
   search: (search) => stepsOfFinding(search).flatMap((placed) => decimatedLess(search, placed)),
 };

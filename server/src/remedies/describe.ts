@@ -2,15 +2,19 @@ import { arrivalsOf } from '../chain/arrivals.ts';
 import type { Arrival } from '../chain/model.ts';
 import type { ChannelResult } from '../checks/channel-result.ts';
 import { formatHz } from '../quantity/write.ts';
+import { noiseOutcome } from './noise-outcome.ts';
 import type { Search } from './search.ts';
 
 /**
- * What comes of a change for what the finding is about: where the source arrives then, or what margin the channel has.
+ * What comes of a change for what the finding is about: where the source arrives then, how much noise is left, or what
+ * margin the channel has.
  */
 export function outcomeOf(search: Search, after: ChannelResult): string {
-  const { about } = search.context.finding;
+  const { about, check } = search.context.finding;
   const { chain } = after;
   if (!chain) return '';
+  const ofNoise = noiseOutcome(check, chain);
+  if (ofNoise !== undefined) return ofNoise;
   const arrival =
     about === undefined ? undefined : loudest(arrivalsOf(chain).filter(({ source }) => source.name === about));
   if (about !== undefined && arrival) return `${about} ${whereabouts(arrival)}`;

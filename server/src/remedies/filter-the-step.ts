@@ -20,7 +20,15 @@ export const filterTheStep: RemedyDefinition = {
   finds:
     'The shortest digital low-pass ahead of a decimation with which the finding is gone: flat over the band, and stopping where the band would be folded into.',
   why: 'Keeping every M-th sample is sampling again, and folds what the new rate can not hold. A digital filter costs computing and a delay, but neither data nor hardware.',
-  answers: ['step-without-filter', 'fold-in-band', 'fold-unlevelled', 'filter-short', 'on-nyquist', 'thin-margin'],
+  answers: [
+    'step-without-filter',
+    'fold-in-band',
+    'fold-unlevelled',
+    'filter-short',
+    'on-nyquist',
+    'thin-margin',
+    'noise-folds',
+  ],
   search: (search) => stepsOfFinding(search).flatMap((placed) => filtered(search, placed)),
 };
 

@@ -31,6 +31,9 @@ export const narrowBand: RemedyDefinition = {
     'interleave-image',
     'band-droop',
     'resonance-in-band',
+    'noise-folds',
+    'step-too-coarse',
+    'jitter-limited',
   ],
   search: searchNarrower,
 };

@@ -31,6 +31,7 @@ export const sampleElsewhere: RemedyDefinition = {
     'interleave-image',
     'filter-short',
     'thin-margin',
+    'noise-folds',
   ],
   search: searchElsewhere,
 };

@@ -26,6 +26,9 @@ export const sampleFaster: RemedyDefinition = {
     'band-droop',
     'practice-unmet',
     'scan-skew',
+    'noise-folds',
+    'step-too-coarse',
+    'jitter-limited',
   ],
   search: searchFaster,
 };

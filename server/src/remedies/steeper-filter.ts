@@ -25,7 +25,15 @@ export const steeperFilter: RemedyDefinition = {
   finds:
     'The lowest order of the same response, then the cutoff nearest the present one, with which the finding is gone.',
   why: 'A steeper filter takes more off what would fold and leaves more of the band. It is a remedy only if the filter in the rig is changed with the text.',
-  answers: ['fold-in-band', 'fold-unlevelled', 'filter-short', 'thin-margin', 'on-nyquist', 'band-droop'],
+  answers: [
+    'fold-in-band',
+    'fold-unlevelled',
+    'filter-short',
+    'thin-margin',
+    'on-nyquist',
+    'band-droop',
+    'noise-folds',
+  ],
   search: searchSteeper,
 };
 

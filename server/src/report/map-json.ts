@@ -1,5 +1,7 @@
 import { imageArrivalsOf, imageRulesOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
+import { levelKey } from './level-key.ts';
+import { noiseJson } from './noise-json.ts';
 import { reported } from './number.ts';
 
 /** The alias map of one channel as data. */
@@ -14,6 +16,7 @@ export function mapJson(file: string, chain: Chain, arrivals: readonly Arrival[]
     ...levelKey('foldLimit', chain, chain.foldLimit),
     arrivals: arrivals.map((arrival) => arrivalJson(arrival, chain)),
     ...imagesKey(chain),
+    ...noiseJson(chain),
     findings,
   };
   return `${JSON.stringify(map, undefined, 2)}\n`;
@@ -48,19 +51,4 @@ function arrivalJson(arrival: Arrival, chain: Chain): object {
     inBand: arrival.inBand,
     overLimit: arrival.overLimit,
   };
-}
-
-/** A level under a name that tells its scale: dBFS where there is a full scale. */
-function levelKey(name: 'foldLimit' | 'level', chain: Chain, level: number): Readonly<Record<string, number | null>> {
-  const value = Number.isFinite(level) ? reported(level) : null;
-  switch (chain.levelUnit) {
-    case 'dbfs':
-      return { [`${name}Dbfs`]: value };
-    case 'db-volt':
-      return { [`${name}DbVolt`]: value };
-    case 'db-measured':
-      return { [`${name}DbMeasured`]: value };
-    case 'relative':
-      return { [`${name}Db`]: value };
-  }
 }

@@ -19,7 +19,10 @@ export function mapText(chain: Chain, arrivals: readonly Arrival[], { ascii, pai
 }
 
 function arrivalsTable(chain: Chain, arrivals: readonly Arrival[], paint: Paint): string {
-  if (arrivals.length === 0) return 'Nothing is declared that this channel hears.\n';
+  if (arrivals.length === 0) {
+    const what = chain.channel.heard.length === 0 ? 'Nothing' : 'Nothing but noise';
+    return `${what} is declared that this channel hears.\n`;
+  }
   const unit = chain.levelUnit === 'dbfs' ? 'dBFS' : 'dB';
   const ordered = [...arrivals].sort(byWeight);
   const rows = ordered.slice(0, MOST_ROWS).map((arrival) => ({

@@ -3,6 +3,7 @@ import { quantityOfLevel, quantityOfSensor, readChannelLevel } from './levels.ts
 import type { Given, HeardSource, Level, Sensor, Source } from './model.ts';
 import { findThing } from './names.ts';
 import type { Place } from './place.ts';
+import { reportLevelOfNoise } from './read-broadband.ts';
 import { type AllHeard, type Reader, report, type SourceSet } from './reader.ts';
 import type { MapNode, ScalarNode } from './tree.ts';
 import { alternative, readChoice, reportWrongKind, scalarOf } from './values.ts';
@@ -79,7 +80,7 @@ function readLevels(reader: Reader, field: Field, node: MapNode, sensor: Sensor 
     const path = `${field.path}.${key.text}`;
     const pair: Field = { kind, row: field.row, path, node: value, entry, inherited: inherited ?? field.inherited };
     const source = findThing(reader, { ...pair, entry: keyEntry }, key, 'source');
-    const level = readLevel(reader, pair, sensor);
+    const level = readLevel(reader, pair, sensor, source);
     if (source) named.set(source, { mention: placeOf(keyEntry, key), level });
   }
   const heard: HeardSource[] = [];
@@ -93,9 +94,17 @@ function readLevels(reader: Reader, field: Field, node: MapNode, sensor: Sensor 
   return { heard, unheard: all.unheard.filter((source) => !named.has(source)) };
 }
 
-function readLevel(reader: Reader, field: Field, sensor: Sensor | undefined): Named['level'] {
+function readLevel(
+  reader: Reader,
+  field: Field,
+  sensor: Sensor | undefined,
+  source: Source | undefined,
+): Named['level'] {
   const { node } = field;
   if (node.kind === 'empty') return undefined;
   if (node.kind === 'scalar' && (node as ScalarNode).text === 'none') return 'none';
-  return readChannelLevel(reader, field, sensor);
+  const level = readChannelLevel(reader, field, sensor);
+  if (level === undefined || source?.type !== 'broadband') return level;
+  reportLevelOfNoise(reader, field, source.name, level);
+  return undefined;
 }

@@ -68,6 +68,10 @@ export interface Digitizer extends Thing {
   /** Time constant of the input after the switch has moved on. */
   readonly settlingS: Given<number> | undefined;
   readonly bits: Given<number> | undefined;
+  /** At its input, as it stands in the record: white up to half the rate. */
+  readonly noise: Given<InputNoise> | undefined;
+  /** Rms uncertainty of the instant of sampling. */
+  readonly jitterS: Given<number> | undefined;
   readonly fullScale: Given<FullScale> | undefined;
   readonly gain: Given<number> | undefined;
   readonly ranges: Given<readonly FullScale[]> | undefined;
@@ -81,6 +85,10 @@ export interface Digitizer extends Thing {
   /** True where the delay of digital filters is taken out of the time stamps. */
   readonly delayCompensated: boolean;
 }
+
+export type InputNoise =
+  | { readonly kind: 'rms'; readonly rmsV: number }
+  | { readonly kind: 'density'; readonly voltsPerRootHz: number };
 
 export type ListedRates =
   | { readonly kind: 'list'; readonly ratesHz: readonly number[] }
@@ -114,6 +122,8 @@ export interface Sensor extends Thing {
   readonly lowCornerHz: Given<number> | undefined;
   /** The largest magnitude it can measure, in the base unit. */
   readonly range: Given<number> | undefined;
+  /** Of its own, at whatever frequency. */
+  readonly noise: Given<NoiseLevel> | undefined;
 }
 
 /** A frequency in a filter: absolute, or a fraction of the rate that the filter's place decides. */
@@ -191,10 +201,13 @@ export type Level =
   /** In base units of what `measured` says; `unit` is the unit as written, own units included. */
   | { readonly kind: 'measured'; readonly peak: number; readonly measured: Measured; readonly unit: string };
 
+/** A one-sided density of noise: the level of a sinusoid that has the rms of 1 Hz of it. */
+export type NoiseLevel = Exclude<Level, { readonly kind: 'dbfs' }>;
+
 interface SourceBase extends Thing {
   readonly kind: 'source';
   readonly harmonics: number;
-  /** One per harmonic as far as they are given; empty where no level is known. */
+  /** One per harmonic as far as they are given; empty where no level is known. Of noise: the one of 1 Hz of it. */
   readonly levels: readonly Given<Level>[];
   readonly fallsDbPerOctave: number;
   readonly tolerance: number;
@@ -232,7 +245,11 @@ export type Source =
       readonly modulation: Given<FrequencyRange>;
       readonly sidebands: number;
       readonly sidebandsFallDb: number;
-    });
+    })
+  | BroadbandSource;
+
+/** Noise that is white over a range. It has no lines, so whatever follows lines passes it by. */
+export type BroadbandSource = SourceBase & { readonly type: 'broadband'; readonly spans: Given<FrequencyRange> };
 
 /** A source as one channel hears it. */
 export interface HeardSource {

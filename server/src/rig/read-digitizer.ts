@@ -3,6 +3,7 @@ import { readFilterUse, readFilterUses } from './filter-uses.ts';
 import type { Digitizer, FullScale, Given, ListedRates } from './model.ts';
 import { findThing } from './names.ts';
 import { readEnds, readFullScale, readValue } from './quantities.ts';
+import { readInputNoise, readRmsTime } from './read-noise.ts';
 import { readInterleave } from './read-uneven.ts';
 import type { Reader } from './reader.ts';
 import { checkUncomputed } from './uncomputed.ts';
@@ -37,6 +38,8 @@ export function readDigitizer(reader: Reader): Digitizer {
     scanIntervalS: readValue(reader, field('scan-interval')),
     settlingS: readValue(reader, field('settling')),
     bits: readNumber(reader, field('bits')),
+    noise: readInputNoise(reader, field('noise')),
+    jitterS: readRmsTime(reader, field('jitter')),
     fullScale: readFullScale(reader, field('full-scale')),
     gain: readNumber(reader, field('gain')),
     ranges: readRanges(reader, field('ranges')),

@@ -4,6 +4,7 @@ import { dimensionOf, measuredOf } from './levels.ts';
 import type { Given, Measured, Sensor } from './model.ts';
 import type { Place } from './place.ts';
 import { DIMENSION_NAMES, type Ends, readEnds, readValue } from './quantities.ts';
+import { readNoise } from './read-noise.ts';
 import type { Reader } from './reader.ts';
 import { given, readChoice, readNumber, reportValue } from './values.ts';
 
@@ -35,11 +36,12 @@ export function readSensor(reader: Reader, fields: Fields, name: string, place: 
     (measures?.value === 'voltage' && !field('sensitivity')
       ? { sensitivity: { ...measures, value: 1 }, unit: VOLT }
       : undefined);
+  const means = measures ?? impliedMeasure(scale?.unit, scale?.sensitivity);
   return {
     kind: 'sensor',
     name,
     place,
-    measures: measures ?? impliedMeasure(scale?.unit, scale?.sensitivity),
+    measures: means,
     sensitivity: scale?.sensitivity,
     unit: scale?.unit.symbol,
     resonanceHz: readValue(reader, field('resonance')),
@@ -47,6 +49,7 @@ export function readSensor(reader: Reader, fields: Fields, name: string, place: 
     cornerHz: readValue(reader, field('corner')),
     lowCornerHz: readValue(reader, field('low-corner')),
     range: range?.magnitude,
+    noise: readSensorNoise(reader, field('noise'), means?.value),
   };
 }
 
@@ -87,6 +90,14 @@ function readRange(reader: Reader, field: Field | undefined, measures: Measured 
   const node = field.node;
   const place = node.kind === 'scalar' ? innerPlace(field.entry, node) : placeOf(field.entry, node);
   reportValue(reader, field, 'out-of-range', place, '`range` must be above 0.');
+  return undefined;
+}
+
+/** In volts, or in what the sensor measures. */
+function readSensorNoise(reader: Reader, field: Field | undefined, measures: Measured | undefined): Sensor['noise'] {
+  const read = readNoise(reader, field);
+  if (!field || !read || read.of.dimension === 'voltage' || goesWith(read.of, measures)) return read?.noise;
+  reportOtherUnit(reader, field, read.of, measures);
   return undefined;
 }
 

@@ -12,6 +12,7 @@ import { readSourceLevel } from './levels.ts';
 import type { FrequencyRange, Given, Level, Source } from './model.ts';
 import type { Place } from './place.ts';
 import { readFrequencyRange, readValue } from './quantities.ts';
+import { readBroadband } from './read-broadband.ts';
 import { type Reader, report } from './reader.ts';
 import { checkUncomputed } from './uncomputed.ts';
 import { alternative, readChoice, readNumber, readTruth, reportWrongKind } from './values.ts';
@@ -21,17 +22,18 @@ import { SOURCE_TYPES, type SourceTypeRow } from './vocabulary-sources.ts';
 export const MAINS = 'mains';
 const MAINS_TOLERANCE = 0.01;
 
-/**
- * Reads an entry of `sources`. `undefined` for one without a readable frequency, and for broadband noise, which this
- * version does not compute.
- */
+/** Reads an entry of `sources`. `undefined` for one without a readable frequency, or without a readable density. */
 export function readSource(reader: Reader): Source | undefined {
   const fields = readEntryFields(reader, 'source');
   checkUncomputed(reader, fields);
   const type = sourceType(reader, fields);
   if (!type) return undefined;
   reportMissingKeys(reader, fields, type.needs);
-  return sourceOf(reader, fields, type, reader.entry.name, namePlace(reader.entry), 0);
+  const { name } = reader.entry;
+  const place = namePlace(reader.entry);
+  const { name: kind } = type;
+  if (kind === 'broadband') return readBroadband(reader, fields, name, place);
+  return sourceOf(reader, fields, kind, name, place, 0);
 }
 
 /** Reads the top-level key `mains`: a frequency, or a map with the keys of a source. */
@@ -41,7 +43,7 @@ export function readMains(reader: Reader, field: Field): Source | undefined {
   if (node.kind === 'map') {
     const fields = readFieldsOf(reader, 'mains', field, node);
     reportMissingKeys(reader, fields, ['frequency']);
-    return sourceOf(reader, fields, TONE, MAINS, place, MAINS_TOLERANCE);
+    return sourceOf(reader, fields, 'tone', MAINS, place, MAINS_TOLERANCE);
   }
   if (node.kind === 'list') {
     reportWrongKind(reader, field);
@@ -51,8 +53,6 @@ export function readMains(reader: Reader, field: Field): Source | undefined {
   const fields: Fields = { context: 'mains', byKey: new Map(), place, prefix: '' };
   return frequency && { ...sourceBase(reader, fields, MAINS, place, MAINS_TOLERANCE), type: 'tone', frequency };
 }
-
-const TONE = SOURCE_TYPES.find(({ name }) => name === 'tone') as SourceTypeRow;
 
 /** The kind of source that its keys make it; a key that belongs to another kind is said to be one too many. */
 function sourceType(reader: Reader, fields: Fields): SourceTypeRow | undefined {
@@ -74,17 +74,19 @@ function sourceType(reader: Reader, fields: Fields): SourceTypeRow | undefined {
   return type;
 }
 
+type KindWithLines = Exclude<SourceTypeRow['name'], 'broadband'>;
+
 function sourceOf(
   reader: Reader,
   fields: Fields,
-  type: SourceTypeRow,
+  kind: KindWithLines,
   name: string,
   place: Place,
   tolerance: number,
 ): Source | undefined {
   const base = sourceBase(reader, fields, name, place, tolerance);
   const range = (key: string): Given<FrequencyRange> | undefined => readFrequencyRange(reader, fields.byKey.get(key));
-  switch (type.name) {
+  switch (kind) {
     case 'tone': {
       const frequency = range('frequency');
       return frequency && { ...base, type: 'tone', frequency };
@@ -102,8 +104,6 @@ function sourceOf(
       if (!carrier || !modulation) return undefined;
       return { ...base, type: 'modulated', carrier, modulation, sidebands, sidebandsFallDb };
     }
-    default:
-      return undefined;
   }
 }
 

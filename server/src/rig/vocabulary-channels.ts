@@ -131,7 +131,8 @@ const CHANNEL_ROWS: readonly KeyRow[] = [
     'resolve',
     measuredQuantity(['voltage', 'dbfs'], { bounds: {} }),
     '0.01 g',
-    'The smallest step that must be seen.',
+    'The smallest step that must be seen, as the level of a sinusoid.',
+    { default: 'nothing is said of steps and noise' },
   ),
   row(
     ['channel', 'rig'],

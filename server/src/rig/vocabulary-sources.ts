@@ -7,7 +7,6 @@ import {
   integer,
   LEVEL,
   listOf,
-  measuredQuantity,
   NOT_NEGATIVE,
   number,
   POSITIVE,
@@ -72,10 +71,9 @@ export const SOURCE_ROWS: readonly KeyRow[] = [
   row(
     'source',
     'noise',
-    measuredQuantity(['density'], { bounds: NOT_NEGATIVE }),
+    quantity('density', 'V/rtHz', { bounds: NOT_NEGATIVE }),
     '10 uV/rtHz',
-    'The density of a broadband source, one-sided.',
-    { computed: false },
+    'The density of a broadband source, one-sided rms: in volts, or in the measured unit.',
   ),
   row(
     'source',
@@ -83,7 +81,6 @@ export const SOURCE_ROWS: readonly KeyRow[] = [
     quantity('frequency', 'Hz', { forms: RANGE_ONLY, bounds: NOT_NEGATIVE, width: true }),
     '10 Hz .. 40 kHz',
     'The range that a broadband source fills.',
-    { computed: false },
   ),
   row(
     BOTH,

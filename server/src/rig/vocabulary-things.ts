@@ -140,8 +140,8 @@ const DIGITIZER_ROWS: readonly KeyRow[] = [
     'noise',
     quantity(['voltage', 'density'], 'V', { bounds: NOT_NEGATIVE }),
     '10 uV/rtHz',
-    'The noise of its input: rms (white up to half the rate), or a density.',
-    { computed: false },
+    'The noise of its input as it stands in the record, white up to half the rate: rms, or a density.',
+    { default: 'no noise but that of its steps' },
   ),
   row(
     'digitizer',
@@ -149,7 +149,7 @@ const DIGITIZER_ROWS: readonly KeyRow[] = [
     quantity('time', 's', { bounds: NOT_NEGATIVE }),
     '50 ps',
     'How uncertain the instant of sampling is, rms.',
-    { computed: false },
+    { default: 'sampled at the instant that is meant' },
   ),
   row('digitizer', 'filter', FILTERS, 'card', 'The filters that are built into its input and always in the path.', {
     default: 'none',
@@ -235,8 +235,8 @@ const SENSOR_ROWS: readonly KeyRow[] = [
     'noise',
     quantity('density', 'V/rtHz', { bounds: NOT_NEGATIVE }),
     '10 uV/rtHz',
-    'The density of its own noise, one-sided.',
-    { computed: false },
+    'The density of its own noise, one-sided rms: in volts, or in the measured unit.',
+    { default: 'no noise' },
   ),
 ];
 
