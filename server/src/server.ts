@@ -18,6 +18,7 @@ import { hoverAt } from './editor/hover.ts';
 import { mapAt } from './editor/map-view.ts';
 import { outlineOf } from './editor/outline.ts';
 import { foldersOf, readableFrom } from './server-folders.ts';
+import { today } from './server-today.ts';
 import { readUsedFile, readWantedFiles } from './server-used-files.ts';
 import type { Evaluation } from './workbench/evaluation.ts';
 import { canonicalUri } from './workbench/uris.ts';
@@ -47,7 +48,7 @@ interface OpenDocument {
  * with `ContentModified` (or `ServerCancelled`, for findings, which the client then asks for again).
  */
 export function serve(connection: Connection): void {
-  const workbench = new Workbench((message) => connection.console.error(message));
+  const workbench = new Workbench((message) => connection.console.error(message), today);
   const documents = new Map<string, OpenDocument>();
   let abilities: ClientAbilities = abilitiesOf(undefined);
   /** URIs of the folders that the client has open. */

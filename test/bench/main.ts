@@ -8,6 +8,7 @@ import { allFindings } from '../../server/src/workbench/findings.ts';
 import type { TextChange } from '../../server/src/workbench/workbench.ts';
 import { Workbench } from '../../server/src/workbench/workbench.ts';
 import { startClient } from '../protocol/client.ts';
+import { TODAY } from '../tools/today.ts';
 import { median, percentile, timesOf } from './measure.ts';
 import { generatedRig } from './rigs.ts';
 
@@ -24,7 +25,11 @@ interface Row {
 const rows: Row[] = [];
 const ratio = (value: number): string => `${value.toFixed(2)} x`;
 const ms = (value: number): string => `${value.toFixed(1)} ms`;
-const newBench = (): Workbench => new Workbench((message) => console.error(message));
+const newBench = (): Workbench =>
+  new Workbench(
+    (message) => console.error(message),
+    () => TODAY,
+  );
 
 /** A small rig has to be read many times before the code that reads it is warm. */
 function warmUpsFor(text: string): number {

@@ -1,3 +1,5 @@
+import { withAcceptances } from '../../server/src/checks/acceptance-findings.ts';
+import { acceptedResult, acceptingOn } from '../../server/src/checks/accepting.ts';
 import type { Guard } from '../../server/src/checks/channel-result.ts';
 import type { Finding } from '../../server/src/checks/finding.ts';
 import { judgeChannel, judgingRig } from '../../server/src/checks/judge.ts';
@@ -5,6 +7,7 @@ import { CHECK_NAMES } from '../../server/src/checks/list.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';
 import { readSnapshot } from '../../server/src/rig/snapshot.ts';
+import { TODAY } from '../tools/today.ts';
 
 /** In the tests a check that throws fails the test. */
 export const NO_GUARD: Guard = (_name, run) => run();
@@ -12,12 +15,14 @@ export const NO_GUARD: Guard = (_name, run) => run();
 /** Every finding of a rig file's text, those of the rig first, then channel by channel. */
 export function findingsOf(text: string): readonly Finding[] {
   const environment = readEnvironment(readSnapshot(text), CHECK_NAMES);
+  const accepting = acceptingOn(environment.acceptances, TODAY);
   const channels = environment.channelEntries.map((entry) => {
     const reading = readChannel(entry, environment);
-    return { reading, result: judgeChannel(reading, environment.severities, NO_GUARD) };
+    return { reading, result: acceptedResult(judgeChannel(reading, environment.severities, NO_GUARD), accepting) };
   });
+  const found = finished(judgingRig(environment, channels, NO_GUARD));
   return [
-    ...finished(judgingRig(environment, channels, NO_GUARD)).findings,
+    ...withAcceptances(found.findings, { environment, channels }, accepting),
     ...channels.flatMap(({ result }) => result.findings),
   ];
 }

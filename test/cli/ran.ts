@@ -4,6 +4,7 @@ import { dirname, join } from 'node:path';
 import { afterAll } from 'vitest';
 import type { CommandIo, ExitCode } from '../../server/src/cli/io.ts';
 import { run } from '../../server/src/cli/run.ts';
+import { TODAY } from '../tools/today.ts';
 
 /** Files by their path below the folder; a folder that holds nothing is a path that ends with `/`. */
 export type Files = Readonly<Record<string, string | Uint8Array>>;
@@ -53,6 +54,7 @@ export async function ranIn(folder: string, argv: readonly string[], around: Sur
   const io: CommandIo = {
     cwd: join(folder, inside),
     environment,
+    today: TODAY,
     stdoutIsTerminal: isTerminal,
     stderrIsTerminal: isTerminal,
     readStdin: async () => {

@@ -72,7 +72,12 @@ describe('the outline', () => {
 
   it('shows a rate that comes from the defaults, and none where none is known', () => {
     const text = 'defaults: { rate: 5 kHz }\nchannels:\n  a: {}\n  b: { rate: 1 kHz }\n  "c-{1..3}": {}\n';
-    expect(lines(outline(text)).slice(1)).toEqual(['channels', '  a · 5 kHz', '  b · 1 kHz', '  c-{1..3} · 5 kHz']);
+    expect(lines(outline(text)).slice(1)).toEqual([
+      'channels',
+      '  a · 5 kHz',
+      '  b · 1 kHz',
+      '  c-{1..3} · 5 kHz · 3 channels',
+    ]);
     expect(lines(outline('channels:\n  a: {}\n'))).toEqual(['channels', '  a']);
   });
 

@@ -4,22 +4,13 @@ import { abilitiesOf } from '../../server/src/editor/client-abilities.ts';
 import { filterMarkdown } from '../../server/src/editor/hover-filter.ts';
 import { mapMarkdown } from '../../server/src/editor/hover-map.ts';
 import { pictureMarkdown } from '../../server/src/editor/picture-markdown.ts';
-import type { Evaluation } from '../../server/src/workbench/evaluation.ts';
-import { Workbench } from '../../server/src/workbench/workbench.ts';
 import { EXTRACT_FAN } from '../tools/samples.ts';
+import { evaluated } from '../workbench/describe-findings.ts';
 import { EVERY_FILTER } from './curves.ts';
 import { viewBoxOf } from './svg-text.ts';
 
 const CHARACTERS: ClientAbilities = { ...abilitiesOf(undefined), showsMarkdown: true };
 const PICTURES: ClientAbilities = { ...CHARACTERS, showsPictures: true, theme: 'dark' };
-
-function evaluated(text: string): Evaluation {
-  const workbench = new Workbench((message) => {
-    throw new Error(message);
-  });
-  workbench.setFile('file:///rig.rig.yaml', { text });
-  return workbench.evaluation('file:///rig.rig.yaml')!;
-}
 
 /** The SVG that a hover begins with; fails where it begins with anything else. */
 function firstPicture(markdown: string): string {

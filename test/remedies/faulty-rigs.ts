@@ -40,6 +40,15 @@ export const faultyRig: fc.Arbitrary<string> = fc
       ', sampling: scanned, scan-interval: 40 us, settling: 6 us',
     ),
     group: fc.constantFrom('', '', 'group: pair'),
+    accepted: fc.constantFrom(
+      '',
+      '',
+      'accept: []',
+      'accept: [{ finding: band-droop, reason: corrected afterwards }]',
+      'accept:\n  # known\n  - finding: fold-in-band\n    on: "*-0*"\n    reason: known\n',
+      'accept:\n- { finding: filter-short, on: ch-1, reason: "" }',
+    ),
+    many: fc.constantFrom('', '', '', '-{1..4}'),
     lineEnd: fc.constantFrom('\n', '\n', '\r\n'),
   })
   .map((draft) => {
@@ -80,26 +89,28 @@ export const faultyRig: fc.Arbitrary<string> = fc
         draft.group,
       ].filter((key) => key !== '');
     const channels = draft.rates.flatMap((rate, index): string[] => {
+      const name = `ch-${index}${draft.many}`;
       const slip = index === 0 && draft.slip !== '' ? draft.slip : undefined;
       const all = keys(rate).filter((key) => slip === undefined || key.split(':')[0] !== slip.split(':')[0]);
       if (slip !== undefined) all.push(slip);
       switch (draft.style) {
         case 'flow':
-          return [`  ch-${index}: { ${all.join(', ')} }`];
+          return [`  ${name}: { ${all.join(', ')} }`];
         case 'alias':
-          return index === 0 ? [`  ch-0: &first`, ...all.map((key) => `    ${key}`)] : [`  ch-${index}: *first`];
+          return index === 0 ? [`  ${name}: &first`, ...all.map((key) => `    ${key}`)] : [`  ${name}: *first`];
         case 'defaults':
           return [
-            `  ch-${index}:   # position ${index}`,
+            `  ${name}:   # position ${index}`,
             ...all.filter((key) => !/^(rate|filter: card|spectrum)/.test(key)).map((key) => `    ${key}`),
           ];
         default:
-          return [`  ch-${index}:`, ...all.map((key) => `    ${key}`), `    # end of ${index}`];
+          return [`  ${name}:`, ...all.map((key) => `    ${key}`), `    # end of ${index}`];
       }
     });
     const defaults =
       draft.style === 'defaults'
         ? ['defaults:', `  rate: ${draft.rates[0]}`, '  filter: card', `  ${draft.spectrum}`]
         : [];
-    return [...head, draft.run, ...defaults, 'channels:', ...channels, ''].join(draft.lineEnd);
+    const accepted = draft.accepted.split('\n');
+    return [...head, draft.run, ...accepted, ...defaults, 'channels:', ...channels, ''].join(draft.lineEnd);
   });

@@ -183,9 +183,10 @@ describe('a channel', () => {
     expect(complete('rig: R\nchannels:\n  a: { rate: 1 kHz, pulses: { per-turn: 60, speed: 600 rpm } }\n')).toBe(true);
   });
 
-  it('that stands for several says that this is not computed', () => {
+  it('that stands for several is one entry with their count', () => {
     const rig = readRig('rig: R\nchannels:\n  "strain-{01..64}": { rate: 1 kHz, band: 1..2 Hz }\n');
-    expect(saidOf(rig)).toEqual(['not-computed: "strain-{01..64}"']);
+    expect(saidOf(rig)).toEqual([]);
+    expect(rig.readings.map(({ channel }) => channel.count)).toEqual([64]);
   });
 
   it('tells two slips of one kind apart', () => {

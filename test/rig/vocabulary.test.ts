@@ -27,10 +27,7 @@ const KEYS: Readonly<Record<ContextName, string>> = {
   acceptance: 'finding on about reason by until',
 };
 
-const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {
-  rig: 'accept',
-  acceptance: KEYS.acceptance,
-};
+const NOT_COMPUTED: Readonly<Partial<Record<ContextName, string>>> = {};
 
 /** What the examples of the table name. */
 const NAMED = `clocks:

@@ -45,6 +45,11 @@ const PIECES = [
   '\u0000',
   '{ a: 1 }\n',
   '\\',
+  '{1..3}',
+  '  s-{2..5}: { rate: 1 kHz, band: 1 Hz .. 450 Hz }\n',
+  'accept: [{ finding: fold-in-band, reason: known }]\n',
+  '  - { finding: band-droop, on: "s-*", reason: known, until: 2026-11-30 }\n',
+  'until: 2026-12-01',
 ];
 
 /** One random edit, free of the text that it will be made on. */

@@ -1,14 +1,15 @@
 import type { Evaluation } from '../../server/src/workbench/evaluation.ts';
 import { locatedFindings } from '../../server/src/workbench/findings.ts';
 import { Workbench } from '../../server/src/workbench/workbench.ts';
+import { TODAY } from '../tools/today.ts';
 
 const URI = 'file:///test.rig.yaml';
 
 /** A workbench that fails the test when a check fails. */
-export function strictWorkbench(): Workbench {
+export function strictWorkbench(today: () => string = () => TODAY): Workbench {
   return new Workbench((message) => {
     throw new Error(message);
-  });
+  }, today);
 }
 
 /** A text evaluated from nothing. */

@@ -4,53 +4,11 @@ import { generatedRig } from '../bench/rigs.ts';
 import { editsOf, step } from '../tools/random-edits.ts';
 import { runs } from '../tools/runs.ts';
 import { EXTRACT_FAN, SAMPLES } from '../tools/samples.ts';
+import { TODAY } from '../tools/today.ts';
 import { describeFindings, evaluated, strictWorkbench } from './describe-findings.ts';
+import { ACCEPTED, RANGES, SPECTRA, TIMED } from './edited-rigs.ts';
 
 const URI = 'file:///edited.rig.yaml';
-
-/** Whatever is folded over several channels because of time: a scan, a group, clocks that drift. */
-const TIMED = `rig: Timed
-clocks:
-  near: { frequency: 10 MHz, tolerance: 10 ppm }
-  far: { frequency: 10 MHz, tolerance: 10 ppm }
-digitizers:
-  scanner: { clock: near, sampling: scanned, settling: 20 us, max-rate: 25 kHz, bits: 16, full-scale: ±10 V }
-  box: { clock: far, bits: 16, full-scale: ±10 V }
-filters:
-  one: { response: rc, order: 1, corner: 1 kHz }
-  other: { response: rc, order: 1, corner: 1.1 kHz }
-groups:
-  tower: { within: 0.1 deg, up-to: 100 Hz }
-run: { duration: 8 h }
-defaults: { rate: 10 kHz, band: 1 Hz .. 100 Hz, group: tower, filter: one }
-channels:
-  base: { digitizer: scanner }
-  middle:
-    digitizer: scanner
-    filter: other
-  top:
-    digitizer: box
-    rate: 20 kHz
-`;
-
-/** Spectra and a run with something wrong in each. */
-const SPECTRA = `rig: Spectra
-run: { duration: 2 s, disk: 10 kB, link: 1 kB/s }
-digitizers: { d: { bits: 24, full-scale: ±10 V } }
-sources:
-  tone: { frequency: 500 Hz, level: 5 V, harmonics: 2, wanted: true }
-  hum: { frequency: 2056 Hz, level: 1 V }
-  shaft: { order: 1, speed: 600..3000 rpm, harmonics: 3, level: 1 mV, wanted: true }
-defaults: { digitizer: d, rate: 2560 Hz, band: 0 Hz .. 1 kHz, spectrum: { lines: 100, averages: 99 } }
-channels:
-  a: { resolve: 1 mV }
-  b:
-    spectrum:
-      record: 250 ms
-      window: rectangle
-      separate: 3 Hz
-  c: { then: [{ decimate: 2 }], spectrum: { resolution: 10 Hz, overlap: 50 %, averages: 40 } }
-`;
 const TEXTS = [
   ...SAMPLES.map(({ text }) => text),
   EXTRACT_FAN,
@@ -58,6 +16,8 @@ const TEXTS = [
   SPECTRA,
   generatedRig(3, 'flow'),
   generatedRig(3, 'json'),
+  RANGES,
+  ACCEPTED,
 ];
 const EDITS_A_RUN = 20;
 
@@ -147,7 +107,10 @@ describe('after edits', () => {
   it('a check that fails is reported once and costs only itself', async () => {
     const messages: string[] = [];
     const { Workbench } = await import('../../server/src/workbench/workbench.ts');
-    const workbench = new Workbench((message) => messages.push(message));
+    const workbench = new Workbench(
+      (message) => messages.push(message),
+      () => TODAY,
+    );
     workbench.setFile(URI, { text: EXTRACT_FAN });
     const evaluation = workbench.evaluation(URI)!;
     const [finding] = [...evaluation.channels[0]!.result.findings];

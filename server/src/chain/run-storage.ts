@@ -35,14 +35,15 @@ export function triggeredRecords({ records, recordS }: Run): TriggeredRecords | 
   return records && recordS && { records: records.value, recordS: recordS.value };
 }
 
-/** The bytes of all channels together, samples at the rate of each one's last stage. */
+/** The bytes of all channels together, each of a brace range counted, samples at the rate of each one's last stage. */
 export function runStorage(run: Run, channels: readonly { readonly result: StoredChannel }[]): RunStorage {
   const streams: StoredStream[] = [];
   let channelsLeftOut = 0;
   for (const { result } of channels) {
     const stream = streamOf(result, run);
-    if (stream) streams.push(stream);
-    else channelsLeftOut++;
+    const { count } = result.channel;
+    if (stream) for (let each = 0; each < count; each++) streams.push(stream);
+    else channelsLeftOut += count;
   }
   const triggered = triggeredRecords(run);
   const bytes = triggered

@@ -1,4 +1,5 @@
 import type { Chain } from '../chain/model.ts';
+import type { Acceptance } from '../rig/acceptance.ts';
 import type { Channel } from '../rig/model.ts';
 import type { Finding } from './finding.ts';
 
@@ -11,4 +12,6 @@ export interface ChannelResult {
   readonly chain: Chain | undefined;
   /** By severity, then position. */
   readonly findings: readonly Finding[];
+  /** The items of `accept` that are about any of them, where there are any. */
+  readonly acceptances?: readonly Acceptance[];
 }

@@ -1,3 +1,4 @@
+import type { Acceptance } from '../rig/acceptance.ts';
 import type { Place } from '../rig/place.ts';
 import type { Cure } from '../rig/problem.ts';
 
@@ -32,6 +33,10 @@ export interface Finding {
   /** How far past its limit it is, in whatever unit the check measures: a proof compares it before and after. */
   readonly excess: number;
   readonly cure?: Cure;
+  /** True where an item of `accept` is about it and counts: it stays a finding, and fails nothing. */
+  readonly accepted?: true;
+  /** The item by which it is accepted. */
+  readonly acceptance?: Acceptance;
 }
 
 /** The finding's identity within its file, as one string. */

@@ -7,7 +7,7 @@ import type { PlacedProblem } from '../rig/placed-problem.ts';
 import { rigProblems } from '../rig/rig-problems.ts';
 import { unusedNames } from '../rig/unused-names.ts';
 import type { ChannelResult, Guard } from './channel-result.ts';
-import type { ChannelSummary, ChannelView, Check, RigView, SaidOfRig } from './check.ts';
+import type { ChannelSummary, ChannelView, Check, CheckPage, RigView, SaidOfRig } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
 import { saidOfProblem, saidOfThing } from './document/problems.ts';
@@ -27,7 +27,7 @@ export function judgeChannel(reading: ChannelReading, severities: Severities, gu
   const findings: Finding[] = [];
   for (const problem of problems) {
     const said = saidOfProblem(problem);
-    addFinding(findings, said.check, 'error', said, channel.name, severities);
+    addFinding(findings, said.check, 'error', said, channel, severities);
   }
   const chain = judgeInto(findings, channel, severities, guard);
   return { channel, chain, findings: inOrder(toldApart(findings)) };
@@ -110,8 +110,13 @@ export function* judgingRig(
   const { severities } = environment;
   const rig: RigView = { environment, channels };
   const findings: Finding[] = [];
+  const ranges = channelRanges(channels);
   const add = (check: string, severity: Severity, said: readonly SaidOfRig[]): void => {
-    for (const one of said) addFinding(findings, check, severity, one, one.channel, severities);
+    for (const one of said) {
+      const { channel: name } = one;
+      const channel = name === undefined ? undefined : { name, count: ranges.get(name) ?? 1 };
+      addFinding(findings, check, severity, one, channel, severities);
+    }
   };
   const addProblem = (problem: PlacedProblem): void => add(problem.problem.name, 'error', [saidOfThing(problem)]);
   guard('document', () => rigProblems(environment, channels), SAYS_NOTHING).forEach(addProblem);
@@ -146,13 +151,13 @@ function runCheck(
   guard: Guard,
 ): void {
   const said = guard(name, () => run(view), SAYS_NOTHING);
-  for (const one of said) addFinding(findings, name, severity, one, view.channel.name, severities);
+  for (const one of said) addFinding(findings, name, severity, one, view.channel, severities);
 }
 
 /** What of a filter is out of range only at the rate that the channel gives it. */
 function runDigitalEdges(findings: Finding[], view: ChannelView, severities: Severities, guard: Guard): void {
   for (const one of guard('out-of-range', () => digitalEdges(view), SAYS_NOTHING)) {
-    addFinding(findings, 'out-of-range', 'error', one, view.channel.name, severities);
+    addFinding(findings, 'out-of-range', 'error', one, view.channel, severities);
   }
 }
 
@@ -161,29 +166,54 @@ function addFinding(
   check: string,
   usual: Severity,
   said: SaidOfRig,
-  channel: string | undefined,
+  channel: Pick<Channel, 'name' | 'count'> | undefined,
   severities: Severities,
 ): void {
-  const severity = severities.get(check) ?? said.severity ?? usual;
-  if (severity === 'off') return;
-  findings.push({
-    check,
+  const finding = findingOf({ name: check, severity: usual }, said, severities, channel);
+  if (finding) findings.push(finding);
+}
+
+/** What a check says as a finding; `undefined` where the check is turned off. */
+export function findingOf(
+  { name, severity: usual }: Pick<CheckPage, 'name' | 'severity'>,
+  said: SaidOfRig,
+  severities: Severities,
+  channel?: Pick<Channel, 'name' | 'count'>,
+): Finding | undefined {
+  const severity = severities.get(name) ?? said.severity ?? usual;
+  if (severity === 'off') return undefined;
+  return {
+    check: name,
     severity,
-    channel,
+    channel: channel?.name,
     thing: said.thing,
     about: said.about,
     stage: said.stage,
-    message: said.message,
+    message: channel && channel.count > 1 ? countedMessage(said.message, channel.count) : said.message,
     place: said.place,
     related: said.related ?? [],
     figures: said.figures ?? {},
     excess: said.excess ?? 1,
     ...(said.cure ? { cure: said.cure } : {}),
-  });
+  };
+}
+
+/** How many channels each entry with a brace range stands for, by its name. */
+function channelRanges(channels: readonly ChannelSummary[]): ReadonlyMap<string, number> {
+  const ranges = new Map<string, number>();
+  for (const { result } of channels)
+    if (result.channel.count > 1) ranges.set(result.channel.name, result.channel.count);
+  return ranges;
+}
+
+/** What is said once of the channels of a brace range tells of how many, ahead of its full stop. */
+function countedMessage(message: string, count: number): string {
+  const end = message.endsWith('.') ? message.length - 1 : message.length;
+  return `${message.slice(0, end)} (${count} channels)${message.slice(end)}`;
 }
 
 /** Gives findings that would have the same identity a number each. */
-function toldApart(findings: readonly Finding[]): Finding[] {
+export function toldApart(findings: readonly Finding[]): Finding[] {
   const seen = new Map<string, number>();
   return findings.map((finding) => {
     const identity = identityOf(finding);

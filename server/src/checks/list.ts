@@ -1,3 +1,5 @@
+import { acceptanceExpired } from './acceptance-expired.ts';
+import { acceptanceIdle } from './acceptance-idle.ts';
 import { bandDroop } from './band-droop.ts';
 import { bandOverNyquist } from './band-over-nyquist.ts';
 import { bandpassStraddles } from './bandpass-straddles.ts';
@@ -96,7 +98,13 @@ export const RIG_CHECKS: readonly Check<'rig'>[] = [
 export const RIG_FOLDS: readonly RigFold[] = [...RIG_CHECKS, scannedRates];
 
 /** Every check, as its reference page shows it. */
-export const ALL_CHECKS: readonly CheckPage[] = [...RIG_CHECKS, ...CHANNEL_CHECKS, ...DOCUMENT_PAGES];
+export const ALL_CHECKS: readonly CheckPage[] = [
+  ...RIG_CHECKS,
+  ...CHANNEL_CHECKS,
+  ...DOCUMENT_PAGES,
+  acceptanceExpired,
+  acceptanceIdle,
+];
 
 /** What may stand in `checks`. */
 export const CHECK_NAMES: readonly string[] = ALL_CHECKS.map(({ name }) => name);

@@ -76,7 +76,7 @@ function membersOf(channels: readonly ChannelSummary[]): ReadonlyMap<Digitizer, 
 /** The rate that most channels have, or the first of equals, is the one that the others have to have. */
 function notTheSame(digitizer: Digitizer, members: readonly Member[]): readonly SaidOfRig[] {
   const counts = new Map<number, number>();
-  for (const { rateHz } of members) counts.set(rateHz, (counts.get(rateHz) ?? 0) + 1);
+  for (const { rateHz, channel } of members) counts.set(rateHz, (counts.get(rateHz) ?? 0) + channel.count);
   const most = Math.max(...counts.values());
   const reference = members.find(({ rateHz }) => counts.get(rateHz) === most)!;
   return members

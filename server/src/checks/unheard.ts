@@ -11,10 +11,10 @@ import { levelUnplaced } from './level-unplaced.ts';
 export function unheardSources({ environment, channels }: RigView): readonly SaidOfRig[] {
   const counts = new Map<Source, number>();
   for (const { result } of channels) {
-    const { unheard, sensor, sensorPlace } = result.channel;
+    const { unheard, sensor, sensorPlace, count } = result.channel;
     // What a sensor measures that is named and not known, nobody can say.
     if (sensorPlace && !sensor) continue;
-    for (const source of unheard) counts.set(source, (counts.get(source) ?? 0) + 1);
+    for (const source of unheard) counts.set(source, (counts.get(source) ?? 0) + count);
   }
   const { joined } = environment.core;
   return [...counts].map(([source, count]) => {

@@ -6,7 +6,7 @@ import type { FileReport, PlaceElsewhere, ReportedFinding } from '../report/find
 import { findingsJson, summaryOf, totalsOf } from '../report/findings-json.ts';
 import { findingsText, summaryText } from '../report/findings-text.ts';
 import { pathOf } from '../server-used-files.ts';
-import { located, locatedFindings } from '../workbench/findings.ts';
+import { countChannels, located, locatedFindings } from '../workbench/findings.ts';
 import { runTotals } from '../workbench/run-totals.ts';
 import type { Workbench } from '../workbench/workbench.ts';
 import type { Command } from './command.ts';
@@ -85,8 +85,7 @@ async function runCheck(argv: readonly string[], io: CommandIo): Promise<ExitCod
   }
   progress.clear();
 
-  if (reports.some(({ findings }) => findings.some(({ finding }) => fails(finding.severity, from))))
-    exit = graver(exit, 1);
+  if (reports.some(({ findings }) => findings.some(({ finding }) => fails(finding, from)))) exit = graver(exit, 1);
   if (format === 'json') return graver(exit, deliver(findingsJson(reports), options, io));
   const text = reports.map((report) => findingsText(report, paint)).join('');
   const summary = options.flag('quiet')
@@ -111,7 +110,7 @@ function reportOf(
     });
   return {
     path: rig.path,
-    channels: rig.evaluation.channels.length,
+    channels: countChannels(rig.evaluation),
     findings,
     totals: runTotals(rig.evaluation),
   };

@@ -139,7 +139,7 @@ function writeFixed(path: string, text: string, io: CommandIo): ExitCode {
 
 function leftOver(workbench: ReturnType<typeof newWorkbench>, uri: string, from: FailOn): ExitCode {
   const evaluation = workbench.evaluation(uri);
-  const left = evaluation && [...allFindings(evaluation)].some((finding) => fails(finding.severity, from));
+  const left = evaluation && [...allFindings(evaluation)].some((finding) => fails(finding, from));
   return left ? 1 : 0;
 }
 

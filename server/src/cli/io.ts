@@ -2,6 +2,8 @@
 export interface CommandIo {
   readonly cwd: string;
   readonly environment: Readonly<Record<string, string | undefined>>;
+  /** Which day it is, as `2026-12-01`. */
+  readonly today: string;
   readonly stdoutIsTerminal: boolean;
   readonly stderrIsTerminal: boolean;
   /** Everything on standard input, as bytes; of what is larger than any rig file, so much that it shows. */

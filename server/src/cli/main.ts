@@ -1,3 +1,4 @@
+import { today } from '../server-today.ts';
 import { readStdin } from './read-stdin.ts';
 import { run } from './run.ts';
 
@@ -18,6 +19,7 @@ void run(
   {
     cwd: process.cwd(),
     environment: process.env,
+    today: today(),
     stdoutIsTerminal: process.stdout.isTTY === true,
     stderrIsTerminal: process.stderr.isTTY === true,
     readStdin,

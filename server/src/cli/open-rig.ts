@@ -21,7 +21,10 @@ export type OpenedRig =
 
 /** A workbench whose own faults go to standard error. */
 export function newWorkbench(io: CommandIo): Workbench {
-  return new Workbench((message) => io.stderr(`ratewright: ${message}\n`));
+  return new Workbench(
+    (message) => io.stderr(`ratewright: ${message}\n`),
+    () => io.today,
+  );
 }
 
 const OUTSIDE = 'is not read, because it lies outside the folder here and those that are given';

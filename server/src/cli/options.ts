@@ -1,5 +1,5 @@
 import { type ParseArgsConfig, parseArgs } from 'node:util';
-import type { Severity } from '../checks/finding.ts';
+import type { Finding, Severity } from '../checks/finding.ts';
 import { SEVERITIES } from '../checks/finding.ts';
 import type { Paint } from '../report/paint.ts';
 import { COLOURED, PLAIN } from '../report/paint.ts';
@@ -76,9 +76,9 @@ export function failOn(options: ParsedOptions): FailOn {
   return choice<FailOn>(options, 'fail-on', [...SEVERITIES, 'none'], 'error');
 }
 
-/** Whether a severity is at or above the one that fails the run. */
-export function fails(severity: Severity, from: FailOn): boolean {
-  return from !== 'none' && SEVERITIES.indexOf(severity) <= SEVERITIES.indexOf(from);
+/** Whether a finding is at or above the severity that fails the run; one that is accepted fails none. */
+export function fails({ severity, accepted }: Finding, from: FailOn): boolean {
+  return !accepted && from !== 'none' && SEVERITIES.indexOf(severity) <= SEVERITIES.indexOf(from);
 }
 
 /** Colours where they are wanted: `--color`, then `NO_COLOR`, then whether results go to a terminal. */

@@ -1,5 +1,7 @@
 import type { Diagnostic } from 'vscode-languageserver-types';
 import { DiagnosticSeverity, DiagnosticTag } from 'vscode-languageserver-types';
+import { acceptanceWords } from '../checks/acceptance-words.ts';
+import type { Finding } from '../checks/finding.ts';
 import { MOST_FINDINGS_SENT } from '../rig/limits.ts';
 import type { Evaluation } from '../workbench/evaluation.ts';
 import type { LocatedFinding } from '../workbench/findings.ts';
@@ -38,17 +40,24 @@ function diagnosticOf(
     const found = located(evaluation, place);
     return found ? [{ location: { uri: found.uri ?? uri, range: found.range }, message }] : [];
   });
-  const unused = finding.check === 'unused-name';
+  const unused = finding.check === UNUSED && !finding.accepted;
   const href = links.check(finding.check);
   return {
     range,
-    // Greyed out where it stands; somebody who made it graver wants it in the list.
-    severity: unused && finding.severity === 'hint' ? DiagnosticSeverity.Hint : protocolSeverity(finding.severity),
+    severity: shownSeverity(finding),
     source: 'ratewright',
     code: finding.check,
     ...(href === undefined ? {} : { codeDescription: { href } }),
-    message: finding.message,
+    message: finding.acceptance ? `${finding.message}\n${acceptanceWords(finding.acceptance)}` : finding.message,
     ...(unused ? { tags: [DiagnosticTag.Unnecessary] } : {}),
     ...(related.length === 0 ? {} : { relatedInformation: related }),
   };
+}
+
+const UNUSED = 'unused-name';
+
+/** What is accepted is shown faintly where it stands, and so is a name nobody uses, unless somebody made it graver. */
+function shownSeverity({ check, severity, accepted }: Finding): DiagnosticSeverity {
+  if (accepted || (check === UNUSED && severity === 'hint')) return DiagnosticSeverity.Hint;
+  return protocolSeverity(severity);
 }

@@ -8,20 +8,21 @@ import { runTotals, totalsText } from '../workbench/run-totals.ts';
 import { protocolRange } from './convert.ts';
 
 /**
- * The outline: the top-level keys, the named things below their sections, and each channel with its rate. What a run
- * makes of data stands with the first of them.
+ * The outline: the top-level keys, the named things below their sections, and each channel with its rate, a brace range
+ * with its count too. What a run makes of data stands with the first of them.
  */
 export function outlineOf(evaluation: Evaluation): DocumentSymbol[] {
   const { snapshot } = evaluation;
-  const rates = new Map<Entry, string>();
+  const details = new Map<Entry, string>();
   for (const { result } of evaluation.channels) {
-    const rate = result.channel.rateHz;
-    if (rate) rates.set(result.channel.place.entry, formatHz(rate.value));
+    const { rateHz, count, place } = result.channel;
+    const words = [...(rateHz ? [formatHz(rateHz.value)] : []), ...(count > 1 ? [`${count} channels`] : [])];
+    if (words.length > 0) details.set(place.entry, words.join(' · '));
   }
   const top: DocumentSymbol[] = [];
   for (const entry of snapshot.entries) {
     if (!entry.key) continue;
-    const symbol = symbolOf(entry, snapshot, rates.get(entry));
+    const symbol = symbolOf(entry, snapshot, details.get(entry));
     // A section's own line stands ahead of its entries.
     const section = entry.section === undefined ? undefined : top.at(-1);
     if (section) {

@@ -32,7 +32,10 @@ export function thingsOf({ environment, channels }: Evaluation, kind: ThingKind)
     case 'source':
       return [...environment.sources.values()].map((source) => ({ name: source.name, detail: sourceWords(source) }));
     case 'channel':
-      return channels.map(({ result }) => ({ name: result.channel.name, detail: 'channel' }));
+      return channels.map(({ result: { channel } }) => ({
+        name: channel.name,
+        detail: channel.count > 1 ? `${channel.count} channels` : 'channel',
+      }));
     case 'group':
       return [...environment.groups.values()].map((group) => ({ name: group.name, detail: groupWords(group) }));
   }

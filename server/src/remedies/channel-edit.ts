@@ -1,3 +1,4 @@
+import type { ChannelResult } from '../checks/channel-result.ts';
 import type { Channel, Given } from '../rig/model.ts';
 import type { Proposal } from './definition.ts';
 import { replaceScalar, setEntryKey } from './edit-text.ts';
@@ -42,9 +43,13 @@ function sharedValue(
   const { snapshot, results } = search.context;
   const edit = replaceScalar(snapshot, given.place, value);
   if (!edit) return undefined;
-  let channels = 0;
-  for (const { channel } of results) if (isSamePlace(of(channel), given)) channels++;
-  return channels > 1 ? { edits: [edit], channels } : undefined;
+  const users = results.filter(({ channel }) => isSamePlace(of(channel), given));
+  return users.length > 1 ? { edits: [edit], channels: channelsOf(users) } : undefined;
+}
+
+/** How many channels these are, each of a brace range counted. */
+export function channelsOf(results: readonly ChannelResult[]): number {
+  return results.reduce((sum, { channel }) => sum + channel.count, 0);
 }
 
 function isSamePlace(a: Given<unknown> | undefined, b: Given<unknown>): boolean {

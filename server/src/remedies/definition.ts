@@ -16,6 +16,8 @@ export interface RemedyPage {
 
 /** One remedy, as its file exports it: documentation and the search. */
 export interface RemedyDefinition extends RemedyPage {
+  /** What its titles begin with, where that is not what those of its kind do. */
+  readonly titleBegins?: string;
   /** What may be offered, best first; chosen so that the channel alone would be rid of the finding, not yet proved. */
   readonly search: (search: Search) => readonly Proposal[];
 }

@@ -37,7 +37,7 @@ interface Chosen {
 }
 
 /**
- * Applies to every finding that has one its first remedy of the kinds allowed, so long as any applies. What comes out
+ * Applies to every finding that has one, and is not accepted, its first remedy of the kinds allowed, so long as any applies. What comes out
  * has fewer findings, and none that was not there before.
  *
  * @param kinds claims are never applied, whether or not they are among them
@@ -85,6 +85,7 @@ function chooseAll(
   const chosen: Chosen[] = [];
   const taken = new TakenSpans();
   const choose = (finding: Finding, result: ChannelResult | undefined): void => {
+    if (finding.accepted) return;
     const { snapshot, environment } = document;
     const context: RemedyContext = {
       finding,

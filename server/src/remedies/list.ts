@@ -1,5 +1,6 @@
 import type { Finding } from '../checks/finding.ts';
 import { MOST_CANDIDATES_PROVED } from '../rig/limits.ts';
+import { accept } from './accept.ts';
 import { addFilter } from './add-filter.ts';
 import { addMissingKey } from './add-missing-key.ts';
 import { anotherWindow } from './another-window.ts';
@@ -41,6 +42,7 @@ const DEFINITIONS: readonly RemedyDefinition[] = [
   narrowBand,
   stateLevel,
   stateUndeclared,
+  accept,
 ];
 
 /** The reference pages of all remedies. */
@@ -108,9 +110,9 @@ export interface OfferedCandidate extends Candidate {
   readonly reachesOthers: boolean;
 }
 
-function* candidatesOf({ name, kind }: RemedyPage, proposal: Proposal): Generator<OfferedCandidate> {
+function* candidatesOf({ name, kind, titleBegins }: RemedyDefinition, proposal: Proposal): Generator<OfferedCandidate> {
   const { does, outcome, edits, fillIn, shared } = proposal;
-  const begins = TITLE_BEGINS[kind];
+  const begins = titleBegins ?? TITLE_BEGINS[kind];
   const ends = outcome === '' ? '' : `: ${outcome}`;
   const base = { name, kind } as const;
   yield {

@@ -1,8 +1,8 @@
 import type { Entry, NamedSection } from '../rig/entry.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 import { columnOf, isFlowEntry, lineEndAfter, setKey, significantEnd, styleAt } from './edit-text.ts';
-import type { NewValue } from './written-value.ts';
-import { pairText } from './written-value.ts';
+import type { NewValue, TextStyle } from './written-value.ts';
+import { pairText, valueText } from './written-value.ts';
 
 /**
  * A name that no entry of the section has: the wanted one, or that with a number after it.
@@ -79,13 +79,32 @@ function withNewSection(
   value: NewValue,
 ): readonly TextEdit[] | undefined {
   if (snapshot.style === 'flow') return firstInFlow(snapshot, section, new Map([[name, value]]));
+  return atTheEnd(snapshot, (lineEnd) => {
+    const pair = pairText(name, value, { json: false, flow: false, lineEnd });
+    return `${section}:${lineEnd}  ${pair}`;
+  });
+}
+
+/** Writes a top-level key whose value is a list of one item, after all others. */
+export function lastList(snapshot: Snapshot, key: string, item: NewValue): readonly TextEdit[] | undefined {
+  if (snapshot.style === 'flow') return firstInFlow(snapshot, key, [item]);
+  return atTheEnd(snapshot, (lineEnd) => {
+    return `${key}:${lineEnd}  - ${valueText(item, { json: false, flow: false, lineEnd })}`;
+  });
+}
+
+/** Writes a top-level key after all others, with a blank line ahead of it. */
+function atTheEnd(
+  snapshot: Snapshot,
+  bodyOf: (lineEnd: TextStyle['lineEnd']) => string,
+): readonly TextEdit[] | undefined {
   const last = snapshot.entries.at(-1);
   if (!last) return undefined;
   const { lineEnd } = styleAt(snapshot, last, 0);
   const tail = snapshot.sliceText(Math.max(0, snapshot.length - 4), snapshot.length);
   const endsLine = tail.endsWith('\n');
   const blank = endsLine && /\n\r?\n$/.test(tail) ? '' : lineEnd;
-  const body = `${section}:${lineEnd}  ${pairText(name, value, { json: false, flow: false, lineEnd })}`;
+  const body = bodyOf(lineEnd);
   return [
     {
       start: snapshot.length,

@@ -1,7 +1,9 @@
+import type { ChannelResult } from '../checks/channel-result.ts';
 import { formatHz } from '../quantity/write.ts';
 import type { Channel, Filter } from '../rig/model.ts';
 import type { TextEdit } from '../rig/snapshot.ts';
 import type { Edited } from './channel-edit.ts';
+import { channelsOf } from './channel-edit.ts';
 import type { Proposal, RemedyDefinition } from './definition.ts';
 import { outcomeOf } from './describe.ts';
 import { replaceScalar, setEntryKey } from './edit-text.ts';
@@ -92,23 +94,20 @@ function filterEdits(
   const users = usersOf(search, filter);
   const isOwn = search.context.snapshot.startOf(filter.place.entry) !== undefined;
   const inFilter = isOwn ? editsInFilter(search, filter, response, design) : undefined;
-  if (users <= 1 && isOwn) return inFilter && { edits: inFilter };
+  if (users.length <= 1 && isOwn) return inFilter && { edits: inFilter };
   const edits = newFilter(search, channel, index, filter, response, design);
   if (!edits) return undefined;
-  return inFilter ? { edits, shared: { edits: inFilter, channels: users } } : { edits };
+  return inFilter ? { edits, shared: { edits: inFilter, channels: channelsOf(users) } } : { edits };
 }
 
-function usersOf({ context }: Search, filter: Filter): number {
-  let users = 0;
-  for (const { channel } of context.results) {
-    const isUsed =
+function usersOf({ context }: Search, filter: Filter): readonly ChannelResult[] {
+  return context.results.filter(
+    ({ channel }) =>
       channel.filters.some((use) => use.filter === filter) ||
       channel.digitizer?.filters.some((use) => use.filter === filter) ||
       channel.digitizer?.decimationFilter?.filter === filter ||
-      channel.steps.some((step) => step.filters.some((use) => use.filter === filter));
-    if (isUsed) users++;
-  }
-  return users;
+      channel.steps.some((step) => step.filters.some((use) => use.filter === filter)),
+  );
 }
 
 function editsInFilter(

@@ -1,6 +1,7 @@
 import type { Channel, FilterUse, Given, Step } from '../rig/model.ts';
 import type { TreeNode } from '../rig/tree.ts';
 import type { Edited } from './channel-edit.ts';
+import { channelsOf } from './channel-edit.ts';
 import { setEntryKey, setKey } from './edit-text.ts';
 import type { Search } from './search.ts';
 import type { NewValue } from './written-value.ts';
@@ -58,12 +59,11 @@ function sharedStep(search: Search, { index, step }: PlacedStep, key: string, va
   const node = nodeAt(entry.value, start);
   const edits = node && setKey(snapshot, entry, node, key, value);
   if (!edits) return undefined;
-  let channels = 0;
-  for (const { channel } of results) {
+  const users = results.filter(({ channel }) => {
     const place = channel.steps[index]?.place;
-    if (place?.entry === entry && place.start === start) channels++;
-  }
-  return channels > 1 ? { edits, channels } : undefined;
+    return place?.entry === entry && place.start === start;
+  });
+  return users.length > 1 ? { edits, channels: channelsOf(users) } : undefined;
 }
 
 function textAt({ entry, start, end }: Given<unknown>['place']): string {

@@ -19,16 +19,23 @@ export function explainedNames(): readonly string[] {
   ];
 }
 
-/** The explanation of a check, a remedy, a practice or a key, as Markdown that reads well in a terminal. */
+/** The explanation of a check, a practice, a remedy or a key, of both where one name is both, as Markdown that reads well in a terminal. */
 export function explanationOf(name: string): string | undefined {
   const check = ALL_CHECKS.find((one) => one.name === name);
   if (check) return checkPage(check, REMEDIES);
-  const remedy = REMEDIES.find((one) => one.name === name);
-  if (remedy) {
-    return `# ${remedy.name}\n\n*${remedy.kind}* · ${remedy.finds}\n\n${remedy.why}\n\nAnswers ${remedy.answers.join(', ')}.\n`;
-  }
   const practice = practiceNamed(name);
   if (practice) return practicePage(practice);
+  const pages = [remedyPage(name), keyPage(name)].filter((page) => page !== undefined);
+  return pages.length === 0 ? undefined : pages.join('\n');
+}
+
+function remedyPage(name: string): string | undefined {
+  const remedy = REMEDIES.find((one) => one.name === name);
+  if (!remedy) return undefined;
+  return `# ${remedy.name}\n\n*${remedy.kind}* · ${remedy.finds}\n\n${remedy.why}\n\nAnswers ${remedy.answers.join(', ')}.\n`;
+}
+
+function keyPage(name: string): string | undefined {
   const places = CONTEXTS.flatMap((context) =>
     keysOf(context.name)
       .filter(({ key }) => key === name)

@@ -1,5 +1,6 @@
 import type { Finding, Severity } from '../checks/finding.ts';
 import type { Remedy } from '../remedies/remedy.ts';
+import type { Acceptance } from '../rig/acceptance.ts';
 import type { PositionRange } from '../rig/place.ts';
 import type { RunStorage } from '../workbench/run-totals.ts';
 import { reported } from './number.ts';
@@ -41,16 +42,17 @@ export interface Summary {
   readonly bytes?: number;
 }
 
-/** Counts and sums over all files. */
+/** Counts and sums over all files; what is accepted is counted apart from the rest. */
 export function summaryOf(files: readonly FileReport[]): Summary {
   const totals = totalsOf(files);
-  const count = (severity: Severity): number =>
-    files.reduce((sum, file) => sum + file.findings.filter(({ finding }) => finding.severity === severity).length, 0);
+  const count = (isCounted: (finding: Finding) => boolean): number =>
+    files.reduce((sum, file) => sum + file.findings.filter(({ finding }) => isCounted(finding)).length, 0);
+  const open = (severity: Severity): number => count((finding) => !finding.accepted && finding.severity === severity);
   return {
-    error: count('error'),
-    warning: count('warning'),
-    hint: count('hint'),
-    accepted: 0,
+    error: open('error'),
+    warning: open('warning'),
+    hint: open('hint'),
+    accepted: count(({ accepted }) => accepted === true),
     channels: files.reduce((sum, file) => sum + file.channels, 0),
     ...(totals ? { bytesPerSecond: reported(totals.bytesPerSecond) } : {}),
     ...(totals?.bytes === undefined ? {} : { bytes: reported(totals.bytes) }),
@@ -94,7 +96,8 @@ function findingJson({ finding, range, elsewhere, remedies }: ReportedFinding): 
     message: finding.message,
     range,
     ...(elsewhere === undefined ? {} : { elsewhere }),
-    accepted: false,
+    accepted: finding.accepted === true,
+    ...(finding.acceptance ? { acceptance: acceptanceJson(finding.acceptance) } : {}),
     figures: Object.fromEntries(
       Object.entries(finding.figures).map(([name, value]) => [
         name,
@@ -105,4 +108,8 @@ function findingJson({ finding, range, elsewhere, remedies }: ReportedFinding): 
       ? {}
       : { remedies: remedies.map(({ name, kind, title, preferred }) => ({ name, kind, title, preferred })) }),
   };
+}
+
+function acceptanceJson({ reason, by, until }: Acceptance): object {
+  return { reason, ...(by === undefined ? {} : { by }), ...(until === undefined ? {} : { until: until.day }) };
 }

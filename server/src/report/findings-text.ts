@@ -1,3 +1,4 @@
+import { acceptanceWords } from '../checks/acceptance-words.ts';
 import type { PositionRange } from '../rig/place.ts';
 import { type RunStorage, totalsText } from '../workbench/run-totals.ts';
 import type { FileReport, ReportedFinding, Summary } from './findings-json.ts';
@@ -6,8 +7,8 @@ import { printable } from './printable.ts';
 
 /**
  * The findings of one file as text: place, severity and check on a line, then what will happen to the data, then the
- * places in other files that matter, then the remedies where they were asked for, the preferred one with a star. Lines
- * and characters count from 1 here, as editors show them.
+ * places in other files that matter, then the remedies where they were asked for, the preferred one with a star. What
+ * is accepted says so, by whom and why. Lines and characters count from 1 here, as editors show them.
  */
 export function findingsText(file: FileReport, paint: Paint): string {
   return file.findings.map((reported) => findingText(file.path, reported, paint)).join('');
@@ -18,11 +19,12 @@ function findingText(path: string, { finding, range, elsewhere, remedies }: Repo
   const subject = finding.channel ?? finding.thing;
   const head = [
     paint(place, 'strong'),
-    paint(finding.severity, finding.severity),
+    finding.accepted ? paint(`accepted ${finding.severity}`, 'quiet') : paint(finding.severity, finding.severity),
     finding.check,
     ...(subject === undefined || subject === '' ? [] : [paint(`(${printable(subject)})`, 'quiet')]),
   ].join('  ');
-  const lines = [head, ...wrapped(finding.message, 96).map((line) => `    ${line}`)];
+  const said = [finding.message, ...(finding.acceptance ? [acceptanceWords(finding.acceptance)] : [])];
+  const lines = [head, ...said.flatMap((text) => wrapped(text, 96)).map((line) => `    ${line}`)];
   for (const other of elsewhere ?? [])
     lines.push(`    ${placeText(other.path, other.range)}  ${printable(other.message)}`);
   for (const remedy of remedies ?? []) {
@@ -46,7 +48,7 @@ function placeText(path: string, { start }: PositionRange): string {
  */
 export function summaryText(
   files: number,
-  { error, warning, hint, channels }: Summary,
+  { error, warning, hint, accepted, channels }: Summary,
   paint: Paint,
   totals?: RunStorage,
 ): string {
@@ -54,7 +56,9 @@ export function summaryText(
     count === 0 ? `no ${one}s` : paint(counted(count, one), ink);
   const recorded = totals ? `Recorded: ${totalsText(totals)}.\n` : '';
   const checked = `${counted(channels, 'channel')} in ${counted(files, 'file')} checked`;
-  return `${checked}: ${part(error, 'error', 'error')}, ${part(warning, 'warning', 'warning')}, ${part(hint, 'hint', 'hint')}.\n${recorded}`;
+  const found = [part(error, 'error', 'error'), part(warning, 'warning', 'warning'), part(hint, 'hint', 'hint')];
+  if (accepted > 0) found.push(`${accepted} accepted`);
+  return `${checked}: ${found.join(', ')}.\n${recorded}`;
 }
 
 function counted(count: number, one: string): string {

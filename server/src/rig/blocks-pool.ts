@@ -1,6 +1,8 @@
 import type { BlockKind, SplitState } from './blocks.ts';
 import { type Block, type PlacedEntry, readBlock } from './blocks-read.ts';
 import type { Entry } from './entry.ts';
+import type { Problem } from './problem.ts';
+import { isSameTree } from './tree-comparison.ts';
 
 /** Blocks that have been read before: a text that is met again is not read again, and keeps its entries. */
 export class BlockPool {
@@ -64,11 +66,13 @@ function entryKey({ section, text }: Entry): string {
 /** Of one text two entries can differ only where a broken text around them is read differently. */
 function isAlike(a: Entry, b: Entry): boolean {
   return (
-    a.name === b.name &&
+    isSameTree(a.key, b.key) &&
+    isSameTree(a.value, b.value) &&
     a.problems.length === b.problems.length &&
-    a.anchors.length === b.anchors.length &&
-    a.value.kind === b.value.kind &&
-    a.value.start === b.value.start &&
-    a.value.end === b.value.end
+    a.problems.every((problem, index) => isSameProblem(problem, b.problems[index]!))
   );
+}
+
+function isSameProblem(a: Problem, b: Problem): boolean {
+  return a.name === b.name && a.start === b.start && a.end === b.end && a.message === b.message;
 }

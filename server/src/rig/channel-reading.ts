@@ -1,9 +1,10 @@
+import { reportChannelRange } from './channel-range.ts';
 import type { Core } from './core.ts';
 import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
 import type { Entry } from './entry.ts';
 import { yamlProblem } from './entry-problems.ts';
 import type { Environment } from './environment.ts';
-import { namePlace, noteNotComputed, readEntryFields } from './fields.ts';
+import { readEntryFields } from './fields.ts';
 import type { Channel } from './model.ts';
 import { addDefaults, channelOf, reportMissingChannelKeys } from './read-channel.ts';
 import { type Noted, notedBy, startReading } from './reader.ts';
@@ -30,15 +31,12 @@ interface ChannelDependencies extends Dependencies {
   holdsFor: Core;
 }
 
-const BRACE_RANGE = /\{\d+\.\.\d+\}/;
-
 /** Reads a channel. */
 export function readChannel(entry: Entry, environment: Environment): ChannelReading {
   const { core } = environment;
   const reader = startReading(entry, core.scope, environment.epochOf(entry));
   for (const problem of entry.problems) reader.own.push(yamlProblem(entry, problem));
-  if (entry.name.includes('{') && BRACE_RANGE.test(entry.name))
-    noteNotComputed(reader, 'a brace range in a name', namePlace(entry));
+  reportChannelRange(reader);
   const fields = readEntryFields(reader, 'channel');
   addDefaults(fields, core.defaults);
   reportMissingChannelKeys(reader, fields);

@@ -1,3 +1,4 @@
+import type { Acceptance } from './acceptance.ts';
 import { anchorTable, sameItems } from './anchors.ts';
 import { type Dependencies, dependenciesHold, dependenciesOf } from './dependencies.ts';
 import { type Entry, KIND_OF_SECTION, NAMED_SECTIONS } from './entry.ts';
@@ -56,6 +57,8 @@ export interface Core {
   readonly defaultsEntry: Entry | undefined;
   /** The fields of `defaults`; the same object as before where they are. */
   readonly defaults: ReadonlyMap<string, Field>;
+  /** In document order; the same object as before where they are. */
+  readonly acceptances: readonly Acceptance[];
   readonly severities: ReadonlyMap<string, SeverityChoice>;
   readonly rigName: Given<string> | undefined;
   readonly run: Run | undefined;
@@ -191,6 +194,7 @@ export function readCore(
     readings,
     defaultsEntry: topLevel.get('defaults'),
     defaults: withFollows(top.defaults ?? NO_DEFAULTS, top.follows),
+    acceptances: top.acceptances ?? NO_ACCEPTANCES,
     severities: top.severities ?? NO_SEVERITIES,
     rigName: top.rigName,
     run: top.run,
@@ -203,6 +207,7 @@ export function readCore(
 
 const USES = 'uses';
 const NO_DEFAULTS: ReadonlyMap<string, Field> = new Map();
+const NO_ACCEPTANCES: readonly Acceptance[] = [];
 const NO_SEVERITIES: ReadonlyMap<string, SeverityChoice> = new Map();
 
 function readEntry<T>(

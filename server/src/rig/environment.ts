@@ -1,7 +1,9 @@
+import type { Acceptance } from './acceptance.ts';
 import { sameItems } from './anchors.ts';
+import { ChannelNames } from './channel-names.ts';
 import { type Core, readCore } from './core.ts';
 import type { Entry } from './entry.ts';
-import { duplicateName, yamlProblem } from './entry-problems.ts';
+import { tooManyChannels, yamlProblem } from './entry-problems.ts';
 import { epochsOf } from './epochs.ts';
 import type { Clock, Digitizer, Filter, Given, Group, Run, Sensor, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
@@ -30,6 +32,7 @@ export interface Environment {
   readonly groups: ReadonlyMap<string, Group>;
   /** The top-level entry `defaults`. */
   readonly defaults: Entry | undefined;
+  readonly acceptances: readonly Acceptance[];
   readonly severities: ReadonlyMap<string, SeverityChoice>;
   readonly rigName: Given<string> | undefined;
   readonly run: Run | undefined;
@@ -79,6 +82,7 @@ export function readEnvironment(
     sources: things.source,
     groups: things.group,
     defaults: core.defaultsEntry,
+    acceptances: core.acceptances,
     severities: core.severities,
     rigName: core.rigName,
     run: core.run,
@@ -100,9 +104,8 @@ interface SortedEntries {
 
 function sortEntries(entries: readonly Entry[]): SortedEntries {
   const significant: Entry[] = [];
-  const channels: Entry[] = [];
   const problems: PlacedProblem[] = [];
-  const names = new Set<string>();
+  const channels = new ChannelNames();
   for (const entry of entries) {
     if (entry.section !== 'channels') {
       significant.push(entry);
@@ -113,15 +116,10 @@ function sortEntries(entries: readonly Entry[]): SortedEntries {
       for (const problem of entry.problems) problems.push(yamlProblem(entry, problem));
       continue;
     }
-    const known = names.size;
-    names.add(entry.name);
-    if (names.size > known) channels.push(entry);
-    else problems.push(...duplicateChannel(entry, channels));
+    // Of a channel that is not read its text is told all the same.
+    if (!channels.take(entry)) for (const problem of entry.problems) problems.push(yamlProblem(entry, problem));
   }
-  return { significant, channels, problems };
-}
-
-function duplicateChannel(entry: Entry, channels: readonly Entry[]): readonly PlacedProblem[] {
-  const first = channels.find(({ name }) => name === entry.name);
-  return [...entry.problems.map((problem) => yamlProblem(entry, problem)), duplicateName(entry, 'channel', first)];
+  problems.push(...channels.problems);
+  if (channels.beyond) problems.push(tooManyChannels(channels.beyond));
+  return { significant, channels: channels.entries, problems };
 }

@@ -3,8 +3,14 @@
 /** UTF-16 units of one file: 4 Mi. */
 export const MOST_CHARACTERS = 4 * 1024 * 1024;
 
-/** Entries of the section `channels` in one file. */
+/** Channels of one file; an entry with a brace range counts as all that it stands for. */
 export const MOST_CHANNELS = 20_000;
+
+/** Items of `accept` in one file. */
+export const MOST_ACCEPTANCES = 1_000;
+
+/** Characters of a name that is compared with a pattern, and of the pattern; longer ones are compared as they stand. */
+export const MOST_PATTERN_CHARACTERS = 1_000;
 
 /** Maps and lists inside one another. */
 export const MOST_DEPTH = 64;

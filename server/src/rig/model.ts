@@ -337,6 +337,8 @@ export interface FollowedPractice {
  */
 export interface Channel extends Thing {
   readonly kind: 'channel';
+  /** How many channels it stands for: more than 1 where its name has a brace range. */
+  readonly count: number;
   readonly complete: boolean;
   readonly sensor: Sensor | undefined;
   readonly sensorPlace: Place | undefined;

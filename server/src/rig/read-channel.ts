@@ -1,3 +1,4 @@
+import { channelCount } from './channel-range.ts';
 import {
   type Field,
   type Fields,
@@ -49,6 +50,7 @@ export function channelOf(reader: Reader, fields: Fields): Channel {
   readText(reader, byKey.get('note'));
   return {
     kind: 'channel',
+    count: channelCount(reader.entry.name),
     name: reader.entry.name,
     place: namePlace(reader.entry),
     complete: rateHz !== undefined && (band !== undefined || pulses !== undefined),

@@ -1,4 +1,5 @@
 import { nearest } from '../quantity/spelling.ts';
+import type { Acceptance } from './acceptance.ts';
 import { type Entry, NAMED_SECTIONS } from './entry.ts';
 import {
   clipped,
@@ -15,6 +16,7 @@ import {
 } from './fields.ts';
 import type { Given, Run, Source } from './model.ts';
 import type { PlacedProblem } from './placed-problem.ts';
+import { readAcceptances } from './read-acceptances.ts';
 import { channelOf } from './read-channel.ts';
 import { readFollows } from './read-follows.ts';
 import { readRun } from './read-run.ts';
@@ -37,6 +39,7 @@ export interface TopLevel {
   readonly defaults?: ReadonlyMap<string, Field>;
   /** What channels take over that have no `follows` of their own, nor one from `defaults`. */
   readonly follows?: Field;
+  readonly acceptances?: readonly Acceptance[];
   readonly severities?: ReadonlyMap<string, SeverityChoice>;
   readonly run?: Run | undefined;
 }
@@ -83,6 +86,8 @@ export function readTopLevel(reader: Reader, checkNames: readonly string[], used
       return readMap(reader, field, (_, one, node) => ({ run: readRun(reader, one, node) }));
     case 'follows':
       return { follows: readFollowsOfAll(reader, field) };
+    case 'accept':
+      return { acceptances: readAcceptances(reader, field, checkNames) };
     case 'checks':
       return readMap(reader, field, (_, one, node) => readSeverities(reader, one, node, checkNames));
     default:

@@ -44,7 +44,8 @@ export class EntryIndex {
   /** The index of a list that has the first `head` and the last `tail` entries in common with this one's. */
   edited(entries: readonly Entry[], head: number, tail: number): EntryIndex {
     const sharedHead = Math.min(this.#head, head);
-    const isWhole = this.#head === this.#table.entries.length;
+    // As long as the list is the table's own, all of its end is the table's too.
+    const isWhole = this.#head === this.#table.entries.length && this.#head === this.#entries.length;
     const sharedTail = isWhole ? tail : Math.min(this.#tail, tail);
     if (entries.length - sharedHead - sharedTail > MOST_SEARCHED) return EntryIndex.of(entries);
     return new EntryIndex(entries, this.#table, sharedHead, sharedTail);

@@ -1,5 +1,6 @@
 import type { Block } from './blocks-read.ts';
 import type { Entry } from './entry.ts';
+import { tooManyChannels } from './entry-problems.ts';
 import { MOST_CHANNELS } from './limits.ts';
 import type { PlacedProblem } from './placed-problem.ts';
 import { EntryIndex } from './snapshot-index.ts';
@@ -193,12 +194,4 @@ export function withinLimit(list: BlockList): {
     entries: list.entries.filter((entry) => !beyond.has(entry)),
     problems: [...list.problems(), tooManyChannels(channels[MOST_CHANNELS]!)],
   };
-}
-
-function tooManyChannels(entry: Entry): PlacedProblem {
-  const start = entry.key?.start ?? 0;
-  const end = entry.key?.end ?? 0;
-  const most = MOST_CHANNELS.toLocaleString('en');
-  const message = `A file may have ${most} channels: this one and those after it are not checked.`;
-  return { problem: { name: 'too-much', start, end, message }, place: { entry, start, end }, related: [] };
 }

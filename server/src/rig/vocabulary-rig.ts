@@ -109,7 +109,6 @@ export const RIG_ROWS: readonly KeyRow[] = [
     listOf(mapOf('acceptance')),
     '[{ finding: band-droop, on: tower-top, reason: corrected afterwards }]',
     'Findings that somebody has looked at and accepted. They are still listed in reports, marked as accepted.',
-    { computed: false },
   ),
   row(
     'rig',
@@ -145,26 +144,28 @@ export const RIG_ROWS: readonly KeyRow[] = [
 
   row('acceptance', 'finding', { kind: 'check-name' }, 'band-droop', 'The name of the check.', {
     required: true,
-    computed: false,
   }),
   row(
     'acceptance',
     'on',
     either(nameOf('channel'), TEXT),
     '"strain-{01..08}"',
-    'The channel it is accepted on; brace ranges and `*` stand for several.',
-    { computed: false },
+    'The channels it is accepted on; brace ranges and `*` stand for several. A channel whose own name has a brace range has to be taken in as a whole.',
+    { default: 'everywhere in the file' },
   ),
-  row('acceptance', 'about', TEXT, 'inverter', 'The source, or other name, that the finding is about.', {
-    computed: false,
-  }),
+  row(
+    'acceptance',
+    'about',
+    either(nameOf('source'), nameOf('digitizer'), TEXT),
+    'inverter',
+    'The source, or other name, that the finding is about.',
+    { default: 'whatever it is about' },
+  ),
   row('acceptance', 'reason', TEXT, 'corrected afterwards', 'Why it does no harm.', {
     required: true,
-    computed: false,
   }),
-  row('acceptance', 'by', TEXT, 'test lead', 'Who accepted it.', { computed: false }),
+  row('acceptance', 'by', TEXT, 'test lead', 'Who accepted it.'),
   row('acceptance', 'until', { kind: 'date' }, '2027-03-31', 'The last day on which it counts.', {
-    computed: false,
     default: 'it counts for good',
   }),
 ];

@@ -1,3 +1,5 @@
+import { withAcceptances } from '../checks/acceptance-findings.ts';
+import { type Accepting, acceptedResult, acceptingOn } from '../checks/accepting.ts';
 import type { ChannelResult, Guard } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
 import { judgeChannel, judgingRig } from '../checks/judge.ts';
@@ -32,7 +34,7 @@ export interface ReadText {
 }
 
 /**
- * Everything that is known of one text: a pure function of it and of those that it uses.
+ * Everything that is known of one text: a pure function of it, of those that it uses, and of the day.
  *
  * An evaluation shares with the one before it whatever an edit has not touched, object by object; a comparison of
  * identities therefore tells what an edit has changed.
@@ -44,6 +46,8 @@ export interface Evaluation extends ReadText {
   readonly rigFindings: readonly Finding[];
   /** What channels name, counted. */
   readonly uses: NameUses;
+  /** What is accepted, and on which day that was asked. */
+  readonly accepting: Accepting;
 }
 
 /** A text after edits, the files that it uses being as they were. */
@@ -57,40 +61,57 @@ export function readEdited({ snapshot, environment, usedTexts }: ReadText, edits
  * Evaluates a text step by step: it yields after each small piece of work, so that the caller may stop between
  * two of them, and returns the evaluation. What it yields is the channel that it has just judged, if it has.
  *
+ * @param today as `2026-12-01`, by which acceptances expire
  * @param near the entry whose neighbourhood is done first, the one somebody is typing in
  */
 export function* evaluating(
   read: ReadText,
   guard: Guard,
+  today: string,
   previous?: Evaluation,
   near?: Entry,
 ): Generator<JudgedChannel | undefined, Evaluation> {
   const { environment } = read;
+  const accepting = acceptingOn(environment.acceptances, today, previous?.accepting);
   const channels = reuse(environment, previous);
   yield undefined;
+  if (accepting !== previous?.accepting) yield* marking(channels, accepting);
   for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
-    const channel = judged(environment.channelEntries[index]!, environment, guard);
+    const channel = judged(environment.channelEntries[index]!, environment, accepting, guard);
     channels[index] = channel;
     yield channel;
   }
   const complete = channels as readonly JudgedChannel[];
   const { findings, uses } = yield* judgingRig(environment, complete, guard, previous?.uses);
-  return { ...read, channels: complete, rigFindings: findings, uses };
+  const rig = { environment, channels: complete };
+  const rigFindings = guard('accept', () => withAcceptances(findings, rig, accepting), findings);
+  return { ...read, channels: complete, rigFindings, uses, accepting };
 }
 
 /** Evaluates at one go. */
-export function evaluate(read: ReadText, guard: Guard, previous?: Evaluation): Evaluation {
-  const steps = evaluating(read, guard, previous);
+export function evaluate(read: ReadText, guard: Guard, today: string, previous?: Evaluation): Evaluation {
+  const steps = evaluating(read, guard, today, previous);
   for (;;) {
     const step = steps.next();
     if (step.done) return step.value;
   }
 }
 
-function judged(entry: Entry, environment: Environment, guard: Guard): JudgedChannel {
+function judged(entry: Entry, environment: Environment, accepting: Accepting, guard: Guard): JudgedChannel {
   const reading = readChannel(entry, environment);
-  return { reading, result: judgeChannel(reading, environment.severities, guard) };
+  return { reading, result: acceptedResult(judgeChannel(reading, environment.severities, guard), accepting) };
 }
+
+/** Marks anew what is accepted of the channels that are kept, a few at a time. */
+function* marking(channels: (JudgedChannel | undefined)[], accepting: Accepting): Generator<undefined> {
+  for (const [index, kept] of channels.entries()) {
+    if (index % MARKED_AT_ONCE === MARKED_AT_ONCE - 1) yield undefined;
+    const result = kept && acceptedResult(kept.result, accepting);
+    if (kept && result !== kept.result) channels[index] = { reading: kept.reading, result: result! };
+  }
+}
+
+const MARKED_AT_ONCE = 256;
 
 /** What still holds of the channels before, at the places they have now. */
 function reuse(environment: Environment, previous: Evaluation | undefined): (JudgedChannel | undefined)[] {

@@ -55,12 +55,17 @@ function withFewSyntaxFindings(all: readonly Finding[]): readonly Finding[] {
   return [...all.filter((finding) => !out.has(finding)), summary];
 }
 
+/** How many channels there are, each of a brace range counted. */
+export function countChannels({ channels }: Evaluation): number {
+  return channels.reduce((sum, { result }) => sum + result.channel.count, 0);
+}
+
 /** Every finding with its range, ordered by position. */
 export function locatedFindings(evaluation: Evaluation): readonly LocatedFinding[] {
   return inPlaces(evaluation, allFindings(evaluation));
 }
 
-/** At most `most` of an evaluation's findings, ordered by position; hints are left out first, then warnings. */
+/** At most `most` of an evaluation's findings, ordered by position; what is accepted is left out first, then hints, then warnings. */
 export function gravestFindings(
   evaluation: Evaluation,
   all: readonly Finding[],
@@ -68,12 +73,14 @@ export function gravestFindings(
 ): readonly LocatedFinding[] {
   if (all.length <= most) return inPlaces(evaluation, all);
   const chosen: Finding[] = [];
-  for (const severity of SEVERITIES) {
+  const take = (isNext: (finding: Finding) => boolean): void => {
     for (const finding of all) {
       if (chosen.length >= most) break;
-      if (finding.severity === severity) chosen.push(finding);
+      if (isNext(finding)) chosen.push(finding);
     }
-  }
+  };
+  for (const severity of SEVERITIES) take((finding) => !finding.accepted && finding.severity === severity);
+  take(({ accepted }) => accepted === true);
   return inPlaces(evaluation, chosen);
 }
 

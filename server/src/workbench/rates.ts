@@ -1,5 +1,6 @@
 import type { Chain } from '../chain/model.ts';
 import { reachableRates } from '../chain/reachable.ts';
+import { acceptanceOf } from '../checks/accepting.ts';
 import type { Guard } from '../checks/channel-result.ts';
 import { judgeModel } from '../checks/judge.ts';
 import { rateText, sampledAt } from '../remedies/rates.ts';
@@ -39,9 +40,9 @@ const withoutFault: Guard = (_checkName, run, otherwise) => {
 
 /**
  * The rates around a channel's band that its digitizer can make, ascending, each judged as if the channel were
- * sampled at it; empty where the channel has no readable band.
+ * sampled at it, what is accepted left out; empty where the channel has no readable band.
  */
-export function ratesAround({ result }: JudgedChannel, { environment }: Evaluation): readonly RateVerdict[] {
+export function ratesAround({ result }: JudgedChannel, { environment, accepting }: Evaluation): readonly RateVerdict[] {
   const { chain } = result;
   const { pulses } = result.channel;
   const topHz = result.channel.band?.value.highHz ?? (pulses && leastPulseRateHz(pulses.value) / 2);
@@ -62,7 +63,7 @@ export function ratesAround({ result }: JudgedChannel, { environment }: Evaluati
     const made = isToday(rateHz) ? channel : sampledAt(channel, rateHz);
     const judged = made && judgeModel(made, environment.severities, withoutFault);
     const findings = judged?.findings ?? [];
-    const grave = findings.filter(({ severity }) => severity !== 'hint');
+    const grave = findings.filter((finding) => finding.severity !== 'hint' && !acceptanceOf(finding, accepting));
     return {
       rateHz,
       text: rateText(channel, rateHz),

@@ -4,6 +4,7 @@ import type { FixAllResult } from '../remedies/fix-all.ts';
 import { fixAll } from '../remedies/fix-all.ts';
 import { remediesFor } from '../remedies/list.ts';
 import type { Remedy, RemedyContext, RemedyKind, Trial } from '../remedies/remedy.ts';
+import { channelNames } from '../rig/channel-range.ts';
 import type { Snapshot, TextEdit } from '../rig/snapshot.ts';
 import type { Evaluation, JudgedChannel } from './evaluation.ts';
 import { evaluate, evaluating, readEdited } from './evaluation.ts';
@@ -17,17 +18,22 @@ export type { FileContent, TextChange } from './files.ts';
 /**
  * The one place that is asked: it is told of files and of changes to them, and answers what is known of them.
  *
- * It reads no file, knows no protocol and no clock. What it answers is a function of the texts it was told.
+ * It reads no file, knows no protocol and no clock. What it answers is a function of the texts and of the day it was told.
  */
 export class Workbench {
   readonly #files = new Files();
   readonly #faults = new Set<string>();
   readonly #log: (message: string) => void;
   readonly #guard: Guard;
+  readonly #today: () => string;
 
-  /** @param log is told, once each, of checks that failed: a failing check is a bug of ours and costs only itself. */
-  constructor(log: (message: string) => void) {
+  /**
+   * @param log is told, once each, of checks that failed: a failing check is a bug of ours and costs only itself
+   * @param today says which day it is, as `2026-12-01`: acceptances expire
+   */
+  constructor(log: (message: string) => void, today: () => string) {
     this.#log = log;
+    this.#today = today;
     this.#guard = (checkName, run, otherwise) => {
       try {
         return run();
@@ -99,8 +105,10 @@ export class Workbench {
     const key = canonicalUri(uri);
     const read = readLinked(key, this.#files);
     if (!read) return undefined;
+    const today = this.#today();
     const known = this.#files.evaluationOf(key);
-    if (known?.snapshot === read.snapshot && known.environment === read.environment) {
+    const isKnown = known?.snapshot === read.snapshot && known.environment === read.environment;
+    if (isKnown && known.accepting.today === today) {
       if (known.usedTexts === read.usedTexts) return known;
       const moved: Evaluation = { ...known, usedTexts: read.usedTexts };
       this.#files.keepEvaluation(key, moved);
@@ -108,7 +116,7 @@ export class Workbench {
     }
     yield undefined;
     const near = nearOffset === undefined ? undefined : read.snapshot.entryAt(nearOffset);
-    const evaluation = yield* evaluating(read, this.#guard, known, near);
+    const evaluation = yield* evaluating(read, this.#guard, today, known, near);
     if (this.#files.contentOf(key) === read.snapshot) this.#files.keepEvaluation(key, evaluation);
     return evaluation;
   }
@@ -158,7 +166,7 @@ export class Workbench {
   #mayStand(evaluation: Evaluation, edits: readonly TextEdit[], mayStand: (finding: Finding) => boolean): boolean {
     const read = readEdited(evaluation, edits);
     const near = edits[0] && read.snapshot.entryAt(edits[0].start);
-    const steps = evaluating(read, this.#guard, evaluation, near);
+    const steps = evaluating(read, this.#guard, evaluation.accepting.today, evaluation, near);
     for (;;) {
       const { value, done } = steps.next();
       if (done) return value.rigFindings.every(mayStand);
@@ -167,7 +175,7 @@ export class Workbench {
   }
 
   #after(evaluation: Evaluation, edits: readonly TextEdit[]): Evaluation {
-    return evaluate(readEdited(evaluation, edits), this.#guard, evaluation);
+    return evaluate(readEdited(evaluation, edits), this.#guard, evaluation.accepting.today, evaluation);
   }
 
   #report(checkName: string, fault: unknown): void {
@@ -178,7 +186,10 @@ export class Workbench {
   }
 }
 
-/** The channel of that name, if the file has one. */
-export function channelNamed(evaluation: Evaluation, name: string): JudgedChannel | undefined {
-  return evaluation.channels.find((judged) => judged.result.channel.name === name);
+/** The channel of that name, or the one whose brace range yields the name, if the file has one. */
+export function channelNamed({ channels }: Evaluation, name: string): JudgedChannel | undefined {
+  return (
+    channels.find(({ result }) => result.channel.name === name) ??
+    channels.find(({ result: { channel } }) => channel.count > 1 && channelNames(channel.name).includes(name))
+  );
 }

@@ -4,7 +4,7 @@ import type { Evaluation, JudgedChannel } from './evaluation.ts';
 
 /**
  * The channel with the gravest findings that has a chain to draw: most errors, then most warnings, then most hints,
- * then the smallest margin; the first of equals.
+ * then the smallest margin; the first of equals. What is accepted does not count.
  */
 export function worstChannel(evaluation: Evaluation): JudgedChannel | undefined {
   let worst: JudgedChannel | undefined;
@@ -23,5 +23,5 @@ function compare(a: JudgedChannel, b: JudgedChannel): number {
 }
 
 function count(findings: readonly Finding[], severity: Finding['severity']): number {
-  return findings.reduce((sum, finding) => sum + (finding.severity === severity ? 1 : 0), 0);
+  return findings.reduce((sum, finding) => sum + (finding.severity === severity && !finding.accepted ? 1 : 0), 0);
 }
