@@ -340,3 +340,32 @@ describe('rate-over-converter of a scanned digitizer', () => {
     expect(scanned('39 kHz', THREE, 'simultaneous')).toEqual([]);
   });
 });
+
+describe('a brace range', () => {
+  const scanned = (digitizer: string, channels: string) =>
+    rig({ digitizer: `sampling: scanned, ${digitizer}`, channels });
+
+  it('has as many turns in a scan as it stands for, and its last one is the latest', () => {
+    const finding = only(scanned('scan-interval: 10 us', '  "a-{1..4}": {}\n  b: {}\n'), 'scan-skew');
+    expect(finding.channel).toBe('b');
+    expect(finding.figures['delayS']).toBeCloseTo(40e-6, 12);
+    // Three of the four are over 2.8 us, the first is what they are compared with.
+    expect(finding.message).toContain('later than the first of `a-{1..4}`');
+    expect(finding.message).toContain('and 3 others of its channels are over that too');
+  });
+
+  it('is a group by itself', () => {
+    const finding = only(scanned('scan-interval: 10 us', '  "a-{1..4}": {}\n'), 'scan-skew');
+    expect(finding.figures['delayS']).toBeCloseTo(30e-6, 12);
+    expect(finding.message).toMatch(
+      /^The last of these channels will be sampled 30 us \(10\.8 deg at 1 kHz\) later than the first of them/,
+    );
+  });
+
+  it('counts in what a scan samples, and in the time that it leaves', () => {
+    const sum = only(scanned('max-rate: 39 kHz', '  "a-{1..4}": {}\n'), 'rate-over-converter');
+    expect(sum.figures).toEqual({ rateHz: 40_000, maxRateHz: 39_000, channels: 4 });
+    const settling = only(scanned('settling: 10 us, full-scale: ±10 V', '  "a-{1..4}": {}\n'), 'settling-short');
+    expect(settling.figures['settlesS']).toBeCloseTo(25e-6, 12);
+  });
+});

@@ -109,6 +109,13 @@ describe('a hover on a group', () => {
     );
   });
 
+  it('tells the turns of a brace range', () => {
+    const text = `${TOWER}  "w-{1..3}": { digitizer: scanner, rate: 1 kHz, band: 1 Hz .. 100 Hz, group: empty }\n`;
+    const found = tower('  em▮pty: {', text);
+    expect(found).toContain('· 3 channels');
+    expect(found).toContain('| `w-{1..3}` | 20 us .. 40 us later |');
+  });
+
   it('counts those that there is no room for', () => {
     const many = Array.from({ length: 20 }, (_, n) => `  c${n}: { rate: 1 kHz, band: 1 Hz .. 100 Hz, group: empty }\n`);
     expect(tower('  em▮pty: {', TOWER + many.join(''))).toContain('4 more, all nearer to the first.');

@@ -1,10 +1,10 @@
 import type { Group, PhaseLimit } from '../rig/model.ts';
-import { type Scan, type ScannedChannel, scanDelays } from './scan.ts';
+import { type Scan, type ScanDelay, type ScannedChannel, scanDelays } from './scan.ts';
 
 /** A channel of a group. */
 export interface GroupMember extends ScannedChannel {
-  /** How late it is sampled by its turn in a scan, in s; `undefined` where nobody can tell. */
-  readonly scanDelayS: number | undefined;
+  /** How late it is sampled by its turn in a scan; `undefined` where nobody can tell. */
+  readonly scanDelay: ScanDelay | undefined;
 }
 
 /** A group with the channels that name it. */
@@ -24,10 +24,10 @@ export function groupMembers(
   const delayOf = scanDelays(scans);
   const byName = new Map<string, GroupMember[]>();
   for (const { channel, chain } of channels) {
-    const scanDelayS = delayOf(channel);
+    const scanDelay = delayOf(channel);
     const name = channel.group?.value;
     if (name === undefined) continue;
-    const member = { channel, chain, scanDelayS };
+    const member = { channel, chain, scanDelay };
     const others = byName.get(name);
     if (others) others.push(member);
     else byName.set(name, [member]);
@@ -44,7 +44,11 @@ export function comparedGroups(
   if (groups.size === 0) return [];
   return [...groupMembers(channels, scans)].flatMap(([name, members]): ComparedGroup[] => {
     const group = groups.get(name);
-    if (!group?.within || !group.upToHz || members.length < 2) return [];
+    if (!group?.within || !group.upToHz || !haveTwo(members)) return [];
     return [{ group, within: group.within.value, upToHz: group.upToHz.value, members }];
   });
+}
+
+function haveTwo(members: readonly GroupMember[]): boolean {
+  return members.length > 1 || members[0]!.channel.count > 1;
 }

@@ -10,8 +10,10 @@ export interface ScannedChannel {
 /** What one converter does that takes its channels in turn. */
 export interface Scan {
   readonly digitizer: Digitizer;
-  /** In the order in which they are scanned. */
+  /** In the order in which they are scanned; one with a brace range has as many turns as it stands for. */
   readonly channels: readonly ScannedChannel[];
+  /** How many turns a scan has. */
+  readonly count: number;
   /** From one conversion to the next; `undefined` where no channel has a rate to spread them over. */
   readonly intervalS: number | undefined;
   /** The greatest of their rates; 0 where none has one. */
@@ -36,17 +38,27 @@ export function scansOf(channels: readonly ScannedChannel[]): readonly Scan[] {
   return [...scanned].map(([digitizer, members]) => scanOf(digitizer, members));
 }
 
+/** How late a channel is by its turn in a scan: those of a brace range from the first to the last of them. */
+export interface ScanDelay {
+  readonly firstS: number;
+  readonly lastS: number;
+}
+
+const AT_ONCE: ScanDelay = { firstS: 0, lastS: 0 };
+
 /**
- * How late channels are by their turns in a scan, asked of all of them in document order: 0 where all are sampled at
- * once, `undefined` where nobody can tell.
+ * How late channels are by their turns in a scan, asked of all of them in document order: not at all where all are
+ * sampled at once, `undefined` where nobody can tell.
  */
-export function scanDelays(scans: readonly Scan[]): (channel: Channel) => number | undefined {
+export function scanDelays(scans: readonly Scan[]): (channel: Channel) => ScanDelay | undefined {
   const turns = new Map(scans.map(({ digitizer, intervalS }) => [digitizer, { intervalS, next: 0 }]));
-  return ({ digitizer }) => {
+  return ({ digitizer, count }) => {
     const turn = digitizer && turns.get(digitizer);
-    if (!turn) return 0;
-    const index = turn.next++;
-    return turn.intervalS === undefined ? undefined : index * turn.intervalS;
+    if (!turn) return AT_ONCE;
+    const first = turn.next;
+    turn.next += count;
+    const { intervalS } = turn;
+    return intervalS === undefined ? undefined : { firstS: first * intervalS, lastS: (turn.next - 1) * intervalS };
   };
 }
 
@@ -58,11 +70,13 @@ function rateOf({ channel, chain }: ScannedChannel): number | undefined {
 function scanOf(digitizer: Digitizer, channels: readonly ScannedChannel[]): Scan {
   let fastestHz = 0;
   let sumHz = 0;
+  let count = 0;
   for (const one of channels) {
     const rateHz = rateOf(one) ?? 0;
     fastestHz = Math.max(fastestHz, rateHz);
-    sumHz += rateHz;
+    sumHz += rateHz * one.channel.count;
+    count += one.channel.count;
   }
-  const spreadS = fastestHz > 0 ? 1 / (channels.length * fastestHz) : undefined;
-  return { digitizer, channels, intervalS: digitizer.scanIntervalS?.value ?? spreadS, fastestHz, sumHz };
+  const spreadS = fastestHz > 0 ? 1 / (count * fastestHz) : undefined;
+  return { digitizer, channels, count, intervalS: digitizer.scanIntervalS?.value ?? spreadS, fastestHz, sumHz };
 }

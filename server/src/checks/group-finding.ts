@@ -16,6 +16,8 @@ export interface Apart {
   readonly member: GroupMember;
   /** On the scale of what the group allows, over what it allows: 1 is as much as it does. */
   readonly excess: number;
+  /** Of the channels that a brace range stands for, how many are over it; left out, all. */
+  readonly over?: number;
 }
 
 /** Of all members over what their group allows, the one that differs most, and how many others do. */
@@ -28,11 +30,15 @@ export function worstApart<T extends Apart>(found: Iterable<T>): WorstApart<T> |
   let worst: T | undefined;
   let count = 0;
   for (const apart of found) {
-    if (!(apart.excess > 1 + ROUNDING)) continue;
-    count++;
+    if (!isOver(apart.excess)) continue;
+    count += apart.over ?? apart.member.channel.count;
     if (!worst || apart.excess > worst.excess) worst = apart;
   }
-  return worst && { worst, others: count - 1 };
+  return worst && { worst, others: count - (worst.over ?? worst.member.channel.count) };
+}
+
+export function isOver(excess: number): boolean {
+  return excess > 1 + ROUNDING;
 }
 
 /** A delay over what a group allows. */

@@ -7,6 +7,7 @@ import {
   degreesOf,
   delayExcess,
   delayText,
+  isOver,
   limitFigures,
   saidOfMember,
   worstApart,
@@ -62,7 +63,7 @@ function skewOf(compared: ComparedGroup): readonly SaidOfRig[] {
   const side = delayS > 0 ? 'later' : 'earlier';
   return [
     saidOfMember(compared, member, reference, {
-      message: `This channel will be sampled ${delayText(Math.abs(delayS), compared)} ${side} than \`${reference.channel.name}\`, by its turn in the scan: ${allowedText(compared, found.others)}`,
+      message: `${nameOf(member, delayS)} will be sampled ${delayText(Math.abs(delayS), compared)} ${side} than ${firstOf(reference, member)}, by its turn in the scan: ${allowedText(compared, found.others)}`,
       related: scansAt(delayS > 0 ? member : reference),
       figures: { delayS, phaseDeg: degreesOf(delayS, upToHz), atHz: upToHz, ...limitFigures(within) },
       excess,
@@ -70,14 +71,42 @@ function skewOf(compared: ComparedGroup): readonly SaidOfRig[] {
   ];
 }
 
-function* lateMembers(compared: ComparedGroup, reference: GroupMember): Generator<Late> {
-  const { scanDelayS: referenceS } = reference;
+/** Of the channels of a brace range, it is the first or the last one that differs most. */
+function nameOf({ channel, scanDelay }: GroupMember, delayS: number): string {
+  if (channel.count === 1) return 'This channel';
+  const isLast = delayS > 0 || scanDelay?.firstS === scanDelay?.lastS;
+  return `The ${isLast ? 'last' : 'first'} of these channels`;
+}
+
+function firstOf(reference: GroupMember, member: GroupMember): string {
+  if (reference === member) return 'the first of them';
+  const name = `\`${reference.channel.name}\``;
+  return reference.channel.count === 1 ? name : `the first of ${name}`;
+}
+
+function* lateMembers({ members, ...limits }: ComparedGroup, reference: GroupMember): Generator<Late> {
+  const referenceS = reference.scanDelay?.firstS;
   if (referenceS === undefined) return;
-  for (const member of compared.members) {
-    if (member.scanDelayS === undefined) continue;
-    const delayS = member.scanDelayS - referenceS;
-    yield { member, delayS, excess: delayExcess(delayS, compared) };
+  for (const member of members) {
+    if (!member.scanDelay) continue;
+    const first = member.scanDelay.firstS - referenceS;
+    const last = member.scanDelay.lastS - referenceS;
+    const delayS = Math.abs(last) >= Math.abs(first) ? last : first;
+    const excess = delayExcess(delayS, limits);
+    const { count } = member.channel;
+    yield count === 1
+      ? { member, delayS, excess }
+      : { member, delayS, excess, over: howMany(first, last, count, limits) };
   }
+}
+
+/** Of so many channels, evenly from one delay to another, how many are over the limit. */
+function howMany(first: number, last: number, count: number, limits: Pick<ComparedGroup, 'within' | 'upToHz'>): number {
+  let over = 0;
+  for (let turn = 0; turn < count; turn++) {
+    if (isOver(delayExcess(first + ((last - first) * turn) / (count - 1), limits))) over++;
+  }
+  return over;
 }
 
 function scansAt({ channel }: GroupMember): readonly RelatedPlace[] {

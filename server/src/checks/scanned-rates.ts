@@ -23,14 +23,14 @@ export function ratesTogether({ scans }: RigTime): readonly SaidOfRig[] {
   return scans.flatMap(sumOf);
 }
 
-function sumOf({ digitizer, channels, sumHz, fastestHz }: Scan): readonly SaidOfRig[] {
+function sumOf({ digitizer, channels, count, sumHz, fastestHz }: Scan): readonly SaidOfRig[] {
   const most = digitizer.maxRateHz;
   if (!most || sumHz <= most.value * (1 + ROUNDING)) return SAYS_NOTHING;
   const fastest = channels.find(({ channel, chain }) => (chain?.rateHz ?? channel.rateHz?.value) === fastestHz);
   if (!fastest) return SAYS_NOTHING;
   const { channel } = fastest;
   const standing = standingOn(channel, channel.rateHz);
-  const all = channels.length === 1 ? 'its one channel' : `its ${channels.length.toLocaleString('en')} channels`;
+  const all = count === 1 ? 'its one channel' : `its ${count.toLocaleString('en')} channels`;
   return [
     {
       channel: channel.name,
@@ -38,7 +38,7 @@ function sumOf({ digitizer, channels, sumHz, fastestHz }: Scan): readonly SaidOf
       message: `\`${digitizer.name}\` will not sample ${all} in turn at ${rateText(sumHz)} altogether: its greatest rate is ${rateText(most.value)}.`,
       place: standing.place,
       related: [...standing.related, { place: most.place, message: 'The greatest rate stands here.' }],
-      figures: { rateHz: sumHz, maxRateHz: most.value, channels: channels.length },
+      figures: { rateHz: sumHz, maxRateHz: most.value, channels: count },
       excess: sumHz / most.value,
     },
   ];

@@ -56,21 +56,22 @@ export function shortSettlings({ scans }: RigTime): readonly SaidOfRig[] {
 }
 
 function shortOf(scan: Scan): readonly SaidOfRig[] {
-  const { digitizer, channels, intervalS, fastestHz } = scan;
+  const { digitizer, channels, count, intervalS, fastestHz } = scan;
   const constantS = digitizer.settlingS?.value;
-  if (constantS === undefined || intervalS === undefined || channels.length < 2) return SAYS_NOTHING;
+  if (constantS === undefined || intervalS === undefined || count < 2) return SAYS_NOTHING;
   // The first one of a scan has the rest of the sample period, behind the last.
-  const restS = fastestHz > 0 ? 1 / fastestHz - (channels.length - 1) * intervalS : intervalS;
+  const restS = fastestHz > 0 ? 1 / fastestHz - (count - 1) * intervalS : intervalS;
   let worst: Leftover | undefined;
   let short = 0;
   for (let index = 0; index < channels.length; index++) {
-    const settlesS = index === 0 ? Math.max(restS, intervalS) : intervalS;
+    const { channel } = channels[index]!;
+    const settlesS = index === 0 && channel.count === 1 ? Math.max(restS, intervalS) : intervalS;
     const excess = excessOf(channels[index]!, settlesS / constantS);
     if (!(excess > ROUNDING_DB)) continue;
-    short++;
+    short += channel.count;
     if (!worst || excess > worst.excess) worst = { channel: channels[index]!, settlesS, excess };
   }
-  return worst ? [saidOf(worst, short - 1, scan)] : SAYS_NOTHING;
+  return worst ? [saidOf(worst, short - worst.channel.channel.count, scan)] : SAYS_NOTHING;
 }
 
 /** Of a neighbour at full scale, on the chain's scale. */

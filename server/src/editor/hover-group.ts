@@ -37,28 +37,35 @@ export function groupMarkdown(group: Group, { channels }: Evaluation): string {
     ordered.slice(0, MOST_MEMBERS).map((row, index) => cellsOf(row, index === 0, upToHz)),
   );
   const more = ordered.length - MOST_MEMBERS;
-  const count = members.length === 1 ? '1 channel' : `${members.length.toLocaleString('en')} channels`;
-  return `${head} · ${count}\n\n${table}${more > 0 ? `\n\n${more.toLocaleString('en')} more, all nearer to the first.` : ''}`;
+  const count = members.reduce((sum, { channel }) => sum + channel.count, 0);
+  const channelsText = count === 1 ? '1 channel' : `${count.toLocaleString('en')} channels`;
+  return `${head} · ${channelsText}\n\n${table}${more > 0 ? `\n\n${more.toLocaleString('en')} more, all nearer to the first.` : ''}`;
 }
 
 function cellsOf({ member, phaseDeg }: Row, isReference: boolean, upToHz: number): readonly string[] {
-  const { channel, chain, scanDelayS } = member;
+  const { channel, chain } = member;
   const phase = chain && chainPhaseOf(chain);
   const isWhole = phase !== undefined && phase.untold.length === 0;
   return [
     codeMarkdown(channel.name),
-    scanDelayS === undefined ? UNKNOWN : scanDelayS === 0 ? 'at once' : `${delayText(scanDelayS)} later`,
+    turnText(member),
     isWhole ? delayText(phase.whole.groupDelayS(upToHz)) : UNKNOWN,
     isReference ? 'compared with' : phaseDeg === undefined ? UNKNOWN : angleText(phaseDeg),
   ];
 }
 
+/** Of a brace range, from the first to the last of its channels. */
+function turnText({ scanDelay }: GroupMember): string {
+  if (!scanDelay) return UNKNOWN;
+  const { firstS, lastS } = scanDelay;
+  if (lastS === 0) return 'at once';
+  return firstS === lastS ? `${delayText(lastS)} later` : `${delayText(firstS)} .. ${delayText(lastS)} later`;
+}
+
 function phaseAgainst(reference: GroupMember, member: GroupMember, upToHz: number): number | undefined {
-  if (!reference.chain || !member.chain || reference.scanDelayS === undefined || member.scanDelayS === undefined) {
-    return undefined;
-  }
+  if (!reference.chain || !member.chain || !reference.scanDelay || !member.scanDelay) return undefined;
   // What is sampled later has gone further on.
-  const scanDeg = 360 * upToHz * (member.scanDelayS - reference.scanDelayS);
+  const scanDeg = 360 * upToHz * (member.scanDelay.lastS - reference.scanDelay.firstS);
   const phaseRad = phaseApartAt(member.chain, reference.chain, upToHz);
   return phaseRad === undefined ? undefined : phaseRad * DEGREES_PER_RADIAN + scanDeg;
 }
