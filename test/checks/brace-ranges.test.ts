@@ -64,6 +64,31 @@ channels:
     expect(only(minority, 'rates-conflict').message).toMatch(/ \(2 channels\)\.$/);
   });
 
+  it('has a turn of the scan for each', () => {
+    const rig = (scanner: string, channels: string): string => `rig: Test
+digitizers: { d: { sampling: scanned, ${scanner} } }
+groups: { g: { within: 1 deg, up-to: 1 kHz } }
+defaults: { digitizer: d, undeclared: -90 dBFS, band: 1 Hz .. 1 kHz, rate: 10 kHz, group: g }
+channels:
+${channels}`;
+    // By hand: 4 x 10 kHz and 1 x 10 kHz are 50 kHz.
+    const sum = only(rig('max-rate: 49 kHz', '  a: {}\n  s-{1..4}: {}\n'), 'rate-over-converter');
+    expect(sum.figures).toMatchObject({ rateHz: 50_000, channels: 5 });
+    expect(found(rig('max-rate: 50 kHz', '  a: {}\n  s-{1..4}: {}\n'), 'rate-over-converter')).toEqual([]);
+    // By hand: the last of them is four turns of 10 us behind the first: 360 deg x 1 kHz x 40 us = 14.4 deg.
+    const skew = only(rig('scan-interval: 10 us', '  a: {}\n  s-{1..4}: {}\n'), 'scan-skew');
+    expect(skew.figures.delayS).toBeCloseTo(40e-6, 12);
+    expect(skew.figures.phaseDeg).toBeCloseTo(14.4, 9);
+    expect(skew.message).toMatch(/^The last of these channels will be sampled .* later than `a`/);
+    // Alone they are compared with one another: three turns.
+    const alone = only(rig('scan-interval: 10 us', '  s-{1..4}: {}\n'), 'scan-skew');
+    expect(alone.figures.delayS).toBeCloseTo(30e-6, 12);
+    expect(alone.message).toContain('later than the first of them,');
+    const behind = only(rig('scan-interval: 10 us', '  s-{1..4}: {}\n  z: {}\n'), 'scan-skew');
+    expect(behind.figures.delayS).toBeCloseTo(40e-6, 12);
+    expect(behind.message).toMatch(/^This channel will be sampled .* later than the first of `s-\{1..4\}`/);
+  });
+
   it('is found by its own name and by each that it stands for', () => {
     const evaluation = evaluated(FOLDS);
     for (const name of ['strain-{01..64}', 'strain-01', 'strain-64'])
