@@ -28,13 +28,13 @@ export class ChannelNames {
   /** Takes an entry with a key; false where it is not read, for all of its names are taken. */
   take(entry: Entry): boolean {
     if (this.#beyond) return true;
-    const range = channelRange(entry.name);
-    const size = range?.count ?? 1;
+    const names = namesOf(entry);
+    const size = names?.length ?? 1;
     if (this.#count + size > MOST_CHANNELS) {
       this.#beyond = entry;
       return true;
     }
-    const isNew = range ? this.#takeAll(entry) : this.#takeOne(entry);
+    const isNew = names ? this.#takeAll(entry, names) : this.#takeOne(entry);
     if (!isNew) return false;
     this.#count += size;
     this.entries.push(entry);
@@ -49,32 +49,37 @@ export class ChannelNames {
     return false;
   }
 
-  #takeAll(entry: Entry): boolean {
-    const own = namesOf(entry);
-    const taken = own.filter((name) => this.#names.has(name));
-    for (const name of own) this.#names.add(name);
-    const [first] = taken;
+  #takeAll(entry: Entry, names: readonly string[]): boolean {
+    let taken = 0;
+    let first: string | undefined;
+    for (const name of names) {
+      const known = this.#names.size;
+      this.#names.add(name);
+      if (this.#names.size > known) continue;
+      taken++;
+      first ??= name;
+    }
     if (first === undefined) return true;
-    const isRead = taken.length < own.length;
-    this.problems.push(overlappingName(entry, first, taken.length, isRead, this.#firstOf(first)));
+    const isRead = taken < names.length;
+    this.problems.push(overlappingName(entry, first, taken, isRead, this.#firstOf(first)));
     return isRead;
   }
 
   #firstOf(name: string): Entry | undefined {
     for (; this.#mapped < this.entries.length; this.#mapped++) {
       const entry = this.entries[this.#mapped]!;
-      for (const own of namesOf(entry)) if (!this.#firsts.has(own)) this.#firsts.set(own, entry);
+      for (const own of namesOf(entry) ?? [entry.name]) if (!this.#firsts.has(own)) this.#firsts.set(own, entry);
     }
     return this.#firsts.get(name);
   }
 }
 
-function namesOf(entry: Entry): readonly string[] {
-  if (!channelRange(entry.name)) return [entry.name];
-  let names = expanded.get(entry);
-  if (!names) {
-    names = channelNames(entry.name);
-    expanded.set(entry, names);
-  }
+/** The names of the channels that an entry with a brace range stands for; `undefined` for a plain name. */
+function namesOf(entry: Entry): readonly string[] | undefined {
+  if (!entry.name.includes('{')) return undefined;
+  const known = expanded.get(entry);
+  if (known) return known;
+  const names = channelRange(entry.name) && channelNames(entry.name);
+  if (names) expanded.set(entry, names);
   return names;
 }

@@ -105,7 +105,7 @@ export const DOCUMENT_PAGES: readonly (CheckPage & { readonly name: ProblemName 
   page(
     'too-much',
     'error',
-    'A limit is passed: 4 Mi characters, 20,000 channels, depth 64, 10,000 alias expansions, 1,000 harmonics or sidebands, 200 syntax findings.',
+    'A limit is passed: 4 Mi characters, 20,000 channels, depth 64, 10,000 alias expansions, 1,000 harmonics or sidebands, 1,000 items of `accept`, 200 syntax findings.',
     'What lies past a limit is not read. Whole channels before it are checked all the same.',
     'rig: Fan bearing\nsources:\n  drive: { frequency: 50 Hz, harmonics: 1001 }\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 2 kHz }\n',
     'rig: Fan bearing\nsources:\n  drive: { frequency: 50 Hz, harmonics: 1000 }\nchannels:\n  bearing: { rate: 25.6 kHz, band: 10 Hz .. 2 kHz }\n',
