@@ -9,14 +9,17 @@ clocks:
   chassis: { frequency: 13.1072 MHz, divide: 1..128, tolerance: 25 ppm }
 
 digitizers:
-  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V }
+  front-end: { clock: chassis, prescale: 256, bits: 24, full-scale: ±10 V, noise: 20 uV, jitter: 200 ps }
 
 sensors:
-  stud: { measures: acceleration, sensitivity: 100 mV/g, resonance: 32 kHz, range: 100 g }
+  stud: { measures: acceleration, sensitivity: 100 mV/g, resonance: 32 kHz, range: 100 g, noise: 1 mm/s2/rtHz }
 
 filters:
   card: { response: butterworth, order: 8, cutoff: 9.5 kHz }
   tidy: { response: butterworth, order: 8, cutoff: 0.18 fs }
+
+groups:
+  shaft: { within: 5 deg, up-to: 2 kHz }
 
 sources:
   blade-pass: { order: 9, speed: 600..3000 rpm, harmonics: 8, level: 1 g, falls: 6 dB/oct, wanted: true }
@@ -39,7 +42,7 @@ function channelKeys(index: number): readonly (readonly [key: string, value: str
     ['fold-limit', `-${60 + (index % 5)} dBFS`],
     ['flatness', `${1 + (index % 3) * 0.5} dB`],
     ['peak', `${20 + (index % 11)} g`],
-    ['headroom', '3 dB'],
+    ['group', 'shaft'],
     ['note', `position ${index}`],
   ];
 }

@@ -88,12 +88,18 @@ function ofSteps({ channel, rateHz, scale, stages }: Chain): readonly NoiseInput
   return [{ origin: { kind: 'steps' }, enters: ownRecord(stages), densityDb, spans: undefined, place }];
 }
 
-function ofJitter(chain: Chain): readonly NoiseInput[] {
+/** All the noise that jitter makes of what is expected at the band's top, in the band or not. */
+export function jitterLevelOf(chain: Chain): number | undefined {
   const jitter = chain.channel.digitizer?.jitterS;
   const peakDb = jitter && peakLevel(chain);
-  if (!jitter || peakDb === undefined) return [];
-  const { value, place } = jitter;
-  const wholeDb = peakDb + jitterNoiseDb(chain.bandHighHz, value, 0);
+  return peakDb === undefined ? undefined : peakDb + jitterNoiseDb(chain.bandHighHz, jitter?.value ?? 0, 0);
+}
+
+function ofJitter(chain: Chain): readonly NoiseInput[] {
+  const jitter = chain.channel.digitizer?.jitterS;
+  const wholeDb = jitterLevelOf(chain);
+  if (!jitter || wholeDb === undefined) return [];
+  const { place } = jitter;
   const densityDb = wholeDb - powerDecibels(chain.ratesHz[0]! / 2);
   return [{ origin: { kind: 'jitter' }, enters: { at: 'record', stage: 1 }, densityDb, spans: undefined, place }];
 }

@@ -1,4 +1,5 @@
 import { powerSum } from '../chain/noise.ts';
+import { jitterLevelOf } from '../chain/noise-inputs.ts';
 import { formatHz, formatQuantity } from '../quantity/write.ts';
 import { type Check, SAYS_NOTHING } from './check.ts';
 import { noiseText } from './noise-wording.ts';
@@ -43,10 +44,12 @@ channels:
 `,
   sources: ['IEEE Std 1241: 20 log10(2 pi f jitter), less 10 log10(rate / (2 bandwidth)).'],
   run(view) {
-    const { channel, chain, noise } = view;
+    const { channel, chain } = view;
     const jitter = channel.digitizer?.jitterS;
-    const share = jitter && noise?.contributions.find(({ origin }) => origin.kind === 'jitter');
-    if (!jitter || !share || !chain.understood) return SAYS_NOTHING;
+    // All of it, in the band or not, is seen at once; how much of it is in the band has to be worked out.
+    if (!jitter || !((jitterLevelOf(chain) ?? -Infinity) > chain.foldLimit)) return SAYS_NOTHING;
+    const share = view.noise?.contributions.find(({ origin }) => origin.kind === 'jitter');
+    if (!share || !chain.understood) return SAYS_NOTHING;
     const level = powerSum([share.nativeDb, share.foldedDb ?? -Infinity]);
     const excess = level - chain.foldLimit;
     if (!(excess > NOISE_ROUNDING_DB)) return SAYS_NOTHING;

@@ -1,4 +1,6 @@
 import type { NoiseContribution } from '../chain/noise.ts';
+import { foldedNoiseAtMostDb } from '../chain/noise-bound.ts';
+import { declaresNoise } from '../chain/noise-inputs.ts';
 import { type Check, SAYS_NOTHING } from './check.ts';
 import { largestOf, noiseText, originInSentence } from './noise-wording.ts';
 import { filtersAhead, standingOnStage } from './standing.ts';
@@ -44,8 +46,12 @@ channels:
     'Oppenheim and Schafer, Discrete-Time Signal Processing, the chapters on sampling and on random signals: power densities fold and add.',
   ],
   run(view) {
-    const { chain, noise } = view;
-    if (!noise || !chain.understood) return SAYS_NOTHING;
+    const { chain } = view;
+    if (!chain.understood || !declaresNoise(chain.channel)) return SAYS_NOTHING;
+    const mostDb = foldedNoiseAtMostDb(chain);
+    if (mostDb !== undefined && mostDb <= chain.foldLimit) return SAYS_NOTHING;
+    const { noise } = view;
+    if (!noise) return SAYS_NOTHING;
     const excess = noise.foldedDb - chain.foldLimit;
     const largest = largestOf(noise.contributions, foldedDbOf);
     if (!(excess > NOISE_ROUNDING_DB) || !largest) return SAYS_NOTHING;
