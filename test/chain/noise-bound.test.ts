@@ -34,7 +34,9 @@ describe('the bound on the noise that folds', () => {
 
   it('is not known where a filter lets some through for good, nor past several samplings', () => {
     const floor = 'response: elliptic, order: 6, ripple: 0.1 dB, stopband: 60 dB, pass-edge: 5 kHz';
-    expect(foldedNoiseAtMostDb(chainOfText(rig(floor, 20_000, 4000)))).toBeUndefined();
+    expect(
+      foldedNoiseAtMostDb(chainOfText(rig(floor, 20_000, 4000).replace(', resonance: 30 kHz', ''))),
+    ).toBeUndefined();
     const butterworth = 'response: butterworth, order: 8, cutoff: 5 kHz';
     expect(
       foldedNoiseAtMostDb(chainOfText(rig(butterworth, 20_000, 400, ', then: [{ decimate: 4 }]'))),
