@@ -3,6 +3,7 @@ import type { Guard } from '../../server/src/checks/channel-result.ts';
 import { identityOf } from '../../server/src/checks/finding.ts';
 import { judgeChannel, judgeModel, judgingRig } from '../../server/src/checks/judge.ts';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
+import { type ChannelSummary, partOf } from '../../server/src/checks/roster.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { type Environment, readEnvironment } from '../../server/src/rig/environment.ts';
 import type { NameUses } from '../../server/src/rig/name-uses.ts';
@@ -106,18 +107,13 @@ describe('counting what is named', () => {
     const channels = readAll(environment, before);
     return { channels, ...finished(judgingRig(environment, channels, NO_GUARD, uses)) };
   }
-  function readAll(
-    environment: Environment,
-    before?: readonly {
-      readonly reading: ReturnType<typeof readChannel>;
-      readonly result: ReturnType<typeof judgeChannel>;
-    }[],
-  ) {
+  function readAll(environment: Environment, before?: readonly ChannelSummary[]): readonly ChannelSummary[] {
     return environment.channelEntries.map((entry) => {
       const old = before?.find(({ reading }) => reading.entry === entry);
       if (old) return old;
       const reading = readChannel(entry, environment);
-      return { reading, result: judgeChannel(reading, environment.severities, NO_GUARD) };
+      const result = judgeChannel(reading, environment.severities, NO_GUARD);
+      return { reading, result, part: partOf(reading, result) };
     });
   }
 

@@ -4,6 +4,7 @@ import type { Guard } from '../../server/src/checks/channel-result.ts';
 import type { Finding } from '../../server/src/checks/finding.ts';
 import { judgeChannel, judgingRig } from '../../server/src/checks/judge.ts';
 import { CHECK_NAMES } from '../../server/src/checks/list.ts';
+import { partOf } from '../../server/src/checks/roster.ts';
 import { readChannel } from '../../server/src/rig/channel-reading.ts';
 import { readEnvironment } from '../../server/src/rig/environment.ts';
 import { readSnapshot } from '../../server/src/rig/snapshot.ts';
@@ -18,11 +19,12 @@ export function findingsOf(text: string): readonly Finding[] {
   const accepting = acceptingOn(environment.acceptances, TODAY);
   const channels = environment.channelEntries.map((entry) => {
     const reading = readChannel(entry, environment);
-    return { reading, result: acceptedResult(judgeChannel(reading, environment.severities, NO_GUARD), accepting) };
+    const result = acceptedResult(judgeChannel(reading, environment.severities, NO_GUARD), accepting);
+    return { reading, result, part: partOf(reading, result) };
   });
   const found = finished(judgingRig(environment, channels, NO_GUARD));
   return [
-    ...withAcceptances(found.findings, { environment, channels }, accepting),
+    ...withAcceptances(found.findings, { environment, channels, roster: found.roster }, accepting),
     ...channels.flatMap(({ result }) => result.findings),
   ];
 }

@@ -4,9 +4,10 @@ import { acceptanceExpired, saidOfExpired } from './acceptance-expired.ts';
 import { acceptanceIdle, saidOfIdle } from './acceptance-idle.ts';
 import { acceptedWords } from './acceptance-words.ts';
 import { type Accepting, accepted, hasExpired } from './accepting.ts';
-import type { ChannelSummary, CheckPage, RigView, SaidOfRig } from './check.ts';
+import type { CheckPage, RigView, SaidOfRig } from './check.ts';
 import type { Finding } from './finding.ts';
 import { findingOf, toldApart } from './judge.ts';
+import type { ChannelSummary } from './roster.ts';
 
 /**
  * The findings of no single channel, those accepted marked, and what is to be said of `accept` itself. A fold over
@@ -17,14 +18,14 @@ import { findingOf, toldApart } from './judge.ts';
  */
 export function withAcceptances(
   findings: readonly Finding[],
-  { environment, channels }: RigView,
+  { environment, channels, roster }: RigView,
   accepting: Accepting,
 ): readonly Finding[] {
   if (accepting.acceptances.length === 0) return findings;
   const marked = accepted(findings, accepting);
   const met = new Set(marked.acceptances);
   for (const { result } of channels) if (result.acceptances) for (const one of result.acceptances) met.add(one);
-  const ranges = checksOnRanges(channels);
+  const ranges = checksOnRanges(roster.ranged);
   const said: Finding[] = [];
   const add = (page: CheckPage, acceptance: Acceptance, one: SaidOfRig): void => {
     const about = clipped(acceptedWords(acceptance).replaceAll('`', ''));
@@ -45,8 +46,6 @@ export function withAcceptances(
 /** The checks that have something to say of a channel whose name has a brace range. */
 function checksOnRanges(channels: readonly ChannelSummary[]): ReadonlySet<string> {
   const checks = new Set<string>();
-  for (const { result } of channels) {
-    if (result.channel.count > 1) for (const { check } of result.findings) checks.add(check);
-  }
+  for (const { result } of channels) for (const { check } of result.findings) checks.add(check);
   return checks;
 }

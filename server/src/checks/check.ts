@@ -4,11 +4,10 @@ import type { Arrival, Chain } from '../chain/model.ts';
 import type { NoiseBudget } from '../chain/noise.ts';
 import type { ChannelSpectrum } from '../chain/spectrum.ts';
 import type { UndeclaredFold } from '../chain/undeclared.ts';
-import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
-import type { ChannelResult } from './channel-result.ts';
 import type { Finding, Severity } from './finding.ts';
+import type { ChannelSummary, Roster } from './roster.ts';
 
 /** Two ends in volts at the digitizer's input. */
 export interface Volts {
@@ -94,15 +93,11 @@ export interface Check<Kind extends 'channel' | 'rig'> extends CheckPage {
 /** A fold over many channels, said in the name of a check. */
 export type RigFold = Pick<Check<'rig'>, 'name' | 'severity' | 'run'>;
 
-/** A channel as read and judged: what checks over many channels fold. */
-export interface ChannelSummary {
-  readonly reading: ChannelReading;
-  readonly result: ChannelResult;
-}
-
 export interface RigView {
   readonly environment: Environment;
   readonly channels: readonly ChannelSummary[];
+  /** The same, sorted by what they have to do with others. */
+  readonly roster: Roster;
 }
 
 /** What nothing is said in. */

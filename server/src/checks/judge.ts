@@ -7,12 +7,13 @@ import type { PlacedProblem } from '../rig/placed-problem.ts';
 import { rigProblems } from '../rig/rig-problems.ts';
 import { unusedNames } from '../rig/unused-names.ts';
 import type { ChannelResult, Guard } from './channel-result.ts';
-import type { ChannelSummary, ChannelView, Check, CheckPage, RigView, SaidOfRig } from './check.ts';
+import type { ChannelView, Check, CheckPage, RigView, SaidOfRig } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { digitalEdges } from './digital-edges.ts';
 import { saidOfProblem, saidOfThing } from './document/problems.ts';
 import { type Finding, identityOf, SEVERITIES, type Severity } from './finding.ts';
 import { CHANNEL_CHECKS, PULSE_CHECKS, RIG_FOLDS } from './list.ts';
+import { type ChannelSummary, type Roster, rosterOf } from './roster.ts';
 import { UNHEARD_IS, unheardSources } from './unheard.ts';
 import { viewOf } from './view.ts';
 
@@ -92,6 +93,7 @@ function firstOf(checkName: string, channel: Channel): readonly Check<'channel'>
 export interface RigResult {
   readonly findings: readonly Finding[];
   readonly uses: NameUses;
+  readonly roster: Roster;
 }
 
 /**
@@ -108,9 +110,10 @@ export function* judgingRig(
   before: NameUses = NO_USES,
 ): Generator<undefined, RigResult> {
   const { severities } = environment;
-  const rig: RigView = { environment, channels };
+  const roster = rosterOf(channels);
+  const rig: RigView = { environment, channels, roster };
   const findings: Finding[] = [];
-  const ranges = channelRanges(channels);
+  const ranges = channelRanges(roster.ranged);
   const add = (check: string, severity: Severity, said: readonly SaidOfRig[]): void => {
     for (const one of said) {
       const { channel: name } = one;
@@ -119,7 +122,7 @@ export function* judgingRig(
     }
   };
   const addProblem = (problem: PlacedProblem): void => add(problem.problem.name, 'error', [saidOfThing(problem)]);
-  guard('document', () => rigProblems(environment, channels), SAYS_NOTHING).forEach(addProblem);
+  guard('document', () => rigProblems(environment, channels, roster.noted), SAYS_NOTHING).forEach(addProblem);
   yield undefined;
   const uses = guard('unused-name', () => nameUses(channels, before), NO_USES);
   guard('unused-name', () => unusedNames(environment, uses), SAYS_NOTHING).forEach(addProblem);
@@ -131,7 +134,7 @@ export function* judgingRig(
   }
   const unheard = guard(UNHEARD_IS, () => unheardSources(rig), SAYS_NOTHING);
   add(UNHEARD_IS, 'hint', unheard);
-  return { findings: inOrder(toldApart(findings)), uses };
+  return { findings: inOrder(toldApart(findings)), uses, roster };
 }
 
 /** Runs every channel check; its chain is the channel's, where it is complete enough to have one. */
@@ -201,8 +204,7 @@ export function findingOf(
 /** How many channels each entry with a brace range stands for, by its name. */
 function channelRanges(channels: readonly ChannelSummary[]): ReadonlyMap<string, number> {
   const ranges = new Map<string, number>();
-  for (const { result } of channels)
-    if (result.channel.count > 1) ranges.set(result.channel.name, result.channel.count);
+  for (const { result } of channels) ranges.set(result.channel.name, result.channel.count);
   return ranges;
 }
 

@@ -1,5 +1,6 @@
 import type { Channel, Digitizer } from '../rig/model.ts';
-import type { ChannelSummary, Check, SaidOfRig } from './check.ts';
+import type { Check, SaidOfRig } from './check.ts';
+import type { ChannelSummary } from './roster.ts';
 import { standingOn } from './standing.ts';
 import { rateText } from './wording.ts';
 
@@ -47,9 +48,9 @@ channels:
     band: 10 Hz .. 1 kHz
 `,
   sources: ["The digitizer's data sheet, as the rig file gives it."],
-  run({ channels }) {
+  run({ roster }) {
     const said: SaidOfRig[] = [];
-    for (const [digitizer, members] of membersOf(channels)) {
+    for (const [digitizer, members] of membersOf(roster.together)) {
       if (digitizer.together.value === 'same') said.push(...notTheSame(digitizer, members));
       else said.push(...notFractions(digitizer, members));
     }

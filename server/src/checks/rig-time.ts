@@ -30,11 +30,16 @@ function hasTime({ environment: { groups, digitizers } }: RigView): boolean {
   return false;
 }
 
-function foldedTime({ environment, channels }: RigView): RigTime {
-  return timeFrom(
-    environment,
-    channels.map(({ result }) => result),
+function foldedTime({ environment: { groups }, channels, roster }: RigView): RigTime {
+  const scans = scansOf(roster.scanned.map(({ result }) => result));
+  // Turns are counted over all that are scanned, in a group or not.
+  const asked = scans.length === 0 ? roster.grouped : channels;
+  const compared = comparedGroups(
+    groups,
+    asked.map(({ result }) => result),
+    scans,
   );
+  return { scans, groups: compared };
 }
 
 /** The same of channels that somebody has made up. */

@@ -8,9 +8,9 @@ import { levelUnplaced } from './level-unplaced.ts';
  * measure: told at the source, as `level-unplaced`, with the number of those channels. One of a used file is told where that file
  * is named.
  */
-export function unheardSources({ environment, channels }: RigView): readonly SaidOfRig[] {
+export function unheardSources({ environment, roster }: RigView): readonly SaidOfRig[] {
   const counts = new Map<Source, number>();
-  for (const { result } of channels) {
+  for (const { result } of roster.unhearing) {
     const { unheard, sensor, sensorPlace, count } = result.channel;
     // What a sensor measures that is named and not known, nobody can say.
     if (sensorPlace && !sensor) continue;

@@ -8,15 +8,20 @@ import type { PlacedProblem } from './placed-problem.ts';
  * inherited text (once, at their origin, however many inherit it), and keys that are not computed (once each).
  *
  * @param channels in document order
+ * @param noted those of them that have anything to say of the two latter, or more
  */
-export function rigProblems(environment: Environment, channels: readonly KnownChannel[]): readonly PlacedProblem[] {
+export function rigProblems(
+  environment: Environment,
+  channels: readonly KnownChannel[],
+  noted: readonly KnownChannel[] = channels,
+): readonly PlacedProblem[] {
   const inherited = [...environment.core.origin];
   const notComputed = new Map<string | undefined, PlacedProblem>();
   const noteNotComputed = (problem: PlacedProblem): void => {
     if (!notComputed.has(problem.problem.about)) notComputed.set(problem.problem.about, problem);
   };
   environment.notComputed.forEach(noteNotComputed);
-  for (const { reading } of channels) {
+  for (const { reading } of noted) {
     if (reading.origin.length > 0) inherited.push(...reading.origin);
     if (reading.notComputed.length > 0) reading.notComputed.forEach(noteNotComputed);
   }

@@ -4,6 +4,7 @@ import type { ChannelResult, Guard } from '../checks/channel-result.ts';
 import type { Finding } from '../checks/finding.ts';
 import { judgeChannel, judgingRig } from '../checks/judge.ts';
 import { CHECK_NAMES } from '../checks/list.ts';
+import { partOf } from '../checks/roster.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import { readChannel, stillHolds } from '../rig/channel-reading.ts';
 import type { Entry } from '../rig/entry.ts';
@@ -17,6 +18,8 @@ import { editSnapshot } from '../rig/snapshot.ts';
 export interface JudgedChannel {
   readonly reading: ChannelReading;
   readonly result: ChannelResult;
+  /** What it has to do with others. */
+  readonly part: number;
 }
 
 /** A file that another one uses, directly or through others. */
@@ -82,8 +85,8 @@ export function* evaluating(
     yield channel;
   }
   const complete = channels as readonly JudgedChannel[];
-  const { findings, uses } = yield* judgingRig(environment, complete, guard, previous?.uses);
-  const rig = { environment, channels: complete };
+  const { findings, uses, roster } = yield* judgingRig(environment, complete, guard, previous?.uses);
+  const rig = { environment, channels: complete, roster };
   const rigFindings = guard('accept', () => withAcceptances(findings, rig, accepting), findings);
   return { ...read, channels: complete, rigFindings, uses, accepting };
 }
@@ -99,7 +102,8 @@ export function evaluate(read: ReadText, guard: Guard, today: string, previous?:
 
 function judged(entry: Entry, environment: Environment, accepting: Accepting, guard: Guard): JudgedChannel {
   const reading = readChannel(entry, environment);
-  return { reading, result: acceptedResult(judgeChannel(reading, environment.severities, guard), accepting) };
+  const result = acceptedResult(judgeChannel(reading, environment.severities, guard), accepting);
+  return { reading, result, part: partOf(reading, result) };
 }
 
 /** Marks anew what is accepted of the channels that are kept, a few at a time. */
@@ -107,7 +111,7 @@ function* marking(channels: (JudgedChannel | undefined)[], accepting: Accepting)
   for (const [index, kept] of channels.entries()) {
     if (index % MARKED_AT_ONCE === MARKED_AT_ONCE - 1) yield undefined;
     const result = kept && acceptedResult(kept.result, accepting);
-    if (kept && result !== kept.result) channels[index] = { reading: kept.reading, result: result! };
+    if (kept && result !== kept.result) channels[index] = { ...kept, result: result! };
   }
 }
 
