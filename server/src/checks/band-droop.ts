@@ -52,7 +52,7 @@ channels:
             ? [{ place: use.filter.place, message: `\`${use.filter.name || 'filter'}\` takes most of it.` }]
             : []),
         ],
-        figures: { sagDb, atHz: sagAtHz, flatnessDb },
+        figures: { ...(Number.isFinite(sagDb) ? { sagDb } : {}), atHz: sagAtHz, flatnessDb },
         excess: sagDb - flatnessDb,
       },
     ];

@@ -1,6 +1,7 @@
 import { recordedAtHz } from '../chain/arrivals.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { formatHz } from '../quantity/write.ts';
+import type { Source } from '../rig/model.ts';
 import type { ChannelView, Said } from './check.ts';
 import { SAYS_NOTHING } from './check.ts';
 import { filtersAhead, standingOnStage } from './standing.ts';
@@ -16,15 +17,15 @@ export interface Fold {
 
 /** Everything that folds into the band above the limit, by source and stage; levels known or assumed, as asked. */
 export function foldsOf({ arrivals, chain }: ChannelView, levelKnown: boolean): readonly Fold[] {
-  let folds: Fold[] | undefined;
   // A filter that was not understood may well take off what seems to be left.
   if (!chain.understood) return SAYS_NOTHING;
+  let bySource: Map<Source, GatheredFold[]> | undefined;
   for (const arrival of arrivals) {
     if (!arrival.overLimit || arrival.levelKnown !== levelKnown) continue;
-    folds ??= [];
-    addTo(folds, arrival);
+    bySource ??= new Map();
+    addTo(bySource, arrival);
   }
-  return folds ?? SAYS_NOTHING;
+  return bySource ? [...bySource.values()].flat() : SAYS_NOTHING;
 }
 
 /** Whether anything that is declared, level and all, folds into the band above the limit. */
@@ -32,19 +33,26 @@ export function hasFoldInBand(view: Pick<ChannelView, 'chain' | 'arrivals'>): bo
   return view.chain.understood && view.arrivals.some((arrival) => arrival.overLimit && arrival.levelKnown);
 }
 
-function addTo(folds: Fold[], arrival: Arrival): void {
+/** A fold while what belongs to it is gathered: a source may send thousands of lines into the band. */
+interface GatheredFold {
+  worst: Arrival;
+  readonly others: Arrival[];
+  readonly stage: number;
+}
+
+function addTo(bySource: Map<Source, GatheredFold[]>, arrival: Arrival): void {
   const stage = arrival.foldsAtStage ?? 1;
-  const index = folds.findIndex(({ worst, stage: other }) => worst.source === arrival.source && other === stage);
-  const known = folds[index];
+  const ofSource = bySource.get(arrival.source);
+  const known = ofSource?.find((fold) => fold.stage === stage);
   if (!known) {
-    folds.push({ worst: arrival, others: [], stage });
+    const fold: GatheredFold = { worst: arrival, others: [], stage };
+    if (ofSource) ofSource.push(fold);
+    else bySource.set(arrival.source, [fold]);
     return;
   }
-  const { worst, others } = known;
-  folds[index] =
-    arrival.level > worst.level
-      ? { worst: arrival, others: [...others, worst], stage }
-      : { worst, others: [...others, arrival], stage };
+  const isWorse = arrival.level > known.worst.level;
+  known.others.push(isWorse ? known.worst : arrival);
+  if (isWorse) known.worst = arrival;
 }
 
 /** A fold as a finding: `opening` is said of its worst line, the figures follow. */

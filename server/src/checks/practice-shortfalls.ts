@@ -121,7 +121,7 @@ function passShortfall(
       sagDb < Infinity
         ? `What is at ${formatHz(sagAtHz)} will be recorded ${differenceText(sagDb)} too low`
         : `How high anything up to ${formatHz(highHz)} will be recorded is not promised by the filters`,
-    figures: { sagDb, atHz: sagAtHz, mostDb },
+    figures: { ...(Number.isFinite(sagDb) ? { sagDb } : {}), atHz: sagAtHz, mostDb },
     excess: sagDb - mostDb,
   };
 }

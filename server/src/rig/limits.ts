@@ -21,6 +21,12 @@ export const MOST_ALIAS_EXPANSIONS = 10_000;
 /** Pairs of one map that is merged into another, or into many. */
 export const MOST_MERGED_PAIRS = 1_000;
 
+/**
+ * The largest magnitude of a number in base units, and one over the smallest above 0: a few of them, multiplied by one
+ * another, are still far from what a double can hold.
+ */
+export const MOST_MAGNITUDE = 1e50;
+
 /** Names that a misspelled one is compared with one by one. */
 export const MOST_COMPARED_NAMES = 250;
 

@@ -11,7 +11,7 @@ import {
   alternative,
   given,
   quantityOf,
-  reportTooLarge,
+  reportNotComputable,
   reportValue,
   reportWrongKind,
   withinBounds,
@@ -69,7 +69,7 @@ export function readEnds(reader: Reader, field: Field, measuredUnit?: Unit): End
   const high = inBaseUnits(second, baseUnit);
   const low = first === second ? high : inBaseUnits(first, baseUnit);
   if (!high || !low) {
-    reportTooLarge(reader, field);
+    reportNotComputable(reader, field);
     return undefined;
   }
   const lowValue = written.kind === 'symmetric' ? -peakOf(high) : peakOf(low);

@@ -2,6 +2,7 @@ import { type Quantity, type QuantityProblem, readQuantity, type Scalar } from '
 import { nearest } from '../quantity/spelling.ts';
 import { type Unit, unitsOf } from '../quantity/unit.ts';
 import { clipped, describeNode, type Field, innerPlace, innerSpan, noteNotComputed, placeOf } from './fields.ts';
+import { MOST_MAGNITUDE } from './limits.ts';
 import type { Given } from './model.ts';
 import type { Place } from './place.ts';
 import type { Cure, ProblemName } from './problem.ts';
@@ -183,16 +184,31 @@ export function quantityOf(reader: Reader, field: Field): Quantity | undefined {
   const node = scalarOf(reader, field);
   if (!node) return undefined;
   const read = readQuantity(node.text);
-  if (read.quantity) return read.quantity;
+  if (read.quantity && isComputable(read.quantity)) return read.quantity;
+  if (read.quantity) {
+    reportNotComputable(reader, field);
+    return undefined;
+  }
   reportNotAQuantity(reader, field, node, read.problem);
   return undefined;
+}
+
+/** Whether products of a few such numbers stay finite and above 0. */
+function isComputable(quantity: Quantity): boolean {
+  if (quantity.kind === 'range') return hasMagnitude(quantity.low) && hasMagnitude(quantity.high);
+  return hasMagnitude(quantity.kind === 'symmetric' ? quantity.limit : quantity);
+}
+
+function hasMagnitude({ value }: Scalar): boolean {
+  const size = Math.abs(value);
+  return size === 0 || (size <= MOST_MAGNITUDE && size >= 1 / MOST_MAGNITUDE);
 }
 
 function reportNotAQuantity(reader: Reader, field: Field, node: ScalarNode, problem: QuantityProblem): void {
   const { key, example } = field.row;
   const { suggestion } = problem;
   if (problem.kind === 'not-finite' || problem.kind === 'too-long') {
-    reportTooLarge(reader, field);
+    reportNotComputable(reader, field);
     return;
   }
   const said = clipped(problem.text);
@@ -213,9 +229,9 @@ function reportNotAQuantity(reader: Reader, field: Field, node: ScalarNode, prob
 }
 
 /** Says that a number is none that can be computed with. */
-export function reportTooLarge(reader: Reader, field: Field): void {
+export function reportNotComputable(reader: Reader, field: Field): void {
   const node = field.node as ScalarNode;
-  const message = `${describeNode(node)} is no number that can be computed with: it is too large, or none at all.`;
+  const message = `${describeNode(node)} is no number that can be computed with: it is too large or too small, or none at all.`;
   reportValue(reader, field, 'out-of-range', innerPlace(field.entry, node), message);
 }
 
@@ -225,10 +241,9 @@ export function withinBounds(reader: Reader, field: Field, value: number, bounds
   const tooLow = low !== undefined && (bounds.lowExcluded ? value <= low : value < low);
   const tooHigh = high !== undefined && (bounds.highExcluded ? value >= high : value > high);
   if (!tooLow && !tooHigh && Number.isFinite(value)) return true;
-  const suffix = unit ? ` ${baseSymbol(unit)}` : '';
   const limit = tooHigh
-    ? `${bounds.highExcluded ? 'below' : 'at most'} ${high}${suffix}`
-    : `${bounds.lowExcluded ? 'above' : 'at least'} ${low ?? 0}${suffix}`;
+    ? `${bounds.highExcluded ? 'below' : 'at most'} ${boundText(high ?? 0, unit)}`
+    : `${bounds.lowExcluded ? 'above' : 'at least'} ${boundText(low ?? 0, unit)}`;
   const { node } = field;
   const place = node.kind === 'scalar' ? innerPlace(field.entry, node) : placeOf(field.entry, node);
   const message = `\`${field.row.key}\` must be ${limit}; here stands ${describeNode(node)}.`;
@@ -236,6 +251,9 @@ export function withinBounds(reader: Reader, field: Field, value: number, bounds
   return false;
 }
 
-function baseSymbol(unit: Unit): string {
-  return unitsOf(unit.dimension).find(({ factor }) => factor === 1)?.symbol ?? unit.symbol;
+/** A bound in the base unit, or in the given one where the base unit has no symbol: 1 is 100 %. */
+function boundText(bound: number, unit: Unit | undefined): string {
+  if (!unit) return String(bound);
+  const base = unitsOf(unit.dimension).find(({ factor }) => factor === 1);
+  return base ? `${bound} ${base.symbol}` : `${bound / unit.factor} ${unit.symbol}`;
 }

@@ -20,7 +20,7 @@ export function plainMessage({ code, message }: YAMLParseError): string {
     case 'KEY_OVER_1024_CHARS':
       return 'This key is longer than 1,024 characters.';
     case 'MULTILINE_IMPLICIT_KEY':
-      return 'A key stands on one line, with its colon. Is a colon or a closing quote missing?';
+      return 'A key stands on one line, with its colon: a colon or a closing quote may be missing.';
     case 'MULTIPLE_ANCHORS':
       return 'A value can have one anchor only.';
     case 'MULTIPLE_TAGS':
@@ -80,5 +80,5 @@ function unexpectedMessage(message: string): string {
   if (message.includes('Unexpected flow-seq-end') || message.includes('Unexpected flow-map-end')) {
     return 'This bracket closes nothing.';
   }
-  return "This can't stand here: is a quote, a comma or a colon missing before it?";
+  return "This can't stand here: a quote, a comma or a colon may be missing before it.";
 }
