@@ -46,3 +46,35 @@ export const TWO_CHANNELS = `${FAN}
     fold-limit: -80 dBFS
     peak: 40 g
 `;
+
+/** What else a chain has: samples left out in a pattern, noise, and channels that are compared. */
+export const WHOLE_CHAIN = `rig: Tower sway, north leg
+digitizers:
+  logger: { bits: 16, full-scale: ±1 V, noise: 40 uV }
+filters:
+  card: { response: elliptic, order: 8, ripple: 0.1 dB, stopband: 80 dB, pass-edge: 42 Hz }
+  gentle: { response: bessel, order: 2, cutoff: 40 Hz }
+sensors:
+  servo: { measures: acceleration, sensitivity: 1 V/g, noise: 2 ug/rtHz, resonance: 400 Hz }
+sources:
+  sway: { frequency: 13 Hz, level: 0.2 g, wanted: true }
+groups:
+  leg: { within: 5 deg, up-to: 20 Hz }
+defaults: { sensor: servo, digitizer: logger, undeclared: -60 dBFS }
+channels:
+  strut:
+    rate: 100 Hz
+    filter: card
+    band: 1 Hz .. 40 Hz
+    pattern: { of: 10, take: [0, 1, 2, 3, 4, 5, 6] }
+  top:
+    rate: 200 Hz
+    filter: card
+    band: 1 Hz .. 40 Hz
+    group: leg
+  base:
+    rate: 200 Hz
+    filter: gentle
+    band: 1 Hz .. 10 Hz
+    group: leg
+`;

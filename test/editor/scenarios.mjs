@@ -17,7 +17,7 @@ import {
   waitForSquiggles,
   webview,
 } from './editor-page.mjs';
-import { FAN, FAN_RATE, TWO_CHANNELS } from './rigs.mjs';
+import { FAN, FAN_RATE, TWO_CHANNELS, WHOLE_CHAIN } from './rigs.mjs';
 
 const PICTURE = 'img[src^="data:image/svg+xml;base64,"]';
 
@@ -31,6 +31,7 @@ export const files = {
   'completion.rig.yaml': { text: FAN },
   'fix-every.rig.yaml': { text: TWO_CHANNELS },
   'restart.rig.yaml': { text: FAN },
+  'whole-chain.rig.yaml': { text: WHOLE_CHAIN },
 };
 
 async function findingsUnderTheRightWord({ page }) {
@@ -65,10 +66,28 @@ async function hoverShowsThePicture({ page, shoot }) {
   // On the channel's name no finding stands above the picture.
   await (await hoverOver(page, channelName(page))).locator(PICTURE).waitFor();
   await shoot('hover-light');
+  await page.keyboard.press('Escape');
+  await wholeChainIsShown(page, shoot);
 }
 
-function channelName(page) {
-  return page.locator('.editor-group-container.active .view-line span', { hasText: /^bearing-drive-end$/ }).last();
+/** Images of a pattern on the map, the noise in the band, and a channel that does not go with its group. */
+async function wholeChainIsShown(page, shoot) {
+  await openFile(page, 'whole-chain.rig.yaml');
+  await waitForSquiggles(page, 'error', 1);
+  await (await hoverOver(page, channelName(page, 'strut'))).locator(PICTURE).waitFor();
+  await shoot('pattern-map');
+  await page.keyboard.press('Escape');
+  const hover = await hoverOver(page, channelName(page, 'top'));
+  await hover.locator('table', { hasText: 'sensor' }).first().scrollIntoViewIfNeeded();
+  await shoot('noise-budget');
+  await page.keyboard.press('Escape');
+  const late = page.locator('.editor-group-container.active .view-line span', { hasText: /^leg$/ }).last();
+  await hoverOver(page, late);
+  await shoot('group-finding');
+}
+
+function channelName(page, name = 'bearing-drive-end') {
+  return page.locator('.editor-group-container.active .view-line span', { hasText: new RegExp(`^${name}$`) }).last();
 }
 
 async function findingsNameOpensItsPage({ page, shoot }) {
@@ -139,7 +158,7 @@ async function fixEveryChannel({ page }) {
 
 async function newFileFromSample({ page }) {
   await runCommand(page, 'Ratewright: New rig file from sample');
-  const sample = page.locator('.quick-input-list .monaco-list-row').first();
+  const sample = page.locator('.quick-input-list .monaco-list-row', { hasText: /fan/i }).first();
   await sample.waitFor();
   await sample.click();
   await page.locator('.tab.active', { hasText: 'Untitled-1' }).waitFor();
