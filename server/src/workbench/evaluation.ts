@@ -123,9 +123,12 @@ function reuse(environment: Environment, previous: Evaluation | undefined): (Jud
   const channels = new Array<JudgedChannel | undefined>(entries.length).fill(undefined);
   if (!previous || previous.environment.severities !== environment.severities) return channels;
   const before = previous.environment.channelEntries;
+  // Nothing that they share has changed: only an alias may mean something else for standing elsewhere.
+  const isSameCore = environment.core === previous.environment.core;
   const keep = (index: number, beforeIndex: number): void => {
     const old = previous.channels[beforeIndex]!;
-    if (stillHolds(old.reading, environment)) channels[index] = old;
+    const holds = isSameCore && entries[index]!.aliases.length === 0;
+    if (holds || stillHolds(old.reading, environment)) channels[index] = old;
   };
   let head = 0;
   while (head < entries.length && entries[head] === before[head]) {
