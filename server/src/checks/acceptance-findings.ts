@@ -25,6 +25,8 @@ export function withAcceptances(
   const marked = accepted(findings, accepting);
   const met = new Set(marked.acceptances);
   for (const { result } of channels) if (result.acceptances) for (const one of result.acceptances) met.add(one);
+  // What is accepted may be found once the files are read that this one uses.
+  const isAllRead = environment.core.scope.knowsAllNames;
   const ranges = checksOnRanges(roster.ranged);
   const said: Finding[] = [];
   const add = (page: CheckPage, acceptance: Acceptance, one: SaidOfRig): void => {
@@ -36,7 +38,7 @@ export function withAcceptances(
     const { until, on, finding } = acceptance;
     if (acceptance.reason !== '' && met.has(acceptance) && until && hasExpired(acceptance, accepting)) {
       add(acceptanceExpired, acceptance, saidOfExpired(acceptance, until));
-    } else if (!met.has(acceptance) || acceptance.reason === '') {
+    } else if (acceptance.reason === '' || (!met.has(acceptance) && isAllRead)) {
       add(acceptanceIdle, acceptance, saidOfIdle(acceptance, on !== undefined && ranges.has(finding)));
     }
   }
