@@ -2,7 +2,7 @@ import type { Chain } from '../chain/model.ts';
 import type { ChannelReading } from '../rig/channel-reading.ts';
 import type { Environment } from '../rig/environment.ts';
 import type { Channel } from '../rig/model.ts';
-import { type NameUses, NO_USES, nameUses } from '../rig/name-uses.ts';
+import { countingNames, type NameUses, NO_USES } from '../rig/name-uses.ts';
 import type { PlacedProblem } from '../rig/placed-problem.ts';
 import { rigProblems } from '../rig/rig-problems.ts';
 import { unusedNames } from '../rig/unused-names.ts';
@@ -124,7 +124,7 @@ export function* judgingRig(
   const addProblem = (problem: PlacedProblem): void => add(problem.problem.name, 'error', [saidOfThing(problem)]);
   guard('document', () => rigProblems(environment, channels, roster.noted), SAYS_NOTHING).forEach(addProblem);
   yield undefined;
-  const uses = guard('unused-name', () => nameUses(channels, before), NO_USES);
+  const uses = yield* countingNames(channels, before);
   guard('unused-name', () => unusedNames(environment, uses), SAYS_NOTHING).forEach(addProblem);
   yield undefined;
   for (const { name, severity, run } of RIG_FOLDS) {

@@ -24,10 +24,25 @@ type Changes = Map<ThingKind, Map<string, number>>;
  *   gives what counting all would give, in a thousandth of the time
  */
 export function nameUses(channels: readonly KnownChannel[], before: NameUses): NameUses {
-  return { channels, counts: changed(before.counts, changesBetween(before.channels, channels)) };
+  const steps = countingNames(channels, before);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
 }
 
-function changesBetween(before: readonly KnownChannel[], after: readonly KnownChannel[]): Changes {
+/** The same, yielding between one piece of work and the next: an edit of what all channels use has all of them looked at. */
+export function* countingNames(channels: readonly KnownChannel[], before: NameUses): Generator<undefined, NameUses> {
+  return { channels, counts: changed(before.counts, yield* changesBetween(before.channels, channels)) };
+}
+
+/** Channels that are looked at in one piece. */
+const AT_ONCE = 1_000;
+
+function* changesBetween(
+  before: readonly KnownChannel[],
+  after: readonly KnownChannel[],
+): Generator<undefined, Changes> {
   const most = Math.min(before.length, after.length);
   let head = 0;
   while (head < most && before[head] === after[head]) head++;
@@ -36,6 +51,7 @@ function changesBetween(before: readonly KnownChannel[], after: readonly KnownCh
   const changes: Changes = new Map();
   const end = Math.max(before.length, after.length) - tail;
   for (let index = head; index < end; index++) {
+    if ((index - head) % AT_ONCE === AT_ONCE - 1) yield undefined;
     const removed = index < before.length - tail ? before[index]!.reading.dependencies.lookups : NOTHING;
     const added = index < after.length - tail ? after[index]!.reading.dependencies.lookups : NOTHING;
     // Where a thing that all channels use is edited, all of them are read again, and look up what they did before.

@@ -76,7 +76,7 @@ export function* evaluating(
 ): Generator<JudgedChannel | undefined, Evaluation> {
   const { environment } = read;
   const accepting = acceptingOn(environment.acceptances, today, previous?.accepting);
-  const channels = reuse(environment, previous);
+  const channels = yield* reusing(environment, previous);
   yield undefined;
   if (accepting !== previous?.accepting) yield* marking(channels, accepting);
   for (const index of missing(channels, near ? environment.channelEntries.indexOf(near) : 0)) {
@@ -116,9 +116,13 @@ function* marking(channels: (JudgedChannel | undefined)[], accepting: Accepting)
 }
 
 const MARKED_AT_ONCE = 256;
+const REUSED_AT_ONCE = 2_000;
 
-/** What still holds of the channels before, at the places they have now. */
-function reuse(environment: Environment, previous: Evaluation | undefined): (JudgedChannel | undefined)[] {
+/** What still holds of the channels before, at the places they have now; looked at some at a time. */
+function* reusing(
+  environment: Environment,
+  previous: Evaluation | undefined,
+): Generator<undefined, (JudgedChannel | undefined)[]> {
   const entries = environment.channelEntries;
   const channels = new Array<JudgedChannel | undefined>(entries.length).fill(undefined);
   if (!previous || previous.environment.severities !== environment.severities) return channels;
@@ -134,12 +138,14 @@ function reuse(environment: Environment, previous: Evaluation | undefined): (Jud
   while (head < entries.length && entries[head] === before[head]) {
     keep(head, head);
     head++;
+    if (head % REUSED_AT_ONCE === 0) yield undefined;
   }
   let tail = 0;
   const longestTail = Math.min(entries.length, before.length) - head;
   while (tail < longestTail && entries[entries.length - 1 - tail] === before[before.length - 1 - tail]) {
     keep(entries.length - 1 - tail, before.length - 1 - tail);
     tail++;
+    if (tail % REUSED_AT_ONCE === 0) yield undefined;
   }
   const moved = new Map<Entry, number>();
   for (let index = head; index < before.length - tail; index++) moved.set(before[index]!, index);
@@ -150,9 +156,17 @@ function reuse(environment: Environment, previous: Evaluation | undefined): (Jud
   return channels;
 }
 
-/** The places that are still empty, those nearest to `middle` first. */
+/** The places that are still empty, those nearest to `middle` first; of two as near, the one ahead. */
 function missing(channels: readonly (JudgedChannel | undefined)[], middle: number): readonly number[] {
   const empty: number[] = [];
   for (let index = 0; index < channels.length; index++) if (!channels[index]) empty.push(index);
-  return empty.sort((a, b) => Math.abs(a - middle) - Math.abs(b - middle) || a - b);
+  let above = empty.findIndex((index) => index >= middle);
+  if (above < 0) above = empty.length;
+  let below = above - 1;
+  const nearest: number[] = [];
+  while (nearest.length < empty.length) {
+    const isAbove = below < 0 || (above < empty.length && empty[above]! - middle < middle - empty[below]!);
+    nearest.push(isAbove ? empty[above++]! : empty[below--]!);
+  }
+  return nearest;
 }
