@@ -83,3 +83,19 @@ channels:
       separate: 3 Hz
   c: { then: [{ decimate: 2 }], spectrum: { resolution: 10 Hz, overlap: 50 %, averages: 40 } }
 `;
+
+/** Noise from everything that can make it, too much of each. */
+export const NOISE = `rig: Noise
+digitizers: { d: { bits: 10, full-scale: ±10 V, noise: 2 mV, jitter: 1 us } }
+filters: { card: { response: rc, order: 1, corner: 2 kHz } }
+sensors: { stud: { sensitivity: 100 mV/g, resonance: 20 kHz, noise: 30 ug/rtHz } }
+sources:
+  hiss: { noise: 300 uV/rtHz, spans: 3 kHz .. 40 kHz }
+  rumble: { noise: 1 mg/rtHz, spans: 1 Hz .. 90 Hz }
+defaults: { digitizer: d, rate: 10 kHz, band: 1 Hz .. 1 kHz, sensor: stud, resolve: 50 mg, peak: 40 g }
+channels:
+  bare: { hears: { rumble: none } }
+  filtered:
+    filter: card
+    then: [{ decimate: 4 }]
+`;

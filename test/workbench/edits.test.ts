@@ -6,7 +6,7 @@ import { runs } from '../tools/runs.ts';
 import { EXTRACT_FAN, SAMPLES } from '../tools/samples.ts';
 import { TODAY } from '../tools/today.ts';
 import { describeFindings, evaluated, strictWorkbench } from './describe-findings.ts';
-import { ACCEPTED, RANGES, SPECTRA, TIMED } from './edited-rigs.ts';
+import { ACCEPTED, NOISE, RANGES, SPECTRA, TIMED } from './edited-rigs.ts';
 
 const URI = 'file:///edited.rig.yaml';
 const TEXTS = [
@@ -14,6 +14,7 @@ const TEXTS = [
   EXTRACT_FAN,
   TIMED,
   SPECTRA,
+  NOISE,
   generatedRig(3, 'flow'),
   generatedRig(3, 'json'),
   RANGES,
