@@ -171,6 +171,38 @@ describe('keeping every M-th sample', () => {
   });
 });
 
+describe('an oversampling converter and a step behind it', () => {
+  const average = digitalResponse({ response: 'moving-average', length: 64, tolerance: 0, passes: 1 }, 256_000);
+  const tidy = kaiser(400, 600, 60, 4000);
+  const path: NoisePath = {
+    ratesHz: [256_000, 4000, 1000],
+    responses: [[singlePole(50_000)], [average], [tidy], []],
+    sensor: FLAT,
+  };
+  const band = baseband(50, 300);
+  const spans = { lowHz: 0, highHz: 1_000_000 };
+
+  it('leave what narrow bands followed one by one add up to', () => {
+    const { nativeHz, foldedHz } = boundedOf(path, band, WIRING, spans);
+    const expected = summed(path, band, spans, 400_000);
+    expectWithin(nativeHz, expected.nativeHz, 1e-3);
+    expectWithin(foldedHz, expected.foldedHz, 1e-3);
+  });
+
+  it('bring the same from every zone that is alike: a hundred times the zones take no more work', () => {
+    const first = counted(average);
+    const counting = { ...path, responses: [[], [first.response], [tidy], []] };
+    const askedFor = (highHz: number): number => {
+      const before = first.asked();
+      boundedOf(counting, band, WIRING, { lowHz: 0, highHz });
+      return first.asked() - before;
+    };
+    const few = askedFor(256_000);
+    expect(few).toBeGreaterThan(100);
+    expect(askedFor(25_600_000)).toBeLessThan(2 * few);
+  });
+});
+
 describe('noise without end', () => {
   const path = (filters: readonly Response[]): NoisePath => ({
     ratesHz: [1000],

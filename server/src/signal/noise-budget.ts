@@ -1,6 +1,7 @@
 import { foldThrough } from './folding.ts';
 import { type FrequencyRange, merged, within, without } from './frequency-range.ts';
 import { landedBandwidth, type NoiseFold, noiseFold } from './noise-fold.ts';
+import type { Passing } from './noise-stretch.ts';
 import type { Response } from './response.ts';
 
 /** What noise goes through on the way from a sensor to a record. */
@@ -136,12 +137,12 @@ function approachOf({ ratesHz, responses, sensor }: NoisePath, band: NoiseBand, 
 }
 
 /** The least that the responses take off however high the frequency; `undefined` where what they let through ends. */
-function floorOf(responses: readonly Response[]): number | undefined {
+function floorOf(responses: readonly Passing[]): number | undefined {
   const farDb = takenAbove(responses, FAR_HZ);
   const fartherDb = takenAbove(responses, FARTHER_HZ);
   return fartherDb === Infinity || fartherDb - farDb > LEAST_FALL_DB ? undefined : fartherDb;
 }
 
-function takenAbove(responses: readonly Response[], lowHz: number): number {
+function takenAbove(responses: readonly Passing[], lowHz: number): number {
   return responses.reduce((sum, response) => sum + response.leastDb(lowHz, Infinity), 0);
 }

@@ -1,23 +1,34 @@
 import { type FrequencyRange, within } from './frequency-range.ts';
 import { type Estimate, estimateOver, type Integrand, integralOver, isClose } from './integral.ts';
 import { MinimumHeap } from './minimum-heap.ts';
-import { cutTo, passedPower, type Stretch, sampledInZone, seenBy, unfolded } from './noise-stretch.ts';
-import type { Response } from './response.ts';
+import {
+  cutTo,
+  type Passing,
+  passedPower,
+  type Stretch,
+  sampledInZone,
+  seenBy,
+  trueFrequencyOf,
+  unfolded,
+} from './noise-stretch.ts';
+import { bernsteinFilters, landedOfSmooth } from './noise-zone.ts';
 
 /** Filters and samplings that noise goes through, and where in the record it counts. */
 export interface NoiseChain {
   /** The rate of each sampling, all above 0. */
   readonly ratesHz: readonly number[];
   /** Ahead of each sampling in turn, and last of those behind the last one. */
-  readonly responses: readonly (readonly Response[])[];
+  readonly responses: readonly (readonly Passing[])[];
   /** Ranges of the record's frequencies, apart from one another. */
   readonly landing: readonly FrequencyRange[];
 }
 
-/** A chain whose far zones can be told by their mean. */
+/** A chain whose far zones can be told by their mean, and whose smooth zones by a few figures. */
 export interface NoiseFold extends NoiseChain {
   /** Per sampling, the share of white noise in its record that lands where it counts, after all that follows. */
   readonly shares: readonly number[];
+  /** Per sampling, what lands of each of Bernstein's polynomials over its record. */
+  readonly landed: readonly (readonly number[])[];
 }
 
 /** Zones of a sampling in which every image is followed by itself. */
@@ -35,6 +46,9 @@ const MOST_PARTS = 64;
 /** Octaves above a frequency, after which it is no longer told from infinity. */
 const MOST_OCTAVES = 64;
 
+/** A zone is whole within this. */
+const WHOLE_ROUNDING = 1e-9;
+
 /** Of what white noise would leave, what is not worth following. */
 const SHARE_NEGLIGIBLE = 1e-7;
 
@@ -42,20 +56,31 @@ const SHARE_NEGLIGIBLE = 1e-7;
 export function noiseFold(chain: NoiseChain): NoiseFold {
   const { ratesHz, responses, landing } = chain;
   let shares: readonly number[] = [];
+  let landed: readonly (readonly number[])[] = [];
+  const negligibleHz = SHARE_NEGLIGIBLE * widthOf(landing);
   for (let stage = ratesHz.length - 1; stage >= 0; stage--) {
     const nyquistHz = ratesHz[stage]! / 2;
-    const rest = { ratesHz: ratesHz.slice(stage + 1), responses: responses.slice(stage + 1), landing, shares };
-    const landedHz = landedBandwidth(rest, { lowHz: 0, highHz: nyquistHz }, SHARE_NEGLIGIBLE * widthOf(landing));
-    shares = [landedHz / nyquistHz, ...shares];
+    const [ahead = [], ...later] = responses.slice(stage + 1);
+    const rest = { ratesHz: ratesHz.slice(stage + 1), landing, shares, landed };
+    const own = bernsteinFilters(nyquistHz).map((filter) =>
+      landedBandwidth(
+        { ...rest, responses: [[filter, ...ahead], ...later] },
+        { lowHz: 0, highHz: nyquistHz },
+        negligibleHz,
+      ),
+    );
+    shares = [own.reduce((sum, part) => sum + part, 0) / nyquistHz, ...shares];
+    landed = [own, ...landed];
   }
-  return { ...chain, shares };
+  return { ...chain, shares, landed };
 }
 
 /**
  * What lands of white noise of density 1 that fills a range ahead of the first filter: the power, which is the
  * equivalent bandwidth in Hz.
  *
- * Images are followed one by one in the first 32 zones of each sampling. Above, where the power is smooth over many
+ * Images are followed one by one in the first 32 zones of each sampling, where the power over a zone is no polynomial.
+ * Above, where the power is smooth over many
  * zones, every zone brings the same share: the mean over the zone (the error falls with the square of the zone's
  * number). Where it is not (a resonance, a mask's step) the images are followed after all; where there are too many to
  * be followed (the lobes of an average, without end) an octave brings the share that the one before did.
@@ -106,9 +131,28 @@ function followed(fold: NoiseFold, stretch: Stretch, rateHz: number, negligibleH
   for (let index = 0; index < count; index++) {
     const zone = first + index;
     const inZone = cutTo(stretch, { lowHz: zone * nyquistHz, highHz: (zone + 1) * nyquistHz });
-    sum += landedOf(fold, sampledInZone(inZone, rateHz, zone, responses), negligibleHz);
+    const sampled = sampledInZone(inZone, rateHz, zone, responses);
+    sum += landedOfWhole(fold, inZone, sampled, nyquistHz, negligibleHz) ?? landedOf(fold, sampled, negligibleHz);
   }
   return sum;
+}
+
+/** Of a whole zone in which the power is smooth, by what lands of a few polynomials; `undefined` of any other. */
+function landedOfWhole(
+  fold: NoiseFold,
+  inZone: Stretch,
+  sampled: Stretch,
+  nyquistHz: number,
+  negligibleHz: number,
+): number | undefined {
+  if (inZone.highHz - inZone.lowHz < nyquistHz * (1 - WHOLE_ROUNDING)) return undefined;
+  const power = passedPower(inZone);
+  return landedOfSmooth(
+    (part) => power.at(trueFrequencyOf(sampled, part * nyquistHz)),
+    () => power.bound(inZone.lowHz, inZone.highHz),
+    fold.landed[inZone.views.length - 1]!,
+    negligibleHz,
+  );
 }
 
 /** The same for zones so far up that a share can stand for each; whole multiples of the rate, with what is left over. */

@@ -2,9 +2,12 @@ import type { FrequencyRange } from './frequency-range.ts';
 import type { Integrand } from './integral.ts';
 import type { Response } from './response.ts';
 
+/** What noise goes through: all that is asked is how little it takes off. */
+export type Passing = Pick<Response, 'leastDb'>;
+
 /** What one stage's responses see of a true frequency f: slope f + shift, within one zone of every sampling so far. */
 export interface View {
-  readonly responses: readonly Response[];
+  readonly responses: readonly Passing[];
   readonly slope: 1 | -1;
   readonly shiftHz: number;
 }
@@ -18,8 +21,14 @@ export interface Stretch extends FrequencyRange {
 const POWER_NEPER_PER_DB = Math.LN10 / 10;
 
 /** A stretch before any sampling. */
-export function unfolded(range: FrequencyRange, responses: readonly Response[]): Stretch {
+export function unfolded(range: FrequencyRange, responses: readonly Passing[]): Stretch {
   return { ...range, views: [{ responses, slope: 1, shiftHz: 0 }] };
+}
+
+/** The true frequency that the stage reached sees at a frequency. */
+export function trueFrequencyOf(stretch: Stretch, seenHz: number): number {
+  const { slope, shiftHz } = lastView(stretch);
+  return slope * (seenHz - shiftHz);
 }
 
 /** Where the stage reached has a stretch. */
@@ -32,9 +41,8 @@ export function seenBy(stretch: Stretch): FrequencyRange {
 
 /** The part of a stretch that the stage reached has within a range. */
 export function cutTo(stretch: Stretch, seen: FrequencyRange): Stretch {
-  const { slope, shiftHz } = lastView(stretch);
-  const first = slope * (seen.lowHz - shiftHz);
-  const second = slope * (seen.highHz - shiftHz);
+  const first = trueFrequencyOf(stretch, seen.lowHz);
+  const second = trueFrequencyOf(stretch, seen.highHz);
   return {
     views: stretch.views,
     lowHz: Math.max(stretch.lowHz, Math.min(first, second)),
@@ -43,7 +51,7 @@ export function cutTo(stretch: Stretch, seen: FrequencyRange): Stretch {
 }
 
 /** A stretch, all of it in one zone (from 0) of the sampling at `rateHz`, as the stage after it has it. */
-export function sampledInZone(stretch: Stretch, rateHz: number, zone: number, responses: readonly Response[]): Stretch {
+export function sampledInZone(stretch: Stretch, rateHz: number, zone: number, responses: readonly Passing[]): Stretch {
   const { slope, shiftHz } = lastView(stretch);
   const multipleHz = Math.ceil(zone / 2) * rateHz;
   const view: View =
