@@ -48,6 +48,8 @@ export interface Environment {
   readonly core: Core;
   /** How many anchor-setting entries stand before an entry that follows aliases. */
   readonly epochOf: (entry: Entry) => number;
+  /** What the next reading can grow out of. */
+  readonly sorting: Sorting;
 }
 
 /**
@@ -63,7 +65,8 @@ export function readEnvironment(
   previous?: Environment,
   used: UsedFiles = NO_USED_FILES,
 ): Environment {
-  const sorted = sortEntries(snapshot.entries);
+  const { entries } = snapshot;
+  const sorted = (previous && sortedAsBefore(entries, previous.sorting)) ?? sortEntries(entries);
   const { significant } = sorted;
   const old = previous?.core;
   const unchanged =
@@ -92,7 +95,41 @@ export function readEnvironment(
     channelEntries: sorted.channels,
     core,
     epochOf: epochs.epochOf,
+    sorting: { entries, sorted },
   };
+}
+
+/** The entries of a text, and how they were sorted. */
+interface Sorting {
+  readonly entries: readonly Entry[];
+  readonly sorted: SortedEntries;
+}
+
+/**
+ * The sorting where it is known from before, but for one channel that has kept its name: that is what typing in a
+ * channel makes, and the names of ten thousand others need not be compared for it.
+ */
+function sortedAsBefore(entries: readonly Entry[], before: Sorting): SortedEntries | undefined {
+  const { sorted } = before;
+  if (entries.length !== before.entries.length || sorted.problems.length > 0) return undefined;
+  let first = 0;
+  while (first < entries.length && entries[first] === before.entries[first]) first++;
+  let last = entries.length - 1;
+  while (last > first && entries[last] === before.entries[last]) last--;
+  if (first === entries.length) return sorted;
+  const now = entries[first]!;
+  const old = before.entries[first]!;
+  if (first !== last || now.name !== old.name || !isPlainChannel(now) || !isPlainChannel(old)) return undefined;
+  const channels = [...sorted.channels];
+  const place = channels.indexOf(old);
+  if (place < 0) return undefined;
+  channels[place] = now;
+  return { ...sorted, channels };
+}
+
+/** One that sets no anchor and stands for itself alone. */
+function isPlainChannel({ section, key, name, anchors }: Entry): boolean {
+  return section === 'channels' && key !== undefined && anchors.length === 0 && !name.includes('{');
 }
 
 interface SortedEntries {
