@@ -137,9 +137,13 @@ function remediesAtOne(text: string): number {
   if (!finding) throw new Error('The generated rig has no fold to remedy.');
   let offered = 0;
   const took = median(
-    timesOf(() => {
-      offered = workbench.remedies(URI, finding, () => false).length;
-    }),
+    timesOf(
+      () => {
+        offered = workbench.remedies(URI, finding, () => false).length;
+      },
+      9,
+      8,
+    ),
   );
   if (offered === 0) throw new Error('No remedy was offered.');
   return took;
