@@ -2,6 +2,7 @@ import type { HeardSource, Source } from '../rig/model.ts';
 import { type FoldedPiece, foldHz } from '../signal/folding.ts';
 import { componentsOf } from './components.ts';
 import { cutAtBand } from './cut-piece.ts';
+import { landingIn } from './landing.ts';
 import type { Arrival, Chain, LevelScale, SignalPath } from './model.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
@@ -272,21 +273,4 @@ export function slackOf(piece: FoldedPiece, clockTolerance: number): number {
 /** Where an arrival is recorded at the point of its level. */
 export function recordedAtHz({ atHz }: Arrival, { ratesHz }: Chain): number {
   return ratesHz.reduce(foldHz, atHz);
-}
-
-/** The part of a piece that is recorded within a range, along its true frequency from 0 to 1. */
-function landingIn(
-  piece: FoldedPiece,
-  lowHz: number,
-  highHz: number,
-): { readonly from: number; readonly to: number } | undefined {
-  const { recordedLowHz, recordedHighHz, mirrored } = piece;
-  const start = Math.max(recordedLowHz, lowHz);
-  const end = Math.min(recordedHighHz, highHz);
-  if (start > end) return undefined;
-  const width = recordedHighHz - recordedLowHz;
-  if (width === 0) return { from: 0, to: 1 };
-  return mirrored
-    ? { from: (recordedHighHz - end) / width, to: (recordedHighHz - start) / width }
-    : { from: (start - recordedLowHz) / width, to: (end - recordedLowHz) / width };
 }

@@ -2,9 +2,10 @@ import type { Source } from '../rig/model.ts';
 import { decibels } from '../signal/decibel.ts';
 import type { FoldedPiece } from '../signal/folding.ts';
 import { mismatchRatio } from '../signal/interleave.ts';
-import { patternImages } from '../signal/pattern.ts';
+import { patternImages, type SlotPattern } from '../signal/pattern.ts';
 import { coincidenceOf, foldShifted, partnerOf, shiftHzOf } from '../signal/shifted-folding.ts';
 import { type Component, componentsOf } from './components.ts';
+import { landingIn } from './landing.ts';
 import type { Chain } from './model.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
 import { strongestOf } from './strongest.ts';
@@ -62,17 +63,17 @@ const MOST_PIECES = 16;
 export function imageRulesOf({ channel }: Chain): readonly ImageRule[] {
   const rules: ImageRule[] = [];
   const pattern = channel.pattern?.value;
-  const images = pattern && patternImages(pattern);
+  const images = pattern && gainsOf(pattern);
   if (images?.kind === 'gains') {
-    const { gains, slots } = images;
+    const { slots } = images;
     // The first is the record itself.
     for (const k of images.strongest.slice(1, 1 + MOST_RULES)) {
       const partnerGain = (hz: number, rateHz: number): number => {
         const coincidence = coincidenceOf(hz, rateHz, slots);
         const partner = coincidence === undefined ? k : partnerOf(k, coincidence, slots);
-        return partner === k ? 0 : gains[partner]!;
+        return partner === k ? 0 : images.gains[partner]!;
       };
-      rules.push({ kind: 'pattern', k, turns: slots, ratioAt: () => gains[k]!, partnerGain });
+      rules.push({ kind: 'pattern', k, turns: slots, ratioAt: () => images.gains[k]!, partnerGain });
     }
   }
   const mismatch = channel.digitizer?.interleave?.value;
@@ -83,6 +84,15 @@ export function imageRulesOf({ channel }: Chain): readonly ImageRule[] {
     }
   }
   return rules;
+}
+
+/** A pattern is never changed; of many slots its transform takes long, and every channel that has it asks again. */
+const gains = new WeakMap<SlotPattern, ReturnType<typeof patternImages>>();
+
+function gainsOf(pattern: SlotPattern): ReturnType<typeof patternImages> {
+  const known = gains.get(pattern) ?? patternImages(pattern);
+  gains.set(pattern, known);
+  return known;
 }
 
 /** How far beside what it is an image of, in Hz. */
@@ -97,6 +107,7 @@ export function shiftOf({ k, turns }: ImageRule, { ratesHz }: Chain): number {
 export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
   const rules = imageRulesOf(chain);
   if (rules.length === 0) return NOTHING;
+  const { recordedBand } = chain;
   const found: ImageArrival[] = [];
   let followed = 0;
   for (const heard of chain.channel.heard) {
@@ -108,11 +119,11 @@ export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
         if (highestDb <= chain.foldLimit) continue;
         if (++followed > MOST_FOLLOWED) return found;
         const shiftHz = shiftOf(rule, chain);
+        const added = coincidingGain(rule, component, chain);
         for (const piece of piecesOf(component.lowHz, component.highHz, shiftHz, chain)) {
-          const part = landing(piece, chain);
+          const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
           if (!part) continue;
           const strongest = strongestOf(chain.path, piece, levels.entry === 'sensor', part.from, part.to);
-          const added = coincidingGain(rule, component, chain);
           const level = componentDb + decibels(rule.ratioAt(strongest.atHz) + added) - strongest.attenuationDb;
           if (!(level > chain.foldLimit)) continue;
           found.push({
@@ -151,6 +162,7 @@ const MOST_LIFT_DB = 60;
 
 /** The highest image of the band itself that lands in the band, by each kind of uneven sampling. */
 export function bandImagesOf(chain: Chain): readonly BandImage[] {
+  const { recordedBand } = chain;
   const found = new Map<ImageRule['kind'], BandImage>();
   for (const rule of imageRulesOf(chain)) {
     const { kind, ratioAt } = rule;
@@ -159,7 +171,7 @@ export function bandImagesOf(chain: Chain): readonly BandImage[] {
     if (known && known.lossDb <= lossDb) continue;
     const shiftHz = shiftOf(rule, chain);
     const inBand = piecesOf(chain.bandLowHz, chain.bandHighHz, shiftHz, chain).find((piece) => {
-      const part = landing(piece, chain);
+      const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
       return part !== undefined && part.to > part.from;
     });
     if (!inBand) continue;
@@ -172,19 +184,4 @@ export function bandImagesOf(chain: Chain): readonly BandImage[] {
 /** Pieces of a range as its image is recorded. */
 function piecesOf(lowHz: number, highHz: number, shiftHz: number, { ratesHz }: Chain): readonly FoldedPiece[] {
   return foldShifted(lowHz, highHz, shiftHz, ratesHz, MOST_PIECES).filter(({ collapsed }) => !collapsed);
-}
-
-/** The part of a piece that is recorded in the band, along its true frequency from 0 to 1. */
-function landing(
-  { recordedLowHz, recordedHighHz, mirrored }: FoldedPiece,
-  { recordedBand }: Chain,
-): { readonly from: number; readonly to: number } | undefined {
-  const start = Math.max(recordedLowHz, recordedBand.lowHz);
-  const end = Math.min(recordedHighHz, recordedBand.highHz);
-  if (start > end) return undefined;
-  const width = recordedHighHz - recordedLowHz;
-  if (width === 0) return { from: 0, to: 1 };
-  return mirrored
-    ? { from: (recordedHighHz - end) / width, to: (recordedHighHz - start) / width }
-    : { from: (start - recordedLowHz) / width, to: (end - recordedLowHz) / width };
 }

@@ -67,9 +67,10 @@ const MOST_IMAGE_LINES = 6;
 export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
   const last = chain.stages.at(-1)!;
   const images = imagesShown(chain);
+  const imageArrivals = imageArrivalsOf(chain);
   const marks = [
     ...arrivals.filter(({ level }) => Number.isFinite(level)).map((arrival) => markOf(arrival, chain)),
-    ...imageArrivalsOf(chain).map((image) => markOfImage(image, chain)),
+    ...imageArrivals.map((image) => markOfImage(image, chain)),
   ].sort((a, b) => b.weight - a.weight);
   const shown = marks.slice(0, MOST_MARKS);
   const levels = shown.map(({ level }) => level);
@@ -78,7 +79,7 @@ export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): Alias
   const levelLow = 10 * Math.floor((Math.min(limit, ...levels.filter((level) => level > limit - 60)) - 15) / 10);
   return {
     title: `Alias map of ${chain.channel.name}`,
-    description: describe(chain, arrivals),
+    description: describe(chain, arrivals, imageArrivals.length),
     recordRateHz: last.rateHz,
     nyquistHz: last.nyquistHz,
     ratesHz: chain.ratesHz,
@@ -183,7 +184,7 @@ export function unitOf(chain: Chain): string {
   }
 }
 
-function describe(chain: Chain, arrivals: readonly Arrival[]): string {
+function describe(chain: Chain, arrivals: readonly Arrival[], images: number): string {
   const unit = unitOf(chain);
   const spoiling = arrivals.filter(({ overLimit }) => overLimit).sort((a, b) => b.level - a.level);
   const folded = arrivals.filter((arrival) => arrival.folded && !arrival.overLimit).length;
@@ -197,7 +198,6 @@ function describe(chain: Chain, arrivals: readonly Arrival[]): string {
     );
   const more = spoiling.length > 3 ? [`${spoiling.length - 3} more fold into the band over the limit.`] : [];
   const rest = `${count(folded, 'arrival folds', 'arrivals fold')} without harm, ${count(native, 'arrives', 'arrive')} unfolded.`;
-  const images = imageArrivalsOf(chain).length;
   const uneven =
     images === 0 ? [] : [`Uneven sampling puts ${count(images, 'image', 'images')} into the band over the limit.`];
   return [record, ...told, ...more, ...uneven, rest].join(' ');
