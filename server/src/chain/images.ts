@@ -1,34 +1,23 @@
-import type { Source } from '../rig/model.ts';
+import type { Channel, Source } from '../rig/model.ts';
 import { decibels } from '../signal/decibel.ts';
 import type { FoldedPiece } from '../signal/folding.ts';
-import { mismatchRatio } from '../signal/interleave.ts';
-import { patternImages, type SlotPattern } from '../signal/pattern.ts';
-import { coincidenceOf, foldShifted, partnerOf, shiftHzOf } from '../signal/shifted-folding.ts';
-import { type Component, componentsOf } from './components.ts';
+import { interleaveImages, mismatchRatio } from '../signal/interleave.ts';
+import { type PatternGains, patternImages, type SlotPattern } from '../signal/pattern.ts';
+import { imagesOfRange } from '../signal/pattern-folding.ts';
+import { shiftHzOf } from '../signal/shifted-folding.ts';
+import { LEVEL_ROUNDING_DB } from './arrivals.ts';
+import { componentsOf } from './components.ts';
 import { landingIn } from './landing.ts';
 import type { Chain } from './model.ts';
 import { componentLevel, sourceLevelsOf } from './source-level.ts';
 import { strongestOf } from './strongest.ts';
 
-/**
- * Images that uneven sampling makes: of what arrives at a frequency, another at so many hertz beside it, that much
- * lower.
- */
-export interface ImageRule {
-  readonly kind: 'pattern' | 'interleave';
-  /** It stands k / turns of the first rate above what it is an image of. */
-  readonly k: number;
-  /** Slots of the pattern, or converters. */
-  readonly turns: number;
-  /** Height over the original's, at a true frequency in Hz. */
-  readonly ratioAt: (hz: number) => number;
-  /** What another image of a single tone adds where the two coincide, at worst in phase. */
-  readonly partnerGain: (hz: number, rateHz: number) => number;
-}
+/** What makes images: samples left out in a pattern, or converters that take turns and differ. */
+export type ImageKind = 'pattern' | 'interleave';
 
 /** An image of a component of a source that lands in the band. */
 export interface ImageArrival {
-  readonly kind: ImageRule['kind'];
+  readonly kind: ImageKind;
   readonly source: Source;
   readonly component: string;
   /** Where the original is. */
@@ -41,12 +30,13 @@ export interface ImageArrival {
   /** The true frequency at which that is reached. */
   readonly atHz: number;
   readonly levelKnown: boolean;
+  /** How far above the original it would be, were it not folded. */
   readonly shiftHz: number;
 }
 
 /** An image of the band itself that lands in the band. */
 export interface BandImage {
-  readonly kind: ImageRule['kind'];
+  readonly kind: ImageKind;
   /** What the image loses, dB. */
   readonly lossDb: number;
   readonly shiftHz: number;
@@ -54,50 +44,64 @@ export interface BandImage {
   readonly recordedHighHz: number;
 }
 
-/** Images that are followed; the highest come first. */
-const MOST_RULES = 512;
+/** Pieces of images of one component that are followed, and of all of them; the highest images come first. */
+const MOST_PIECES = 512;
 const MOST_FOLLOWED = 20_000;
-const MOST_PIECES = 16;
 
-/** Every image that the channel's pattern and its digitizer's converters make, the highest of each first. */
-export function imageRulesOf({ channel }: Chain): readonly ImageRule[] {
-  const rules: ImageRule[] = [];
-  const pattern = channel.pattern?.value;
-  const images = pattern && gainsOf(pattern);
-  if (images?.kind === 'gains') {
-    const { slots } = images;
-    // The first is the record itself.
-    for (const k of images.strongest.slice(1, 1 + MOST_RULES)) {
-      const partnerGain = (hz: number, rateHz: number): number => {
-        const coincidence = coincidenceOf(hz, rateHz, slots);
-        const partner = coincidence === undefined ? k : partnerOf(k, coincidence, slots);
-        return partner === k ? 0 : images.gains[partner]!;
-      };
-      rules.push({ kind: 'pattern', k, turns: slots, ratioAt: () => images.gains[k]!, partnerGain });
+/** A sensor's resonance may lift what enters there: what is lower than the limit by more than this can be passed over. */
+const MOST_LIFT_DB = 60;
+
+const NOTHING: readonly never[] = [];
+
+/** Whether a channel is sampled so that anything has images. */
+export function hasImages({ pattern, digitizer }: Channel): boolean {
+  const mismatch = digitizer?.interleave?.value;
+  return pattern !== undefined || (mismatch !== undefined && mismatchRatio(1, mismatch) > 0);
+}
+
+/** A piece of an image of a range, and how high it is over the original. */
+interface ImagePiece {
+  readonly kind: ImageKind;
+  readonly piece: FoldedPiece;
+  readonly shiftHz: number;
+  /** Of what is spread over the range. */
+  readonly spreadDb: number;
+  /** Of a single tone somewhere in it, at worst: where two of its images coincide they add. */
+  readonly toneDb: number;
+}
+
+/** The images of a range; of those that are too many to tell apart nothing is said. */
+function imagePieces(lowHz: number, highHz: number, { channel, ratesHz }: Chain): readonly ImagePiece[] {
+  const [rateHz, ...later] = ratesHz as readonly [number, ...number[]];
+  const pieces: ImagePiece[] = [];
+  const gains = channel.pattern && gainsOf(channel.pattern.value);
+  if (gains) {
+    for (const one of imagesOfRange(lowHz, highHz, [rateHz, ...later], gains, MOST_PIECES)) {
+      if (one.shift === 0 || one.collapsed) continue;
+      const shiftHz = shiftHzOf(one.shift, rateHz, gains.slots);
+      const [spreadDb, toneDb] = [decibels(one.gain), decibels(one.coincidentGain)];
+      pieces.push({ kind: 'pattern', piece: one, shiftHz, spreadDb, toneDb });
     }
   }
   const mismatch = channel.digitizer?.interleave?.value;
-  if (mismatch && (mismatch.gainMismatch > 0 || mismatch.timingMismatchS > 0)) {
-    const ratioAt = (hz: number): number => mismatchRatio(hz, mismatch);
-    for (let k = 1; k < Math.min(mismatch.converters, MOST_RULES); k++) {
-      rules.push({ kind: 'interleave', k, turns: mismatch.converters, ratioAt, partnerGain: () => 0 });
+  if (mismatch) {
+    for (const one of interleaveImages(lowHz, highHz, [rateHz, ...later], mismatch, MOST_PIECES)) {
+      if (one.collapsed) continue;
+      const shiftHz = shiftHzOf(one.shift, rateHz, mismatch.converters);
+      pieces.push({ kind: 'interleave', piece: one, shiftHz, spreadDb: one.imageDb, toneDb: one.imageDb });
     }
   }
-  return rules;
+  return pieces;
 }
 
 /** A pattern is never changed; of many slots its transform takes long, and every channel that has it asks again. */
-const gains = new WeakMap<SlotPattern, ReturnType<typeof patternImages>>();
+const known = new WeakMap<SlotPattern, ReturnType<typeof patternImages>>();
 
-function gainsOf(pattern: SlotPattern): ReturnType<typeof patternImages> {
-  const known = gains.get(pattern) ?? patternImages(pattern);
-  gains.set(pattern, known);
-  return known;
-}
-
-/** How far beside what it is an image of, in Hz. */
-export function shiftOf({ k, turns }: ImageRule, { ratesHz }: Chain): number {
-  return shiftHzOf(k, ratesHz[0]!, turns);
+/** The gains of a pattern's images; `undefined` for a pattern that can't be, of which its reader has told. */
+function gainsOf(pattern: SlotPattern): PatternGains | undefined {
+  const images = known.get(pattern) ?? patternImages(pattern);
+  known.set(pattern, images);
+  return images.kind === 'gains' ? images : undefined;
 }
 
 /**
@@ -105,83 +109,76 @@ export function shiftOf({ k, turns }: ImageRule, { ratesHz }: Chain): number {
  * behind the converter sees an image where it is; what lies before it saw the original.
  */
 export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
-  const rules = imageRulesOf(chain);
-  if (rules.length === 0) return NOTHING;
-  const { recordedBand } = chain;
+  if (!hasImages(chain.channel)) return NOTHING;
+  const { channel, scale, path, foldLimit, recordedBand } = chain;
   const found: ImageArrival[] = [];
   let followed = 0;
-  for (const heard of chain.channel.heard) {
-    const levels = sourceLevelsOf(heard, chain.channel.sensor, chain.scale);
+  for (const heard of channel.heard) {
+    const levels = sourceLevelsOf(heard, channel.sensor, scale);
     for (const component of componentsOf(heard.source)) {
       const componentDb = componentLevel(levels, component);
-      for (const rule of rules) {
-        const highestDb = componentDb + decibels(rule.ratioAt(component.highHz)) + MOST_LIFT_DB;
-        if (highestDb <= chain.foldLimit) continue;
+      for (const { kind, piece, shiftHz, spreadDb, toneDb } of imagePieces(component.lowHz, component.highHz, chain)) {
+        const imageDb = componentDb + (component.nominalHz === undefined ? spreadDb : toneDb);
+        if (imageDb + MOST_LIFT_DB <= foldLimit) continue;
         if (++followed > MOST_FOLLOWED) return found;
-        const shiftHz = shiftOf(rule, chain);
-        const added = coincidingGain(rule, component, chain);
-        for (const piece of piecesOf(component.lowHz, component.highHz, shiftHz, chain)) {
-          const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
-          if (!part) continue;
-          const strongest = strongestOf(chain.path, piece, levels.entry === 'sensor', part.from, part.to);
-          const level = componentDb + decibels(rule.ratioAt(strongest.atHz) + added) - strongest.attenuationDb;
-          if (!(level > chain.foldLimit)) continue;
-          found.push({
-            kind: rule.kind,
-            source: heard.source,
-            component: component.label,
-            trueLowHz: piece.trueLowHz,
-            trueHighHz: piece.trueHighHz,
-            recordedLowHz: piece.recordedLowHz,
-            recordedHighHz: piece.recordedHighHz,
-            level,
-            atHz: strongest.atHz,
-            levelKnown: levels.known,
-            shiftHz,
-          });
-        }
+        const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
+        if (!part) continue;
+        const { attenuationDb, atHz } = strongestOf(path, piece, levels.entry === 'sensor', part.from, part.to);
+        const level = imageDb - attenuationDb;
+        if (!(level > foldLimit + LEVEL_ROUNDING_DB)) continue;
+        const { trueLowHz, trueHighHz, recordedLowHz, recordedHighHz } = piece;
+        const places = { trueLowHz, trueHighHz, recordedLowHz, recordedHighHz };
+        const levelKnown = levels.known;
+        found.push({
+          kind,
+          source: heard.source,
+          component: component.label,
+          ...places,
+          level,
+          atHz,
+          levelKnown,
+          shiftHz,
+        });
       }
     }
   }
   return found;
 }
 
-/** What a second image adds where a single tone may stand at a place where two of its own images coincide. */
-function coincidingGain(rule: ImageRule, { lowHz, highHz, nominalHz }: Component, { ratesHz }: Chain): number {
-  if (nominalHz === undefined) return 0;
-  const halfSpacingHz = ratesHz[0]! / (2 * rule.turns);
-  const nearestHz = Math.round(nominalHz / halfSpacingHz) * halfSpacingHz;
-  const isWithin = nearestHz >= lowHz * (1 - 1e-9) && nearestHz <= highHz * (1 + 1e-9);
-  return isWithin ? rule.partnerGain(nearestHz, ratesHz[0]!) : 0;
-}
-
-const NOTHING: readonly never[] = [];
-
-/** A sensor's resonance may lift what enters there: what is lower than the limit by more than this can be passed over. */
-const MOST_LIFT_DB = 60;
-
 /** The highest image of the band itself that lands in the band, by each kind of uneven sampling. */
 export function bandImagesOf(chain: Chain): readonly BandImage[] {
-  const { recordedBand } = chain;
-  const found = new Map<ImageRule['kind'], BandImage>();
-  for (const rule of imageRulesOf(chain)) {
-    const { kind, ratioAt } = rule;
-    const lossDb = -decibels(ratioAt(chain.bandHighHz));
-    const known = found.get(kind);
-    if (known && known.lossDb <= lossDb) continue;
-    const shiftHz = shiftOf(rule, chain);
-    const inBand = piecesOf(chain.bandLowHz, chain.bandHighHz, shiftHz, chain).find((piece) => {
-      const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
-      return part !== undefined && part.to > part.from;
-    });
-    if (!inBand) continue;
-    const { recordedLowHz, recordedHighHz } = inBand;
+  const { bandLowHz, bandHighHz, recordedBand } = chain;
+  const found = new Map<ImageKind, BandImage>();
+  for (const { kind, piece, shiftHz, spreadDb } of imagePieces(bandLowHz, bandHighHz, chain)) {
+    const lossDb = 0 - spreadDb;
+    const other = found.get(kind);
+    if (other && other.lossDb <= lossDb) continue;
+    const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
+    if (!part || part.to <= part.from) continue;
+    const { recordedLowHz, recordedHighHz } = piece;
     found.set(kind, { kind, lossDb, shiftHz, recordedLowHz, recordedHighHz });
   }
   return [...found.values()];
 }
 
-/** Pieces of a range as its image is recorded. */
-function piecesOf(lowHz: number, highHz: number, shiftHz: number, { ratesHz }: Chain): readonly FoldedPiece[] {
-  return foldShifted(lowHz, highHz, shiftHz, ratesHz, MOST_PIECES).filter(({ collapsed }) => !collapsed);
+/** The highest images that uneven sampling makes of anything in the band: how far beside it, and what they lose. */
+export function highestImages(
+  { channel, ratesHz, bandHighHz }: Chain,
+  most: number,
+): readonly { readonly shiftHz: number; readonly lossDb: number }[] {
+  const rateHz = ratesHz[0]!;
+  const gains = channel.pattern && gainsOf(channel.pattern.value);
+  // The first is the record itself.
+  const ofPattern = Array.from(gains?.strongest.slice(1, 1 + most) ?? [], (k) => ({
+    shiftHz: shiftHzOf(k, rateHz, gains!.slots),
+    lossDb: -decibels(gains!.gains[k]!),
+  }));
+  const mismatch = channel.digitizer?.interleave?.value;
+  const lossDb = mismatch ? -decibels(mismatchRatio(bandHighHz, mismatch)) : Infinity;
+  const turns = lossDb < Infinity ? Math.min(mismatch!.converters - 1, most) : 0;
+  const ofTurns = Array.from({ length: turns }, (_, index) => ({
+    shiftHz: shiftHzOf(index + 1, rateHz, mismatch!.converters),
+    lossDb,
+  }));
+  return [...ofPattern, ...ofTurns].sort((first, second) => first.lossDb - second.lossDb).slice(0, most);
 }

@@ -20,8 +20,6 @@ interface OfOneCheck {
 
 const NONE: readonly Acceptance[] = [];
 
-export const ACCEPTS_NOTHING: Accepting = { acceptances: NONE, today: '', byCheck: new Map() };
-
 /** @param before of an earlier text, which is kept where nothing has changed; the answer is the same without */
 export function acceptingOn(acceptances: readonly Acceptance[], today: string, before?: Accepting): Accepting {
   if (before?.acceptances === acceptances && before.today === today) return before;

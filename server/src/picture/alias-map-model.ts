@@ -1,10 +1,9 @@
-import { type ImageArrival, imageArrivalsOf, imageRulesOf, shiftOf } from '../chain/images.ts';
+import { highestImages, type ImageArrival, imageArrivalsOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { formatHz } from '../quantity/write.ts';
-import { decibels } from '../signal/decibel.ts';
 import type { MarkKind } from './arrival-words.ts';
 import { clippedName, kindOf, labelOf } from './arrival-words.ts';
-import type { FoldLine, FoldPoint, LineImage } from './fold-line.ts';
+import type { FoldLine, FoldPoint } from './fold-line.ts';
 import { foldLineOf, pointAt } from './fold-line.ts';
 import type { Stretch } from './stretches.ts';
 import { stretchesOf } from './stretches.ts';
@@ -61,12 +60,13 @@ export interface AliasMap {
 /** More marks than this make a picture that nobody reads; the lightest are left out and counted. */
 const MOST_MARKS = 160;
 const LEAST_FADE_DB = 40;
+/** The lines of more images than a few would be a thicket. */
 const MOST_IMAGE_LINES = 6;
 
 /** What the picture of a channel's alias map shows. */
 export function aliasMapModel(chain: Chain, arrivals: readonly Arrival[]): AliasMap {
   const last = chain.stages.at(-1)!;
-  const images = imagesShown(chain);
+  const images = highestImages(chain, MOST_IMAGE_LINES);
   const imageArrivals = imageArrivalsOf(chain);
   const marks = [
     ...arrivals.filter(({ level }) => Number.isFinite(level)).map((arrival) => markOf(arrival, chain)),
@@ -119,14 +119,6 @@ function markOf(arrival: Arrival, chain: Chain): Mark {
     inBand: arrival.inBand,
     weight: rank + Math.max(-900, Math.min(900, arrival.level)),
   };
-}
-
-/** Of images at the same place the higher one; the lines of more than a few would be a thicket. */
-function imagesShown(chain: Chain): readonly LineImage[] {
-  return imageRulesOf(chain)
-    .map((rule) => ({ shiftHz: shiftOf(rule, chain), lossDb: -decibels(rule.ratioAt(chain.bandHighHz)) }))
-    .sort((first, second) => first.lossDb - second.lossDb)
-    .slice(0, MOST_IMAGE_LINES);
 }
 
 function markOfImage(image: ImageArrival, chain: Chain): Mark {

@@ -1,4 +1,4 @@
-import { imageArrivalsOf, imageRulesOf } from '../chain/images.ts';
+import { hasImages, imageArrivalsOf } from '../chain/images.ts';
 import type { Arrival, Chain } from '../chain/model.ts';
 import { levelKey } from './level-key.ts';
 import { noiseJson } from './noise-json.ts';
@@ -24,7 +24,7 @@ export function mapJson(file: string, chain: Chain, arrivals: readonly Arrival[]
 
 /** What uneven sampling puts into the band over the limit; nothing is said of images where all samples are kept. */
 function imagesKey(chain: Chain): object {
-  if (imageRulesOf(chain).length === 0) return {};
+  if (!hasImages(chain.channel)) return {};
   return {
     images: imageArrivalsOf(chain).map((image) => ({
       source: image.source.name,

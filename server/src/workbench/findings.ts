@@ -1,4 +1,4 @@
-import type { Finding, Severity } from '../checks/finding.ts';
+import type { Finding } from '../checks/finding.ts';
 import { SEVERITIES } from '../checks/finding.ts';
 import { MOST_SYNTAX_FINDINGS } from '../rig/limits.ts';
 import type { Place, PositionRange } from '../rig/place.ts';
@@ -25,8 +25,6 @@ export function located(
   const home = usedTexts.find((text) => text.snapshot.startOf(place.entry) !== undefined);
   return home && { uri: home.uri, range: home.snapshot.rangeOf(place) };
 }
-
-export type SeverityCounts = Readonly<Record<Severity, number>>;
 
 /** Every finding of an evaluation, in no particular order. */
 export function allFindings(evaluation: Evaluation): readonly Finding[] {
