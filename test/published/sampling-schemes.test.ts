@@ -4,7 +4,7 @@ import { type Interleave, interleaveImages, mismatchRatio, offsetLines } from '.
 import { type PatternGains, patternImages } from '../../server/src/signal/pattern.ts';
 import { imagesOf } from '../../server/src/signal/pattern-folding.ts';
 import { leastPulseRateHz } from '../../server/src/signal/pulse-train.ts';
-import { fixedInOrders, foldOrder } from '../../server/src/signal/shaft-angle.ts';
+import { arrivalsOfText } from '../chain/rig.ts';
 
 function gainsOf(slots: number, isTaken: (slot: number) => boolean): PatternGains {
   const taken = Array.from({ length: slots }, (_, slot) => slot).filter(isTaken);
@@ -144,16 +144,15 @@ describe('interleaved converters', () => {
 });
 
 describe('shaft angle and pulses', () => {
-  // Source: common practice of order tracking: N samples a turn hold orders up to N / 2, and a fixed frequency is an
-  // order that moves with speed.
+  // Source: common practice of order tracking: N samples a turn hold orders up to N / 2.
   it('64 samples a turn hold 32 orders; the 33rd is recorded as the 31st', () => {
-    expect(foldOrder(32, 64)).toBe(32);
-    expect(foldOrder(33, 64)).toBe(31);
-  });
-
-  it('50 Hz over 600 .. 3000 rpm sweeps orders 5 down to 1', () => {
-    const steps = { perTurn: 64, speed: { lowRpm: 600, highRpm: 3000 } };
-    expect(fixedInOrders(50, 50, steps)).toMatchObject([{ lowOrder: 1, highOrder: 5, folded: false }]);
+    const [arrival] = arrivalsOfText(`rig: R
+sources: { mesh: { order: 33, speed: 600 rpm, level: 1 V } }
+channels:
+  a: { measures: voltage, rate: 100 kHz, band: 0 Hz .. 1 Hz, then: [{ per-turn: 64, speed: 600 rpm }] }
+`);
+    // 600 rpm are ten turns a second.
+    expect(arrival!.recordedLowHz / 10).toBeCloseTo(31, 9);
   });
 
   // Source: common practice, two samples in each state; 60 teeth at 3000 rpm are 3 kHz, worked by hand.
