@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { digitalResponse } from '../../server/src/signal/digital.ts';
-import { type NoiseBand, noiseBudget, whitePowerDensity } from '../../server/src/signal/noise-budget.ts';
+import { type NoiseBand, noiseBandwidth } from '../../server/src/signal/noise-bandwidth.ts';
 import type { Response } from '../../server/src/signal/response.ts';
 import { sensorResponse } from '../../server/src/signal/sensor-response.ts';
 import { spectrumOf } from '../../server/src/signal/spectrum-fft.ts';
@@ -130,12 +130,14 @@ describe('noise, rehearsed', () => {
       responses.push([]);
     }
     const band: NoiseBand = { lowHz, highHz, sampling: 'baseband' };
-    const input = { enters: { at: 'record', stage: 1 }, powerDensity: whitePowerDensity(1, RATE_HZ) } as const;
-    const share = noiseBudget({ ratesHz, responses, sensor: sensorResponse({ q: 1 }) }, band, [input])[0]!;
+    const path = { ratesHz, responses, sensor: sensorResponse({ q: 1 }) };
+    const share = noiseBandwidth(path, band, { at: 'record', stage: 1 });
+    // Of noise of rms 1, white up to half the rate.
+    const density = 1 / (RATE_HZ / 2);
     if (share.kind === 'unbounded') throw new Error('bounded noise was due');
     // The last power of two of the record, so that the transform has no padding.
     const length = 2 ** Math.floor(Math.log2(record.length));
     const found = powerWithin(record.slice(-length), rateHz, band);
-    expect(Math.abs(10 * Math.log10(found / (share.nativePower + share.foldedPower)))).toBeLessThan(0.3);
+    expect(Math.abs(10 * Math.log10(found / (density * (share.nativeHz + share.foldedHz))))).toBeLessThan(0.3);
   });
 });

@@ -3,7 +3,7 @@ import type { Place } from '../rig/place.ts';
 import { powerDecibels } from '../signal/decibel.ts';
 import { jitterNoiseDb } from '../signal/jitter.ts';
 import { peakOfRms } from '../signal/levels.ts';
-import type { NoiseEntry } from '../signal/noise-budget.ts';
+import type { NoiseEntry } from '../signal/noise-bandwidth.ts';
 import { idealSignalToNoiseDb } from '../signal/quantizer.ts';
 import { impliedEntry, placedLevel } from './level-scale.ts';
 import type { Chain } from './model.ts';

@@ -1,7 +1,7 @@
 import { powerDecibels, powerRatioOf } from '../signal/decibel.ts';
 import type { FrequencyRange } from '../signal/frequency-range.ts';
-import type { NoiseBand, NoiseBandwidth, NoiseEntry } from '../signal/noise-budget.ts';
-import { noiseBandwidth } from '../signal/noise-budget.ts';
+import type { NoiseBand, NoiseBandwidth, NoiseEntry } from '../signal/noise-bandwidth.ts';
+import { noiseBandwidth } from '../signal/noise-bandwidth.ts';
 import type { Chain } from './model.ts';
 import { declaresNoise, type NoiseInput, noiseInputs } from './noise-inputs.ts';
 import { type NoteKind, note, notesOn } from './path-notes.ts';

@@ -8,9 +8,7 @@ import {
   type NoiseEntry,
   type NoisePath,
   noiseBandwidth,
-  noiseBudget,
-  whitePowerDensity,
-} from '../../server/src/signal/noise-budget.ts';
+} from '../../server/src/signal/noise-bandwidth.ts';
 import type { Response } from '../../server/src/signal/response.ts';
 import { sensorResponse } from '../../server/src/signal/sensor-response.ts';
 import { runs } from '../tools/runs.ts';
@@ -139,17 +137,14 @@ describe('noise that is all recorded', () => {
 describe('keeping every M-th sample', () => {
   it('keeps the variance of white noise and raises its density M-fold', () => {
     const path = { ratesHz: [1000, 250], responses: [[], [], []], sensor: FLAT };
-    const density = whitePowerDensity(3, 1000);
-    expect(density).toBeCloseTo(9 / 500, 12);
+    // Of noise of rms 3, white up to half the rate.
+    const density = 9 / 500;
     const enters: NoiseEntry = { at: 'record', stage: 1 };
-    const [whole, part] = [baseband(0, 125), baseband(20, 70)].map(
-      (band) => noiseBudget(path, band, [{ enters, powerDensity: density }])[0]!,
-    );
-    expect(whole).toMatchObject({ kind: 'bounded' });
-    if (whole?.kind !== 'bounded' || part?.kind !== 'bounded') throw new Error('bounded noise was due');
-    expectWithin(whole.nativePower, 9 / 4, 1e-9);
-    expectWithin(whole.foldedPower, (9 * 3) / 4, 1e-9);
-    expectWithin(part.nativePower + part.foldedPower, 50 * 4 * density, 1e-9);
+    const whole = boundedOf(path, baseband(0, 125), enters);
+    const part = boundedOf(path, baseband(20, 70), enters);
+    expectWithin(density * whole.nativeHz, 9 / 4, 1e-9);
+    expectWithin(density * whole.foldedHz, (9 * 3) / 4, 1e-9);
+    expectWithin(part.nativeHz + part.foldedHz, 50 * 4, 1e-9);
   });
 
   it('does not touch noise that enters in the last record', () => {
@@ -216,9 +211,6 @@ describe('noise without end', () => {
       nativeHz: 200,
       floorDb: 0,
     });
-    expect(noiseBudget(path([]), baseband(0, 200), [{ enters: WIRING, powerDensity: 4 }])).toEqual([
-      { kind: 'unbounded', nativePower: 800, floorDb: 0 },
-    ]);
   });
 
   it('is so behind a filter with a floor, and says where the floor is', () => {
@@ -330,20 +322,15 @@ describe('any path', () => {
     expect(folded).toBeGreaterThan(runs(200) / 2);
   });
 
-  it('is worked out in a few thousand steps, and only once for inputs that come in alike', () => {
+  it('is worked out in a few thousand steps', () => {
     const first = counted(butterworth(8, 10_000));
     const second = counted(kaiser(2000, 3200, 90, 25_600));
     const ratesHz = [25_600, 6400];
     const counting = { ratesHz, responses: [[first.response], [second.response], []], sensor: FLAT };
-    noiseBudget(counting, baseband(10, 2500), [{ enters: WIRING, powerDensity: 1 }]);
+    noiseBandwidth(counting, baseband(10, 2500), WIRING);
     const once = [first.asked(), second.asked()];
     expect(Math.max(...once)).toBeGreaterThan(15);
     expect(Math.max(...once)).toBeLessThan(4000);
-    const inputs = Array.from({ length: 64 }, (_, n) => ({ enters: WIRING, powerDensity: n }));
-    const shares = noiseBudget(counting, baseband(10, 2500), inputs);
-    expect([first.asked(), second.asked()]).toEqual(once.map((count) => 2 * count));
-    const density = shares.map((share) => share.nativePower);
-    expectWithin(density[63]!, 63 * density[1]!, 1e-12);
   });
 
   it.each([

@@ -27,14 +27,6 @@ export type NoiseEntry =
   | { readonly at: 'wiring' }
   | { readonly at: 'record'; readonly stage: number };
 
-/** Noise that is white over the range it spans, or over all there is. */
-export interface NoiseInput {
-  readonly enters: NoiseEntry;
-  /** One-sided, in the square of the unit per Hz. */
-  readonly powerDensity: number;
-  readonly spans?: FrequencyRange;
-}
-
 /** What lands in the band of noise of power density 1, as the bandwidths in Hz that would hold as much of it. */
 export type NoiseBandwidth =
   | { readonly kind: 'bounded'; readonly nativeHz: number; readonly foldedHz: number }
@@ -44,40 +36,12 @@ export type NoiseBandwidth =
    */
   | { readonly kind: 'unbounded'; readonly nativeHz: number; readonly floorDb: number };
 
-/** What one input leaves in the band, as the square of its rms, in the square of the unit. */
-export type NoiseShare =
-  | { readonly kind: 'bounded'; readonly nativePower: number; readonly foldedPower: number }
-  | { readonly kind: 'unbounded'; readonly nativePower: number; readonly floorDb: number };
-
 /** Where the fall of a filter is looked at, far above any edge of one. */
 const FAR_HZ = 1e13;
 const FARTHER_HZ = 1e15;
 
 /** Two decades apart: more than the 10 dB a decade under which the integral of a power never ends. */
 const LEAST_FALL_DB = 30;
-
-/** Power density of white noise of this rms over 0 .. rate / 2. */
-export function whitePowerDensity(rms: number, rateHz: number): number {
-  return (rms * rms) / (rateHz / 2);
-}
-
-/** What every input leaves in the band, in the order given. Inputs that come in alike are worked out once. */
-export function noiseBudget(path: NoisePath, band: NoiseBand, inputs: readonly NoiseInput[]): readonly NoiseShare[] {
-  const known = new Map<string, NoiseBandwidth>();
-  return inputs.map(({ enters, powerDensity, spans }) => {
-    const key = JSON.stringify([enters, `${spans?.lowHz} ${spans?.highHz}`]);
-    const bandwidth = known.get(key) ?? noiseBandwidth(path, band, enters, spans);
-    known.set(key, bandwidth);
-    return shareOf(bandwidth, powerDensity);
-  });
-}
-
-function shareOf(bandwidth: NoiseBandwidth, powerDensity: number): NoiseShare {
-  const nativePower = powerDensity * bandwidth.nativeHz;
-  return bandwidth.kind === 'unbounded'
-    ? { kind: 'unbounded', nativePower, floorDb: bandwidth.floorDb }
-    : { kind: 'bounded', nativePower, foldedPower: powerDensity * bandwidth.foldedHz };
-}
 
 /**
  * What lands in the band of noise of power density 1, native (recorded at its true frequency, or, of a band folded on
