@@ -1,5 +1,5 @@
-import type { FoldedPiece, StageInput } from '../signal/folding.ts';
-import { partOf } from './strongest.ts';
+import type { FoldedPiece } from '../signal/folding.ts';
+import { cutTo } from '../signal/shifted-folding.ts';
 
 /** A piece in up to three parts: below a band of true frequencies, inside it, and above. */
 export interface CutPiece {
@@ -27,21 +27,9 @@ export function cutAtBand(piece: FoldedPiece, lowHz: number, highHz: number): Cu
 
 /** The part of a piece between two of its true frequencies. */
 function within(piece: FoldedPiece, lowHz: number, highHz: number): FoldedPiece {
-  const width = piece.trueHighHz - piece.trueLowHz;
-  const from = (lowHz - piece.trueLowHz) / width;
-  const to = (highHz - piece.trueLowHz) / width;
-  const recorded: StageInput = {
-    lowHz: piece.recordedLowHz,
-    highHz: piece.recordedHighHz,
-    reversed: piece.mirrored,
-  };
-  const landed = partOf(recorded, from, to);
-  return {
-    ...piece,
-    trueLowHz: lowHz,
-    trueHighHz: highHz,
-    recordedLowHz: landed.lowHz,
-    recordedHighHz: landed.highHz,
-    inputs: piece.inputs.map((input) => partOf(input, from, to)),
-  };
+  const { trueLowHz, trueHighHz, recordedLowHz, recordedHighHz, mirrored } = piece;
+  const recorded = mirrored
+    ? { lowHz: recordedLowHz + (trueHighHz - highHz), highHz: recordedHighHz - (lowHz - trueLowHz) }
+    : { lowHz: recordedLowHz + (lowHz - trueLowHz), highHz: recordedHighHz - (trueHighHz - highHz) };
+  return { ...cutTo(piece, recorded), trueLowHz: lowHz, trueHighHz: highHz };
 }

@@ -3,7 +3,7 @@ import { decibels } from '../signal/decibel.ts';
 import type { FoldedPiece } from '../signal/folding.ts';
 import { interleaveImages, mismatchRatio } from '../signal/interleave.ts';
 import { type PatternGains, patternImages, type SlotPattern } from '../signal/pattern.ts';
-import { imagesOfRange } from '../signal/pattern-folding.ts';
+import { imagesInBand, imagesOfRange } from '../signal/pattern-folding.ts';
 import { shiftHzOf } from '../signal/shifted-folding.ts';
 import { LEVEL_ROUNDING_DB } from './arrivals.ts';
 import { componentsOf } from './components.ts';
@@ -71,27 +71,39 @@ interface ImagePiece {
 }
 
 /** The images of a range; of those that are too many to tell apart nothing is said. */
-function imagePieces(lowHz: number, highHz: number, { channel, ratesHz }: Chain): readonly ImagePiece[] {
-  const [rateHz, ...later] = ratesHz as readonly [number, ...number[]];
-  const pieces: ImagePiece[] = [];
+function imagePieces(lowHz: number, highHz: number, chain: Chain): readonly ImagePiece[] {
+  return [...patternPieces(lowHz, highHz, chain), ...turnPieces(lowHz, highHz, chain)];
+}
+
+function patternPieces(lowHz: number, highHz: number, { channel, ratesHz }: Chain): readonly ImagePiece[] {
   const gains = channel.pattern && gainsOf(channel.pattern.value);
-  if (gains) {
-    for (const one of imagesOfRange(lowHz, highHz, [rateHz, ...later], gains, MOST_PIECES)) {
-      if (one.shift === 0 || one.collapsed) continue;
-      const shiftHz = shiftHzOf(one.shift, rateHz, gains.slots);
-      const [spreadDb, toneDb] = [decibels(one.gain), decibels(one.coincidentGain)];
-      pieces.push({ kind: 'pattern', piece: one, shiftHz, spreadDb, toneDb });
-    }
-  }
+  if (!gains) return NOTHING;
+  const rates = ratesHz as readonly [number, ...number[]];
+  return imagesOfRange(lowHz, highHz, rates, gains, MOST_PIECES)
+    .filter(({ shift, collapsed }) => shift !== 0 && !collapsed)
+    .map((piece) => ({
+      kind: 'pattern',
+      piece,
+      shiftHz: shiftHzOf(piece.shift, rates[0], gains.slots),
+      spreadDb: decibels(piece.gain),
+      toneDb: decibels(piece.coincidentGain),
+    }));
+}
+
+/** Of converters that take turns. */
+function turnPieces(lowHz: number, highHz: number, { channel, ratesHz }: Chain): readonly ImagePiece[] {
   const mismatch = channel.digitizer?.interleave?.value;
-  if (mismatch) {
-    for (const one of interleaveImages(lowHz, highHz, [rateHz, ...later], mismatch, MOST_PIECES)) {
-      if (one.collapsed) continue;
-      const shiftHz = shiftHzOf(one.shift, rateHz, mismatch.converters);
-      pieces.push({ kind: 'interleave', piece: one, shiftHz, spreadDb: one.imageDb, toneDb: one.imageDb });
-    }
-  }
-  return pieces;
+  if (!mismatch) return NOTHING;
+  const rates = ratesHz as readonly [number, ...number[]];
+  return interleaveImages(lowHz, highHz, rates, mismatch, MOST_PIECES)
+    .filter(({ collapsed }) => !collapsed)
+    .map((piece) => ({
+      kind: 'interleave',
+      piece,
+      shiftHz: shiftHzOf(piece.shift, rates[0], mismatch.converters),
+      spreadDb: piece.imageDb,
+      toneDb: piece.imageDb,
+    }));
 }
 
 /** A pattern is never changed; of many slots its transform takes long, and every channel that has it asks again. */
@@ -145,20 +157,30 @@ export function imageArrivalsOf(chain: Chain): readonly ImageArrival[] {
   return found;
 }
 
-/** The highest image of the band itself that lands in the band, by each kind of uneven sampling. */
+/** The highest image of the band itself that lands in the band, by each kind of uneven sampling, cut to where it does. */
 export function bandImagesOf(chain: Chain): readonly BandImage[] {
-  const { bandLowHz, bandHighHz, recordedBand } = chain;
-  const found = new Map<ImageKind, BandImage>();
-  for (const { kind, piece, shiftHz, spreadDb } of imagePieces(bandLowHz, bandHighHz, chain)) {
-    const lossDb = 0 - spreadDb;
-    const other = found.get(kind);
-    if (other && other.lossDb <= lossDb) continue;
-    const part = landingIn(piece, recordedBand.lowHz, recordedBand.highHz);
-    if (!part || part.to <= part.from) continue;
-    const { recordedLowHz, recordedHighHz } = piece;
-    found.set(kind, { kind, lossDb, shiftHz, recordedLowHz, recordedHighHz });
+  const { channel, ratesHz, bandLowHz, bandHighHz, recordedBand } = chain;
+  const gains = channel.pattern && gainsOf(channel.pattern.value);
+  const rates = ratesHz as readonly [number, ...number[]];
+  const found: BandImage[] = [];
+  // The strongest comes first.
+  const ofPattern = (gains ? imagesInBand(bandLowHz, bandHighHz, rates, gains, MOST_PIECES) : []).find(
+    (piece) => !piece.collapsed && piece.recordedHighHz > piece.recordedLowHz,
+  );
+  if (gains && ofPattern) {
+    const { recordedLowHz, recordedHighHz, gain, shift } = ofPattern;
+    const shiftHz = shiftHzOf(shift, rates[0], gains.slots);
+    found.push({ kind: 'pattern', lossDb: 0 - decibels(gain), shiftHz, recordedLowHz, recordedHighHz });
   }
-  return [...found.values()];
+  for (const { kind, piece, shiftHz, spreadDb } of turnPieces(bandLowHz, bandHighHz, chain)) {
+    const recordedLowHz = Math.max(piece.recordedLowHz, recordedBand.lowHz);
+    const recordedHighHz = Math.min(piece.recordedHighHz, recordedBand.highHz);
+    if (recordedHighHz <= recordedLowHz) continue;
+    // All of them are judged at the whole of the mismatch.
+    found.push({ kind, lossDb: 0 - spreadDb, shiftHz, recordedLowHz, recordedHighHz });
+    break;
+  }
+  return found;
 }
 
 /** The highest images that uneven sampling makes of anything in the band: how far beside it, and what they lose. */

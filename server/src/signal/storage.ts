@@ -46,12 +46,6 @@ export function bytesOfRecords(streams: readonly StoredStream[], records: number
   );
 }
 
-/** How long all channels can be recorded into `roomBytes`, in seconds; `Infinity` where nothing is kept. */
-export function secondsThatFit(streams: readonly StoredStream[], roomBytes: number): number {
-  const rate = bytesPerSecond(streams);
-  return rate > 0 ? roomBytes / rate : Infinity;
-}
-
 function wholeSamples(samples: number): number {
   return Math.floor(samples * (1 + ROUNDING));
 }
