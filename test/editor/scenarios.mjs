@@ -193,6 +193,22 @@ async function killedServerComesBack({ page, editor }) {
   assert.ok(!serverProcesses(editor.folders.extensions).includes(pid), 'another server runs');
 }
 
+/** To be looked at: a finding's own hover, and the map beside the text. */
+async function findingsAndMapInTheDark(page, shoot) {
+  await hoverOver(page, squiggles(page, 'error').first());
+  await shoot('hover-rate-dark');
+  await page.keyboard.press('Escape');
+  await goTo(page, FAN_RATE);
+  await runCommand(page, 'Ratewright: Show alias map');
+  const map = page.locator('.tab', { hasText: 'bearing-drive-end' });
+  await map.waitFor();
+  await webview(page).locator(PICTURE).waitFor();
+  await pointAtNothing(page);
+  await shoot('alias-map-dark');
+  await map.locator('.codicon-close').click();
+  await map.waitFor({ state: 'detached' });
+}
+
 async function picturesFollowTheTheme({ page, shoot }) {
   const seen = new Set();
   await openFile(page, 'extract-fan.rig.yaml');
@@ -210,6 +226,7 @@ async function picturesFollowTheTheme({ page, shoot }) {
     seen.add(await picture.getAttribute('src'));
     await shoot(name);
     await page.keyboard.press('Escape');
+    if (theme === 'Dark Modern') await findingsAndMapInTheDark(page, shoot);
   }
   assert.equal(seen.size, 3, 'three themes, three pictures');
 }
