@@ -70,12 +70,12 @@ describe('a hover on a filter', () => {
 describe('a hover on a channel', () => {
   it('tells the group delay of its chain at mid band', () => {
     // 1 / (2 pi 1000) / (1 + 0.5^2) s
-    expect(tower('  ba▮se:')).toContain('· group delay 127.3 us at mid band (500 Hz)');
+    expect(tower('  ba▮se:')).toContain('Group delay 127.3 us at mid band (500 Hz)');
     // 1 / (2 pi 1100) / (1 + (5 / 11)^2) s and 200 us
-    expect(tower('  to▮p:')).toContain('· group delay 319.9 us at mid band (500 Hz)');
+    expect(tower('  to▮p:')).toContain('Group delay 319.9 us at mid band (500 Hz)');
     const compensated = TOWER.replace('scan-interval: 10 us', 'delay-compensated: true');
-    expect(tower('  to▮p:', compensated)).toContain('· group delay 119.9 us at mid band');
-    expect(tower('  di▮m:')).toContain('· group delay 0 s at mid band (500 Hz), filters of unknown phase apart');
+    expect(tower('  to▮p:', compensated)).toContain('Group delay 119.9 us at mid band');
+    expect(tower('  di▮m:')).toContain('Group delay 0 s at mid band (500 Hz), filters of unknown phase apart');
   });
 });
 

@@ -30,7 +30,8 @@ export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): 
   if (!chain) return `${name} has no alias map yet: ${findings[0]?.message ?? 'its rate or its band is missing.'}`;
   const arrivals = arrivalsOf(chain);
   const head = headline(chain, judged);
-  const table = [arrivalsTable(chain, arrivals), noiseMarkdown(chain) ?? ''].filter((part) => part !== '').join('\n\n');
+  const below = [windowsText(chain), delaySentence(chain), arrivalsTable(chain, arrivals), noiseMarkdown(chain)];
+  const table = below.filter((part) => part !== undefined).join('\n\n');
   const room = MOST_HOVER_CHARACTERS - head.length - table.length - 100;
   const model = aliasMapModel(chain, arrivals);
   const picture = abilities.showsPictures
@@ -43,10 +44,13 @@ export function mapMarkdown(judged: JudgedChannel, abilities: ClientAbilities): 
 function headline(chain: Chain, judged: JudgedChannel): string {
   const last = chain.stages.at(-1)!;
   const counts = judged.result.findings.length;
-  const windows = windowsText(chain);
-  const delay = chainDelayWords(chain);
   const verdict = counts === 0 ? 'clean' : counts === 1 ? '1 finding' : `${counts} findings`;
-  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}${delay === undefined ? '' : ` · ${delay}`}${windows === undefined ? '' : `\n\n${windows}`}`;
+  return `**${codeMarkdown(chain.channel.name)}** · Nyquist frequency ${formatHz(last.nyquistHz)} · ${bandText(chain)} · margin ${chain.margin.toFixed(2)} · ${verdict}`;
+}
+
+function delaySentence(chain: Chain): string | undefined {
+  const words = chainDelayWords(chain);
+  return words && `${words.charAt(0).toUpperCase()}${words.slice(1)}.`;
 }
 
 function bandText({ isBandpass, bandHighHz, recordedBand }: Chain): string {

@@ -125,7 +125,7 @@ function markOfImage(image: ImageArrival, chain: Chain): Mark {
   const line = { shiftHz: image.shiftHz, lossDb: 0 };
   return {
     kind: 'spoils',
-    sourceName: clippedName(image.source.name),
+    sourceName: `${clippedName(image.source.name)} image`,
     label: `${clippedName(image.source.name)} image`,
     trueText: spanText(image.trueLowHz, image.trueHighHz),
     recordedText: spanText(image.recordedLowHz, image.recordedHighHz),
